@@ -1,0 +1,42 @@
+import { defineConfig } from "vitest/config";
+
+const common = {
+  environment: "node" as const,
+  // Expected texts and times are the same wherever the tests run.
+  env: { TZ: "UTC", NODE_ENV: "test" },
+  restoreMocks: true,
+};
+
+/**
+ * Two projects: the pure files need nothing, so they run at once and without a database; everything else shares one
+ * PostgreSQL cluster that globalSetup makes and removes.
+ */
+export default defineConfig({
+  test: {
+    reporters: ["default"],
+    projects: [
+      {
+        test: {
+          ...common,
+          name: "pure",
+          include: [
+            "app/**/*.test.ts",
+            "app/**/*.test.tsx",
+            "tests/published/**/*.test.ts",
+            "tests/conventions/**/*.test.ts",
+          ],
+        },
+      },
+      {
+        test: {
+          ...common,
+          name: "served",
+          include: ["tests/{database,routes,api,browser}/**/*.test.ts"],
+          globalSetup: ["tests/support/globalSetup.ts"],
+          testTimeout: 30_000,
+          hookTimeout: 60_000,
+        },
+      },
+    ],
+  },
+});
