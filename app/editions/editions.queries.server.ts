@@ -1,0 +1,234 @@
+import { type Expression, type SqlBool, sql } from "kysely";
+import type { Database } from "#app/db/database.server.ts";
+import type { Digits } from "#app/thermo/digits.ts";
+import type { Phase } from "#app/thermo/phase.ts";
+import type { Property } from "#app/thermo/property.ts";
+import type { Uncertainty } from "#app/thermo/uncertainty.ts";
+
+/*
+ * Reading the one append-only table as of an edition. Edition n is the rows with since <= n that had not gone out by n;
+ * what happened after n cannot be seen from here, so an answer made of these rows is the same for ever. Edition 0 is the
+ * table before its first edition: empty.
+ */
+
+/** The rows of a versioned table that stand in edition n. */
+function standsIn(n: number, since: Expression<number>, until: Expression<number | null>): Expression<SqlBool> {
+  return sql<SqlBool>`(${since} <= ${n} and (${until} is null or ${until} > ${n}))`;
+}
+
+/** `column = any(list)`: one parameter however long the list is. */
+function oneOf(column: Expression<string | null>, list: readonly string[]): Expression<SqlBool> {
+  return sql<SqlBool>`${column} = any(${[...list]}::text[])`;
+}
+
+// --- Editions ---------------------------------------------------------------
+
+function editions(db: Database) {
+  return db
+    .selectFrom("edition as e")
+    .innerJoin("person as p", "p.id", "e.published_by")
+    .leftJoin("edition as w", (join) => join.onRef("w.withdraws", "=", "e.number").on("w.state", "=", "sealed"))
+    .where("e.state", "=", "sealed")
+    .select([
+      "e.number",
+      "e.published_at as publishedAt",
+      "e.published_by as publishedBy",
+      "p.name as publisher",
+      "e.notes",
+      "e.licence",
+      "e.withdraws",
+      "e.withdrawal_reason as withdrawalReason",
+      "e.previous_digest as previousDigest",
+      "w.number as withdrawnBy",
+      "w.withdrawal_reason as withdrawnBecause",
+    ])
+    .select((eb) => [
+      // A sealed edition has all of these (edition_sealed_is_whole).
+      eb.ref("e.digest").$castTo<Buffer>().as("digest"),
+      eb.ref("e.species_count").$castTo<number>().as("speciesCount"),
+      eb.ref("e.value_count").$castTo<number>().as("valueCount"),
+      eb.ref("e.came").$castTo<number>().as("came"),
+      eb.ref("e.changed").$castTo<number>().as("changed"),
+      eb.ref("e.went").$castTo<number>().as("went"),
+    ]);
+}
+
+/** The newest published edition; undefined before the first. */
+export async function findNewestEdition(db: Database) {
+  return editions(db).orderBy("e.number", "desc").limit(1).executeTakeFirst();
+}
+
+/** The published edition of this number. */
+export async function findEdition(n: number, db: Database) {
+  return editions(db).where("e.number", "=", n).executeTakeFirst();
+}
+
+/** Every published edition, the newest first. */
+export async function findEditions(db: Database) {
+  return editions(db).orderBy("e.number", "desc").execute();
+}
+
+/** A published edition. `withdrawnBy` names the later edition that withdrew it, and is therefore no part of its content. */
+export type Edition = Awaited<ReturnType<typeof findEditions>>[number];
+
+// --- Values -----------------------------------------------------------------
+
+export interface ValueFilter {
+  speciesIds?: readonly string[];
+  properties?: readonly Property[];
+  sourceIds?: readonly string[];
+}
+
+/**
+ * The values of edition n, ordered by the UTF-8 bytes of species key, then property. An empty list in the filter asks for
+ * nothing; a list left out asks for all.
+ */
+export async function findValuesAsOf(n: number, filter: ValueFilter, db: Database) {
+  const rows = await valuesAsOf(n, filter, db).execute();
+  return rows.map(withUncertainty);
+}
+
+/** A value as it stands in an edition. */
+export type ValueAsOf = Awaited<ReturnType<typeof findValuesAsOf>>[number];
+
+function valuesAsOf(n: number, filter: ValueFilter, db: Database) {
+  let query = db
+    .selectFrom("table_value as v")
+    .innerJoin("species_detail as d", "d.species_id", "v.species_id")
+    .where((eb) => standsIn(n, eb.ref("v.since"), eb.ref("v.until")))
+    .where((eb) => standsIn(n, eb.ref("d.since"), eb.ref("d.until")))
+    .select([
+      "v.id as rowId",
+      "v.species_id as speciesId",
+      "d.key",
+      "v.method",
+      "v.given_text as givenText",
+      "v.given_unit as givenUnit",
+      "v.given_note as givenNote",
+      "v.source_id as sourceId",
+      "v.line_version_id as lineVersionId",
+      "v.row_hash as rowHash",
+      "v.since",
+    ])
+    .select((eb) => [
+      eb.ref("v.property").$castTo<Property>().as("property"),
+      eb.ref("v.value").$castTo<Digits>().as("digits"),
+      eb.ref("v.uncertainty").$castTo<Digits | null>().as("uncertaintyDigits"),
+      eb.ref("v.uncertainty_kind").$castTo<Uncertainty["kind"] | null>().as("uncertaintyKind"),
+      eb.ref("v.coverage_factor").$castTo<Digits | null>().as("coverageFactor"),
+      eb.ref("v.temperature").$castTo<Digits>().as("temperature"),
+      eb.ref("v.standard_pressure").$castTo<Digits>().as("standardPressure"),
+      eb.ref("v.basis").$castTo<"molality" | "concentration" | null>().as("basis"),
+      eb.ref("v.origin").$castTo<"stated" | "derived">().as("origin"),
+    ])
+    .orderBy("d.key")
+    .orderBy("v.property");
+  const { speciesIds, properties, sourceIds } = filter;
+  if (speciesIds) query = query.where((eb) => oneOf(eb.ref("v.species_id"), speciesIds));
+  if (properties) query = query.where((eb) => oneOf(eb.ref("v.property"), properties));
+  if (sourceIds) query = query.where((eb) => oneOf(eb.ref("v.source_id"), sourceIds));
+  return query;
+}
+
+/** Puts the three columns of an uncertainty back into one. */
+function withUncertainty<
+  Row extends {
+    uncertaintyDigits: Digits | null;
+    uncertaintyKind: Uncertainty["kind"] | null;
+    coverageFactor: Digits | null;
+  },
+>(row: Row) {
+  const { uncertaintyDigits, uncertaintyKind, coverageFactor, ...rest } = row;
+  const uncertainty: Uncertainty | null =
+    uncertaintyDigits === null || uncertaintyKind === null
+      ? null
+      : {
+          digits: uncertaintyDigits,
+          kind: uncertaintyKind,
+          coverageFactor: coverageFactor === null ? null : Number(coverageFactor),
+        };
+  return { ...rest, uncertainty };
+}
+
+// --- Species ----------------------------------------------------------------
+
+export interface DetailFilter {
+  speciesIds?: readonly string[];
+  keys?: readonly string[];
+  /** Formulas in Hill order, without charge. */
+  hill?: readonly string[];
+  cas?: readonly string[];
+}
+
+/** The species of edition n with what they are called in it, ordered by the UTF-8 bytes of the key. */
+export async function findDetailsAsOf(n: number, filter: DetailFilter, db: Database) {
+  let query = detailsAsOf(n, db);
+  const { speciesIds, keys, hill, cas } = filter;
+  if (speciesIds) query = query.where((eb) => oneOf(eb.ref("d.species_id"), speciesIds));
+  if (keys) query = query.where((eb) => oneOf(eb.ref("d.key"), keys));
+  if (hill) query = query.where((eb) => oneOf(eb.ref("s.hill"), hill));
+  if (cas) query = query.where((eb) => oneOf(eb.ref("d.cas"), cas));
+  return query.execute();
+}
+
+/** A species as it is called in an edition. */
+export type DetailAsOf = Awaited<ReturnType<typeof findDetailsAsOf>>[number];
+
+function detailsAsOf(n: number, db: Database) {
+  return db
+    .selectFrom("species_detail as d")
+    .innerJoin("species as s", "s.id", "d.species_id")
+    .where((eb) => standsIn(n, eb.ref("d.since"), eb.ref("d.until")))
+    .select([
+      "d.id as rowId",
+      "d.species_id as speciesId",
+      "d.key",
+      "d.printed",
+      "d.label",
+      "d.name",
+      "d.cas",
+      "d.inchikey",
+      "d.synonyms",
+      "s.hill",
+      "s.charge",
+      "d.line_version_id as lineVersionId",
+      "d.row_hash as rowHash",
+      "d.since",
+    ])
+    .select((eb) => [
+      eb.ref("s.composition").$castTo<Record<string, number>>().as("composition"),
+      eb.ref("s.phase").$castTo<Phase>().as("phase"),
+    ])
+    .orderBy("d.key");
+}
+
+// --- Sources ----------------------------------------------------------------
+
+export type SourceKind = "measurement" | "evaluation" | "calculation" | "estimate";
+
+/** The sources of edition n with their citations (CSL-JSON), ordered by the bytes of their ids. */
+export async function findSourceDetailsAsOf(n: number, filter: { ids?: readonly string[] }, db: Database) {
+  let query = db
+    .selectFrom("source_detail as s")
+    .where((eb) => standsIn(n, eb.ref("s.since"), eb.ref("s.until")))
+    .select([
+      "s.id as rowId",
+      "s.source_id as sourceId",
+      "s.doi",
+      "s.notice",
+      "s.line_version_id as lineVersionId",
+      "s.row_hash as rowHash",
+      "s.since",
+    ])
+    .select((eb) => [
+      eb.ref("s.citation").$castTo<Record<string, unknown>>().as("citation"),
+      eb.ref("s.kind").$castTo<SourceKind>().as("kind"),
+    ])
+    .orderBy("s.source_id");
+  const { ids } = filter;
+  if (ids) query = query.where((eb) => oneOf(eb.ref("s.source_id"), ids));
+  return query.execute();
+}
+
+/** A source as it is cited in an edition. */
+export type SourceAsOf = Awaited<ReturnType<typeof findSourceDetailsAsOf>>[number];
