@@ -3,6 +3,7 @@ import type { Kysely } from "kysely";
 import pg from "pg";
 import { afterAll, beforeAll, inject } from "vitest";
 import { connect, openPool } from "#app/db/connection.server.ts";
+import { useDatabase as makeApplicationUse } from "#app/db/database.server.ts";
 import type { DB } from "#app/db/types.ts";
 import { sqlForDatabaseRights } from "../../scripts/cluster.mjs";
 
@@ -56,8 +57,8 @@ export async function cloneDatabase(): Promise<TestDatabase & { drop(): Promise<
 }
 
 /**
- * Gives the test file a database of its own: made before the first test, dropped after the last. Read the fields inside
- * tests and hooks only.
+ * Gives the test file a database of its own: made before the first test, dropped after the last, and the one on which
+ * the application's acts run meanwhile. Read the fields inside tests and hooks only.
  *
  * @example
  * const database = useDatabase();
@@ -67,6 +68,7 @@ export function useDatabase(): TestDatabase {
   let clone: Awaited<ReturnType<typeof cloneDatabase>> | undefined;
   beforeAll(async () => {
     clone = await cloneDatabase();
+    makeApplicationUse(clone.app);
   });
   afterAll(async () => {
     await clone?.drop();
