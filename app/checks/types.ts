@@ -68,9 +68,11 @@ export interface ViewedElementEntropy {
   readonly fromSheet: boolean;
 }
 
-/** What a check may see: the species touched, their other phases, and the elements. */
+/** What a check may see: the species touched, their other phases, the elements, and H2O(l). */
 export interface TableView {
   species(id: string): ViewedSpecies | undefined;
+  /** By key, where the view holds it: it always holds H2O(l) and the reference states if the table or proposal does. */
+  withKey(key: string): ViewedSpecies | undefined;
   /** The sheet's own element row first, else what stands; undefined when neither has it. */
   elementEntropy(element: string): ViewedElementEntropy | undefined;
   /** The same substance in other phases or forms. */
