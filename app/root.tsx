@@ -1,0 +1,63 @@
+import { isRouteErrorResponse, Links, Meta, Outlet, Scripts, ScrollRestoration } from "react-router";
+import { useNonce } from "#app/http/nonce.ts";
+import type { Route } from "./+types/root";
+import { Announcer } from "./ui/Announcer.tsx";
+import { CopyPlain } from "./ui/CopyPlain.tsx";
+import { ErrorPage, statusWords } from "./ui/ErrorPage.tsx";
+import stylesheet from "./styles/tablewright.css?url";
+
+// Two strong rules and a hairline, as on every table. Drawn here because the project ships no image files.
+const icon =
+  "data:image/svg+xml," +
+  encodeURIComponent(
+    '<svg xmlns="http://www.w3.org/2000/svg" viewBox="0 0 16 16"><path fill="#fbfaf5" d="M0 0h16v16H0z"/>' +
+      '<path fill="#13262b" d="M5 2h10v2H5zm0 4h10v1H5zm0 6h10v2H5z"/><path fill="#17655a" d="M1 0h3v9L2.500 7.500 1 9z"/></svg>',
+  );
+
+export const links: Route.LinksFunction = () => [
+  { rel: "stylesheet", href: stylesheet },
+  { rel: "icon", href: icon, type: "image/svg+xml" },
+];
+
+export function Layout({ children }: { children: React.ReactNode }) {
+  const nonce = useNonce();
+  return (
+    <html lang="en">
+      <head>
+        <meta charSet="utf-8" />
+        <meta name="viewport" content="width=device-width, initial-scale=1" />
+        <meta name="color-scheme" content="light dark" />
+        <Meta />
+        <Links nonce={nonce} />
+      </head>
+      <body>
+        {children}
+        <Announcer />
+        <CopyPlain />
+        <ScrollRestoration nonce={nonce} />
+        <Scripts nonce={nonce} />
+      </body>
+    </html>
+  );
+}
+
+export default function Root() {
+  return <Outlet />;
+}
+
+/** The one boundary: every error of a page ends here, with the sentence of a refusal when there is one. */
+export function ErrorBoundary({ error }: Route.ErrorBoundaryProps) {
+  const status = isRouteErrorResponse(error) ? error.status : 500;
+  const { head } = statusWords(status);
+  return (
+    <>
+      <title>{`${head} · Tablewright`}</title>
+      <ErrorPage status={status} sentence={isRouteErrorResponse(error) ? sentenceOf(error.data) : undefined} />
+    </>
+  );
+}
+
+function sentenceOf(data: unknown): string | undefined {
+  if (typeof data !== "object" || data === null || !("detail" in data)) return undefined;
+  return typeof data.detail === "string" ? data.detail : undefined;
+}

@@ -1,0 +1,122 @@
+import { Form, Link } from "react-router";
+import { paths } from "#app/paths.ts";
+import { Bookmark, editionBookmark, type BookmarkProps } from "./Bookmark.tsx";
+import { Ribbon } from "./EditionLine.tsx";
+import { useRootData, type SectionName } from "./useRootData.ts";
+
+interface LeafProps {
+  /** The page's one h1. */
+  heading: React.ReactNode;
+  /** "species" sets it larger: for a formula. */
+  headingKind?: "species" | undefined;
+  /** One or two soft sentences under it. */
+  lede?: React.ReactNode;
+  /** Which section of the site this is. */
+  section?: SectionName | undefined;
+  /** The bookmark; without one, the newest edition's. */
+  bookmark?: BookmarkProps | undefined;
+  /** The line under the head: `<EditionLine>` or `<Ribbon>`. Without one, a line naming the newest edition. */
+  ribbon?: React.ReactNode;
+  children: React.ReactNode;
+}
+
+const sections: readonly (readonly [SectionName, string, string])[] = [
+  ["table", "Table", paths.table()],
+  ["sheets", "Sheets", paths.sheets()],
+  ["revisions", "Revisions", paths.revisions()],
+  ["editions", "Editions", paths.editions()],
+  ["sources", "Sources", paths.sources()],
+  ["conventions", "Conventions", paths.conventions()],
+  ["people", "People", paths.people()],
+  ["record", "Record", paths.record()],
+];
+
+/** The frame of every page: the ruled margin with its bookmark, the head, the ribbon, and one column of text. */
+export function Leaf({ heading, headingKind, lede, section, bookmark, ribbon, children }: LeafProps) {
+  const { visitor, opens, currentEdition } = useRootData();
+  const mark: BookmarkProps =
+    bookmark ??
+    (currentEdition === null
+      ? { kind: "plain", label: "Edition", mark: "–" }
+      : editionBookmark(currentEdition, currentEdition));
+  return (
+    <div className="leaf">
+      <a className="skip" href="#text">
+        Skip to the text
+      </a>
+      <div className="leaf-margin">
+        <Bookmark {...mark} />
+      </div>
+      <div className="leaf-text">
+        <header className="leaf-head">
+          <Link className="leaf-mark" to={paths.home()}>
+            Tablewright
+          </Link>
+          <nav className="leaf-nav" aria-label="Sections">
+            <ul>
+              {sections
+                .filter(([name]) => opens.includes(name))
+                .map(([name, label, to]) => (
+                  <li key={name}>
+                    <Link to={to} aria-current={name === section ? "page" : undefined}>
+                      {label}
+                    </Link>
+                  </li>
+                ))}
+            </ul>
+          </nav>
+          {opens.includes("table") && (
+            <Form method="get" action={paths.find()} role="search" className="contents">
+              <input
+                className="leaf-find"
+                type="search"
+                name="q"
+                aria-label="Find a species, source or revision"
+                placeholder="Find a species, source, revision"
+              />
+            </Form>
+          )}
+          {visitor ? (
+            <Link
+              className="leaf-person"
+              to={paths.account()}
+              aria-current={section === "account" ? "page" : undefined}
+            >
+              {visitor.name}
+            </Link>
+          ) : (
+            <Link className="leaf-person" to={paths.signIn()}>
+              Sign in
+            </Link>
+          )}
+        </header>
+        {ribbon ?? <DefaultRibbon currentEdition={currentEdition} />}
+        <main id="text" tabIndex={-1}>
+          <h1 className={`leaf-title${headingKind === "species" ? " species-title" : ""}`} tabIndex={-1}>
+            {heading}
+          </h1>
+          {lede && <p className="lede">{lede}</p>}
+          {children}
+        </main>
+        <footer className="leaf-foot">
+          298.15 K and 100 kPa unless a value says otherwise · <Link to={paths.conventions()}>conventions</Link> ·{" "}
+          <Link to={paths.apiGuide()}>for programs</Link>
+        </footer>
+      </div>
+    </div>
+  );
+}
+
+function DefaultRibbon({ currentEdition }: { currentEdition: number | null }) {
+  return (
+    <Ribbon>
+      {currentEdition === null ? (
+        <span>No edition is published yet.</span>
+      ) : (
+        <span>
+          <b>Edition {currentEdition}</b> stands
+        </span>
+      )}
+    </Ribbon>
+  );
+}

@@ -1,0 +1,28 @@
+import { readdirSync } from "node:fs";
+import path from "node:path";
+import { reactRouter } from "@react-router/dev/vite";
+import tailwindcss from "@tailwindcss/vite";
+import { defineConfig } from "vite";
+
+/** The programs that are built for the server: the two processes, and one for each file in server/commands. */
+function serverPrograms(): Record<string, string> {
+  const commands = readdirSync("server/commands").filter((file) => file.endsWith(".ts"));
+  return {
+    web: "./server/web.ts",
+    worker: "./server/worker.ts",
+    ...Object.fromEntries(commands.map((file) => [path.basename(file, ".ts"), `./server/commands/${file}`])),
+  };
+}
+
+export default defineConfig(({ isSsrBuild }) => ({
+  plugins: [tailwindcss(), reactRouter()],
+  build: {
+    target: isSsrBuild ? "node20" : "baseline-widely-available",
+    chunkSizeWarningLimit: 1_000,
+    // Nothing is inlined as a data: address, which the Content-Security-Policy would refuse for fonts.
+    assetsInlineLimit: 0,
+    ...(isSsrBuild ? { rollupOptions: { input: serverPrograms() } } : {}),
+  },
+  // The local server of `npm run dev` is started by scripts/dev.mjs, which uses its own port for hot reload.
+  server: { middlewareMode: true },
+}));
