@@ -47,8 +47,10 @@ export async function act<T>(acting: Acting | null, work: (scope: ActScope) => P
 
 /** The sentences for constraints that two people can run into at the same moment. */
 const CONSTRAINT_SENTENCES: Record<string, string> = {
-  revision_line_one_waits_species: "Another accepted line already waits for this value; publish it or have it declined first.",
-  revision_line_one_waits_source: "Another accepted line already waits for this source; publish it or have it declined first.",
+  revision_line_one_waits_species:
+    "Another accepted line already waits for this value; publish it or have it declined first.",
+  revision_line_one_waits_source:
+    "Another accepted line already waits for this source; publish it or have it declined first.",
   revision_line_once_species: "This revision already has a line for this value.",
   revision_line_once_source: "This revision already has a line for this source.",
   person_email_unique: "There is already an account with this address.",

@@ -5,8 +5,9 @@
 
 import type { ColumnType } from "kysely";
 
-export type Generated<T> =
-  T extends ColumnType<infer S, infer I, infer U> ? ColumnType<S, I | undefined, U> : ColumnType<T, T | undefined, T>;
+export type Generated<T> = T extends ColumnType<infer S, infer I, infer U>
+  ? ColumnType<S, I | undefined, U>
+  : ColumnType<T, T | undefined, T>;
 
 export type Int8 = ColumnType<string, bigint | number | string, bigint | number | string>;
 
@@ -21,6 +22,8 @@ export type JsonObject = {
 export type JsonPrimitive = boolean | number | string | null;
 
 export type JsonValue = JsonArray | JsonObject | JsonPrimitive;
+
+export type Numeric = ColumnType<string, number | string, number | string>;
 
 export type Timestamp = ColumnType<Date, Date | string, Date | string>;
 
@@ -454,7 +457,7 @@ export interface TableValue {
    * Standard state of a solute as the source said it: molality (1 mol/kg) or concentration (1 mol/L); null for other phases or when not said.
    */
   basis: string | null;
-  coverage_factor: string | null;
+  coverage_factor: Numeric | null;
   /**
    * The conversion that was applied, null when there was none.
    */
@@ -473,6 +476,10 @@ export interface TableValue {
   origin: string;
   property: string;
   /**
+   * A remark of the source that checks heed, such as a constraint its compilers relaxed; null without one.
+   */
+  remark: string | null;
+  /**
    * SHA-256 of the RFC 8785 JSON of the published fields (app/editions/digest.ts).
    */
   row_hash: Buffer;
@@ -482,15 +489,15 @@ export interface TableValue {
   /**
    * In pascal.
    */
-  standard_pressure: string;
+  standard_pressure: Numeric;
   /**
    * In kelvin.
    */
-  temperature: string;
+  temperature: Numeric;
   /**
    * In the unit of the value, as given; null = none stated.
    */
-  uncertainty: string | null;
+  uncertainty: Numeric | null;
   /**
    * exact (by convention), standard (k = 1), expanded (with its coverage factor), unstated (counted as k = 2); null = none stated.
    */
@@ -499,7 +506,7 @@ export interface TableValue {
   /**
    * In the unit of the property: kJ/mol for enthalpyOfFormation, gibbsEnergyOfFormation and enthalpyIncrement; J/(mol K) for entropy and heatCapacity.
    */
-  value: string;
+  value: Numeric;
 }
 
 export interface DB {

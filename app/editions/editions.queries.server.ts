@@ -88,6 +88,21 @@ export async function findValuesAsOf(n: number, filter: ValueFilter, db: Databas
   return rows.map(withUncertainty);
 }
 
+/**
+ * The values standing in edition `from` that had gone out by the later edition `to`, with the keys of `from`. Together with
+ * `findValuesThatCame` this is all that can differ between the two, so a comparison costs what changed and not what stands.
+ */
+export async function findValuesThatWent(from: number, to: number, db: Database) {
+  const rows = await valuesAsOf(from, {}, db).where("v.until", "<=", to).execute();
+  return rows.map(withUncertainty);
+}
+
+/** The values standing in edition `to` that came in after the earlier edition `from`, with the keys of `to`. */
+export async function findValuesThatCame(from: number, to: number, db: Database) {
+  const rows = await valuesAsOf(to, {}, db).where("v.since", ">", from).execute();
+  return rows.map(withUncertainty);
+}
+
 /** A value as it stands in an edition. */
 export type ValueAsOf = Awaited<ReturnType<typeof findValuesAsOf>>[number];
 
@@ -105,6 +120,7 @@ function valuesAsOf(n: number, filter: ValueFilter, db: Database) {
       "v.given_text as givenText",
       "v.given_unit as givenUnit",
       "v.given_note as givenNote",
+      "v.remark",
       "v.source_id as sourceId",
       "v.line_version_id as lineVersionId",
       "v.row_hash as rowHash",
@@ -171,6 +187,16 @@ export async function findDetailsAsOf(n: number, filter: DetailFilter, db: Datab
   return query.execute();
 }
 
+/** The species' details standing in edition `from` that had gone out by the later edition `to`. */
+export async function findDetailsThatWent(from: number, to: number, db: Database) {
+  return detailsAsOf(from, db).where("d.until", "<=", to).execute();
+}
+
+/** The species' details standing in edition `to` that came in after the earlier edition `from`. */
+export async function findDetailsThatCame(from: number, to: number, db: Database) {
+  return detailsAsOf(to, db).where("d.since", ">", from).execute();
+}
+
 /** A species as it is called in an edition. */
 export type DetailAsOf = Awaited<ReturnType<typeof findDetailsAsOf>>[number];
 
@@ -208,7 +234,23 @@ export type SourceKind = "measurement" | "evaluation" | "calculation" | "estimat
 
 /** The sources of edition n with their citations (CSL-JSON), ordered by the bytes of their ids. */
 export async function findSourceDetailsAsOf(n: number, filter: { ids?: readonly string[] }, db: Database) {
-  let query = db
+  const { ids } = filter;
+  const query = sourcesAsOf(n, db);
+  return (ids ? query.where((eb) => oneOf(eb.ref("s.source_id"), ids)) : query).execute();
+}
+
+/** The sources' details standing in edition `from` that had gone out by the later edition `to`. */
+export async function findSourceDetailsThatWent(from: number, to: number, db: Database) {
+  return sourcesAsOf(from, db).where("s.until", "<=", to).execute();
+}
+
+/** The sources' details standing in edition `to` that came in after the earlier edition `from`. */
+export async function findSourceDetailsThatCame(from: number, to: number, db: Database) {
+  return sourcesAsOf(to, db).where("s.since", ">", from).execute();
+}
+
+function sourcesAsOf(n: number, db: Database) {
+  return db
     .selectFrom("source_detail as s")
     .where((eb) => standsIn(n, eb.ref("s.since"), eb.ref("s.until")))
     .select([
@@ -225,9 +267,6 @@ export async function findSourceDetailsAsOf(n: number, filter: { ids?: readonly 
       eb.ref("s.kind").$castTo<SourceKind>().as("kind"),
     ])
     .orderBy("s.source_id");
-  const { ids } = filter;
-  if (ids) query = query.where((eb) => oneOf(eb.ref("s.source_id"), ids));
-  return query.execute();
 }
 
 /** A source as it is cited in an edition. */

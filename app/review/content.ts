@@ -58,7 +58,12 @@ export const sourceContent = z.strictObject({
   notice: z.string().nullable(),
 });
 
-export const lineContent = z.discriminatedUnion("kind", [valueContent, withdrawalContent, detailContent, sourceContent]);
+export const lineContent = z.discriminatedUnion("kind", [
+  valueContent,
+  withdrawalContent,
+  detailContent,
+  sourceContent,
+]);
 
 export type UncertaintyContent = z.infer<typeof uncertaintyContent>;
 export type ValueContent = z.infer<typeof valueContent>;

@@ -137,6 +137,7 @@ export async function up(db: Kysely<unknown>): Promise<void> {
       given_text text not null,
       given_unit text not null,
       given_note text,
+      remark text,
       source_id text not null references source on delete restrict,
       line_version_id bigint not null,
       row_hash bytea not null,
@@ -171,6 +172,7 @@ export async function up(db: Kysely<unknown>): Promise<void> {
     comment on column table_value.given_text is 'What the sheet said, to the letter.';
     comment on column table_value.given_unit is 'The unit the sheet used.';
     comment on column table_value.given_note is 'The conversion that was applied, null when there was none.';
+    comment on column table_value.remark is 'A remark of the source that checks heed, such as a constraint its compilers relaxed; null without one.';
     comment on column table_value.row_hash is 'SHA-256 of the RFC 8785 JSON of the published fields (app/editions/digest.ts).';
 
     -- A versioned row comes in with the open edition and goes out once, with a later open edition. Nothing else moves.

@@ -1,0 +1,245 @@
+import { act, type ActScope } from "#app/audit/act.server.ts";
+import { Forbidden, Invalid, NotFound, Refused } from "#app/http/errors.ts";
+import { enqueueLetter } from "#app/notify/letters.server.ts";
+import { revisionDecidedLetter, revisionReturnedLetter } from "#app/notify/reviewLetters.ts";
+import { demand } from "#app/people/permissions.ts";
+import type { Acting } from "#app/people/person.ts";
+import { findPersonById } from "#app/people/people.queries.server.ts";
+import { findingsOf } from "./examine.server.ts";
+import {
+  findFinding,
+  findLineBases,
+  findLines,
+  findLinesWithHandOf,
+  findRevisionForUpdate,
+  findSetAside,
+  findWaitingLines,
+  insertComment,
+  insertDecisions,
+  insertSetAside,
+  type LineRow,
+  updateRevisionState,
+} from "./review.queries.server.ts";
+import { isOvertaken } from "./revise.server.ts";
+import { mayMove, revisionStateWords } from "./states.ts";
+
+/** A line as the reviewer saw it: deciding another version than the one shown is refused. */
+export interface SeenLine {
+  lineId: string;
+  versionId: string;
+}
+
+async function findInReview(acting: Acting, id: number, trx: ActScope["trx"]) {
+  demand(acting, "revision:decide");
+  const revision = await findRevisionForUpdate(id, trx);
+  if (!revision) throw new NotFound(`There is no revision ${id}.`);
+  if (revision.state !== "in_review") {
+    throw new Refused(
+      `Revision ${id} is ${revisionStateWords[revision.state]}; lines are decided while it is in review.`,
+    );
+  }
+  return revision;
+}
+
+/** The lines a reviewer named, as they stand; refused when one was edited, is decided by its own author or is gone. */
+async function findSeen(
+  acting: Acting,
+  revisionId: number,
+  seen: readonly SeenLine[],
+  trx: ActScope["trx"],
+): Promise<LineRow[]> {
+  const lines = new Map((await findLines(revisionId, trx)).map((line) => [line.id, line]));
+  const own = await findLinesWithHandOf(revisionId, acting.person.id, trx);
+  return seen.map(({ lineId, versionId }) => {
+    const line = lines.get(lineId);
+    if (!line) throw new NotFound(`Revision ${revisionId} has no such line.`);
+    if (line.versionId !== versionId)
+      throw new Refused("A line was edited since you opened this page. Look at what it says now, then decide.");
+    if (own.has(lineId)) throw new Forbidden("You had a hand in this line, so somebody else decides it.");
+    return line;
+  });
+}
+
+/**
+ * Accepts lines together. Refused as a whole when one of them was overtaken or edited, when the acting person had a hand
+ * in one, or when the table as it would then be (what stands, what waits, and the accepted part of this revision) fails
+ * a check that nobody set aside: so a half-updated species cannot slip through.
+ */
+export async function acceptLines(acting: Acting, revisionId: number, seen: readonly SeenLine[]): Promise<void> {
+  if (seen.length === 0) throw new Invalid("Choose at least one line.");
+  await act(acting, async ({ trx, record }) => {
+    await findInReview(acting, revisionId, trx);
+    const chosen = await findSeen(acting, revisionId, seen, trx);
+    const bases = await findLineBases(
+      chosen.map((line) => line.id),
+      trx,
+    );
+    for (const line of chosen) {
+      if (!isOvertaken(line, bases.get(line.id))) continue;
+      const waits = bases.get(line.id)?.waitingRevision;
+      throw new Refused(
+        waits
+          ? `Another value for this place was accepted since and waits in revision ${waits}. Return the revision so that the steward can restate the line.`
+          : "What stands has changed since this line was written. Return the revision so that the steward can restate it.",
+      );
+    }
+    const ids = new Set(chosen.map((line) => line.id));
+    const waiting = await findWaitingLines({ decidedOnly: false }, trx);
+    const ofThis = (await findLines(revisionId, trx)).filter((line) => ids.has(line.id) || line.state === "accepted");
+    const others = waiting.filter((line) => line.revisionId !== revisionId);
+    const { findings } = await findingsOf(ofThis, others, trx);
+    const aside = await findSetAside([revisionId], trx);
+    const touched = new Set(chosen.map((line) => line.speciesId));
+    const stops = findings.filter(
+      (one) => one.severity === "block" && touched.has(one.speciesId) && !aside.has(one.fingerprint.toString("hex")),
+    );
+    const [first] = stops;
+    if (first) {
+      throw new Refused(
+        `With only these lines accepted, ${first.species} would not pass: ${first.sentence}${stops.length > 1 ? ` (and ${stops.length - 1} more)` : ""} Decide its lines together, or set the finding aside with a reason.`,
+      );
+    }
+    await insertDecisions(
+      chosen.map((line) => ({
+        versionId: line.versionId,
+        decision: "accept" as const,
+        reason: "",
+        decidedBy: acting.person.id,
+      })),
+      trx,
+    );
+    record({
+      act: "revision.lines-accepted",
+      objectId: revisionId,
+      detail: {
+        lines: chosen.map((line) => ({
+          line: line.id,
+          version: line.version,
+          content: line.contentHash.toString("hex"),
+        })),
+      },
+    });
+  });
+}
+
+/** Declines lines, with the reason. */
+export async function declineLines(
+  acting: Acting,
+  revisionId: number,
+  seen: readonly SeenLine[],
+  reason: string,
+): Promise<void> {
+  if (seen.length === 0) throw new Invalid("Choose at least one line.");
+  if (!reason.trim()) throw new Invalid("Say why the line is declined.", [{ pointer: "/reason", detail: "Say why." }]);
+  await act(acting, async ({ trx, record }) => {
+    await findInReview(acting, revisionId, trx);
+    const chosen = await findSeen(acting, revisionId, seen, trx);
+    await insertDecisions(
+      chosen.map((line) => ({
+        versionId: line.versionId,
+        decision: "decline" as const,
+        reason,
+        decidedBy: acting.person.id,
+      })),
+      trx,
+    );
+    record({
+      act: "revision.line-declined",
+      objectId: revisionId,
+      detail: { lines: chosen.map((line) => ({ line: line.id, version: line.version })), reason },
+    });
+  });
+}
+
+/** Sets a blocking finding aside, with the reason. It stays aside only while it says the same. */
+export async function setFindingAside(
+  acting: Acting,
+  revisionId: number,
+  findingId: string,
+  reason: string,
+): Promise<void> {
+  if (!reason.trim())
+    throw new Invalid("Say why the finding is set aside.", [{ pointer: "/reason", detail: "Say why." }]);
+  await act(acting, async ({ trx, record }) => {
+    await findInReview(acting, revisionId, trx);
+    const finding = await findFinding(findingId, trx);
+    if (!finding || finding.revision_id !== revisionId) throw new NotFound("This revision has no such finding.");
+    const lines = (await findLines(revisionId, trx)).filter((line) => line.speciesId === finding.species_id);
+    const own = await findLinesWithHandOf(revisionId, acting.person.id, trx);
+    if (lines.some((line) => own.has(line.id))) {
+      throw new Forbidden("You had a hand in the lines of this species, so somebody else sets its findings aside.");
+    }
+    await insertSetAside({ revisionId, fingerprint: finding.fingerprint, reason, by: acting.person.id }, trx);
+    record({
+      act: "revision.finding-set-aside",
+      objectId: revisionId,
+      detail: { check: finding.check_code, species: finding.species_id, sentence: finding.sentence, reason },
+    });
+  });
+}
+
+/** Returns a revision to its steward with words, and writes to them. */
+export async function returnRevision(acting: Acting, id: number, remark: string): Promise<void> {
+  if (!remark.trim())
+    throw new Invalid("Say what should be mended.", [{ pointer: "/remark", detail: "Say what should be mended." }]);
+  await act(acting, async ({ trx, record }) => {
+    const revision = await findInReview(acting, id, trx);
+    await updateRevisionState(
+      { id, from: revision.state, to: "returned", round: revision.round, by: acting.person.id, remark },
+      trx,
+    );
+    await insertComment(
+      { revisionId: id, lineId: null, round: revision.round, body: remark, writtenBy: acting.person.id },
+      trx,
+    );
+    const author = await findPersonById(revision.madeBy, trx);
+    if (author) {
+      await enqueueLetter(
+        {
+          kind: "revision-returned",
+          toPerson: author.id,
+          toAddress: author.email,
+          ...revisionReturnedLetter({ id, title: revision.title, by: acting.person.name, remark }),
+        },
+        trx,
+      );
+    }
+    record({ act: "revision.returned", objectId: id, detail: { round: revision.round, remark } });
+  });
+}
+
+/** Closes the review once every line is accepted or declined; the accepted ones go into the next edition. */
+export async function closeReview(acting: Acting, id: number): Promise<{ accepted: number; declined: number }> {
+  return act(acting, async ({ trx, record }) => {
+    const revision = await findInReview(acting, id, trx);
+    if (!mayMove(revision.state, "decided")) throw new Refused(`Revision ${id} cannot be closed now.`);
+    const lines = await findLines(id, trx);
+    const open = lines.filter((line) => line.state === "open").length;
+    if (open > 0)
+      throw new Refused(
+        `${open} ${open === 1 ? "line has" : "lines have"} no decision yet. Accept or decline every line, then close the review.`,
+      );
+    const own = await findLinesWithHandOf(id, acting.person.id, trx);
+    if (own.size > 0) throw new Forbidden("You had a hand in this revision, so somebody else closes its review.");
+    const accepted = lines.filter((line) => line.state === "accepted").length;
+    const declined = lines.length - accepted;
+    await updateRevisionState(
+      { id, from: revision.state, to: "decided", round: revision.round, by: acting.person.id, remark: "" },
+      trx,
+    );
+    const author = await findPersonById(revision.madeBy, trx);
+    if (author) {
+      await enqueueLetter(
+        {
+          kind: "revision-decided",
+          toPerson: author.id,
+          toAddress: author.email,
+          ...revisionDecidedLetter({ id, title: revision.title, by: acting.person.name, accepted, declined }),
+        },
+        trx,
+      );
+    }
+    record({ act: "revision.decided", objectId: id, detail: { accepted, declined } });
+    return { accepted, declined };
+  });
+}
