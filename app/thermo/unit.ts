@@ -170,7 +170,7 @@ function unitFactors(plain: string): UnitFactors | undefined {
 }
 
 function takeFactor(factors: UnitFactors, symbol: string, exponent: number): boolean {
-  if (/^moles?$/i.test(symbol)) {
+  if (/^mol(?:es?)?$/i.test(symbol)) {
     factors.moles += exponent;
     return true;
   }
