@@ -9,7 +9,13 @@ const CONCURRENCY = 2;
 const POLL_INTERVAL = 2_000;
 
 const logger = new Logger((scope) => (level, message, meta) => {
-  const line = { event: "job", scope: scope.label, task: scope.taskIdentifier, jobId: scope.jobId, error: messageOf(meta) };
+  const line = {
+    event: "job",
+    scope: scope.label,
+    task: scope.taskIdentifier,
+    jobId: scope.jobId,
+    error: messageOf(meta),
+  };
   if (level === "error") log.error(line, message);
   else if (level === "warning") log.warn(line, message);
   else log.debug(line, message);
@@ -47,7 +53,10 @@ const neverMigrate: GraphileConfig.Plugin = {
 /** Starts to take jobs from the queue. `stop()` lets running jobs finish. */
 export async function startRunner(pgPool: pg.Pool): Promise<Runner> {
   const taskList: TaskList = Object.fromEntries(
-    Object.entries(tasks).map(([name, work]) => [name, ((payload) => (work as Task)(payload, undefined as never)) as Task]),
+    Object.entries(tasks).map(([name, work]) => [
+      name,
+      ((payload) => (work as Task)(payload, undefined as never)) as Task,
+    ]),
   );
   return run({
     pgPool,

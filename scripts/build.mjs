@@ -1,0 +1,61 @@
+// Builds the pages and the server's programs when a source is other than at the last build.
+import { createHash } from "node:crypto";
+import { existsSync, readdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
+import path from "node:path";
+import { isScript, main, root, runOrStop, say } from "./terminal.mjs";
+
+const SOURCES = [
+  "app",
+  "server",
+  "package.json",
+  "package-lock.json",
+  "tsconfig.json",
+  "vite.config.ts",
+  "react-router.config.ts",
+  "public",
+];
+const STAMP = path.join(root, "build", "stamp");
+
+function* filesBelow(item) {
+  if (!existsSync(path.join(root, item))) return;
+  const entries = readdirSync(path.join(root, item), { withFileTypes: true });
+  for (const entry of entries.sort((a, b) => (a.name < b.name ? -1 : 1))) {
+    const below = path.join(item, entry.name);
+    if (entry.isDirectory()) yield* filesBelow(below);
+    // Tests beside the sources are not built.
+    else if (!/\.test\.tsx?$/.test(entry.name)) yield below;
+  }
+}
+
+/** A digest over the names and bytes of everything that goes into a build. */
+function digestOfSources() {
+  const hash = createHash("sha256");
+  for (const source of SOURCES) {
+    const files = path.extname(source) ? [source] : [...filesBelow(source)];
+    for (const file of files)
+      hash
+        .update(`${file}\0`)
+        .update(readFileSync(path.join(root, file)))
+        .update("\0");
+  }
+  return hash.digest("hex");
+}
+
+/** @returns {Promise<boolean>} whether a build was needed */
+export async function ensureBuild() {
+  const digest = digestOfSources();
+  if (existsSync(STAMP) && readFileSync(STAMP, "utf8") === digest) return false;
+  say("Building …");
+  rmSync(STAMP, { force: true });
+  await runOrStop("The build failed.", path.join(root, "node_modules", ".bin", "react-router"), ["build"], {
+    env: { ...process.env, NODE_ENV: "production" },
+  });
+  writeFileSync(STAMP, digest);
+  return true;
+}
+
+if (isScript(import.meta.url)) {
+  await main(async () => {
+    if (!(await ensureBuild())) say("The build is up to date.");
+  });
+}

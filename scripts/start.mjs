@@ -1,0 +1,162 @@
+// npm start: from a clean checkout to a running service.
+//
+// Without DATABASE_URL it runs the demo on a database of its own; with it, nothing is seeded and no account exists until
+// `npm run admin` makes the first.
+import { existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
+import { createServer } from "node:net";
+import path from "node:path";
+import { ensureBuild } from "./build.mjs";
+import { isEmpty, migrate, seed } from "./database.mjs";
+import { checkSettings, dataFolder, openEnvironment, publicUrlOf } from "./environment.mjs";
+import { startInbox } from "./inbox.mjs";
+import { startProgram, stopRequest } from "./processes.mjs";
+import { setup } from "./setup.mjs";
+import { main, root, say, sleep, Stop } from "./terminal.mjs";
+
+const FIRST_PORT = 3000;
+const PORTS_TRIED = 50;
+const noteFile = path.join(dataFolder, "running.json");
+
+/** Whether a process of this number is one of ours; a number may have gone to another program since. */
+function isStart(pid) {
+  const commandLine = path.join("/proc", String(pid), "cmdline");
+  return existsSync(commandLine) && readFileSync(commandLine, "utf8").includes("start.mjs");
+}
+
+/** Claims this checkout for this process. When another one holds it, says so and returns false. */
+function claim() {
+  mkdirSync(dataFolder, { recursive: true, mode: 0o700 });
+  for (;;) {
+    try {
+      writeFileSync(noteFile, JSON.stringify({ pid: process.pid }), { flag: "wx" });
+      return true;
+    } catch (error) {
+      if (error.code !== "EEXIST") throw error;
+    }
+    const { pid, url } = readNote();
+    if (pid !== undefined && isStart(pid)) {
+      say(
+        url
+          ? `Tablewright is already running at ${url} (process ${pid}).`
+          : `Tablewright is already being started (process ${pid}).`,
+      );
+      return false;
+    }
+    // Left behind by a process that was ended by force.
+    rmSync(noteFile, { force: true });
+  }
+}
+
+function readNote() {
+  try {
+    return JSON.parse(readFileSync(noteFile, "utf8"));
+  } catch {
+    return {};
+  }
+}
+
+function isFree(port, host) {
+  return new Promise((resolve) => {
+    const server = createServer();
+    server.once("error", () => resolve(false));
+    server.listen(port, host, () => server.close(() => resolve(true)));
+  });
+}
+
+/** The port asked for, or the first free one from 3000 on. */
+async function choosePort(host) {
+  const { PORT } = process.env;
+  if (PORT) {
+    if (await isFree(Number(PORT), host)) return Number(PORT);
+    throw new Stop(
+      `PORT ${PORT} cannot be listened on: it is taken, reserved, or HOST names no address of this machine. Set PORT to a free one.`,
+    );
+  }
+  for (let port = FIRST_PORT; port < FIRST_PORT + PORTS_TRIED; port++) if (await isFree(port, host)) return port;
+  throw new Stop(
+    `None of the ports ${FIRST_PORT} to ${FIRST_PORT + PORTS_TRIED - 1} is free; set PORT to one that is.`,
+  );
+}
+
+async function waitUntilHealthy(host, port) {
+  const wildcard = { "0.0.0.0": "127.0.0.1", "::": "[::1]" }[host];
+  const name = wildcard ?? (host.includes(":") ? `[${host}]` : host);
+  for (let tries = 0; tries < 100; tries++) {
+    const healthy = await fetch(`http://${name}:${port}/healthz`).then(
+      (answer) => answer.ok,
+      () => false,
+    );
+    if (healthy) return;
+    await sleep(100);
+  }
+  throw new Stop("The web process started but does not answer at /healthz.");
+}
+
+/** The demo's people; the seeds make them from the same file. */
+function demoAccounts() {
+  const people = JSON.parse(readFileSync(path.join(root, "db", "seeds", "accounts.json"), "utf8"));
+  const widest = Math.max(...people.map((person) => person.email.length));
+  return people
+    .map((person) => `  ${person.email.padEnd(widest)}  ${person.password}  (${person.roles.join(", ")})`)
+    .join("\n");
+}
+
+await main(async () => {
+  const stopping = stopRequest();
+  const begun = Date.now();
+  await setup({ database: !process.env.DATABASE_URL });
+  await checkSettings();
+  if (!claim()) return;
+
+  const host = process.env.HOST || "127.0.0.1";
+  // What was started, to be ended in the reverse order whatever happens.
+  const undo = [() => rmSync(noteFile, { force: true })];
+  try {
+    const port = await choosePort(host);
+    const { demo, env, ownerUrl, appUrl, close } = await openEnvironment();
+    undo.push(close);
+    if (ownerUrl) await migrate(ownerUrl);
+    if (demo && (await isEmpty(ownerUrl))) {
+      say("Making the demo's content …");
+      await seed(appUrl, env);
+    }
+    await ensureBuild();
+    if (demo && !env.SMTP_URL) {
+      const inbox = await startInbox(env.TABLEWRIGHT_MAIL_FOLDER);
+      undo.push(inbox.close);
+      env.SMTP_URL = inbox.url;
+    }
+    env.PORT = String(port);
+    env.HOST = host;
+    env.PUBLIC_URL = await publicUrlOf(env);
+
+    let giveUp;
+    const gaveUp = new Promise((_resolve, reject) => (giveUp = (sentence) => reject(new Stop(sentence))));
+    gaveUp.catch(() => undefined);
+    const programs = ["web", "worker"].map((name) => startProgram(name, env, giveUp));
+    undo.push(() => Promise.all(programs.map((program) => program.stop())));
+    const up = Promise.all(programs.map((program) => program.ready)).then(() => waitUntilHealthy(host, port));
+    up.catch(() => undefined);
+    const early = await Promise.race([up.then(() => undefined), stopping, gaveUp]);
+    if (early === undefined) {
+      writeFileSync(noteFile, JSON.stringify({ pid: process.pid, url: env.PUBLIC_URL }));
+      const seconds = ((Date.now() - begun) / 1000).toFixed(1);
+      say(`\nTablewright is running at ${env.PUBLIC_URL} (started in ${seconds} s). Ctrl-C stops it.`);
+      if (demo) {
+        say("This is the demo: DATABASE_URL is not set, so it keeps its own database on this machine.");
+        say(`Sign in as one of these people of the fictional Calder Point Laboratory:\n${demoAccounts()}`);
+        if (!process.env.SMTP_URL) say(`Letters are not sent; read them at ${env.PUBLIC_URL}/inbox`);
+      } else {
+        say(
+          "It uses the database that DATABASE_URL names. The first administrator is made with: npm run admin -- --email ADDRESS --name NAME",
+        );
+        if (!process.env.SMTP_URL) say("SMTP_URL is not set: letters wait in the database and are not sent.");
+      }
+      say("");
+      await Promise.race([stopping, gaveUp]);
+      say("Stopping …");
+    }
+  } finally {
+    for (const step of undo.reverse()) await step();
+  }
+});
