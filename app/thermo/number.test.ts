@@ -80,10 +80,10 @@ describe("numbers that are read", () => {
 });
 
 describe("numbers with two readings", () => {
-  it.each([
+  it.each<[text: string, options: NumberOptions, expected: string[], reason: string]>([
     ["-285,830", {}, ["-285.830", "-285830"], "a decimal comma or thousands"],
     ["1.675", { decimalComma: true }, ["1.675", "1675"], "in a sheet that writes decimal commas"],
-  ])("%s: %s", (text, options: NumberOptions, expected) => {
+  ])("%s: %s", (text, options, expected) => {
     const reading = readNumber(text, options);
     expect(reading).toMatchObject({ outcome: "ambiguous", sentence: expect.stringContaining("comma or a point") });
     expect(reading.outcome === "ambiguous" && reading.candidates.map((one) => one.digits)).toEqual(expected);
