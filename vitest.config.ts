@@ -22,6 +22,7 @@ export default defineConfig({
           include: [
             "app/**/*.test.ts",
             "app/**/*.test.tsx",
+            "server/**/*.test.ts",
             "tests/published/**/*.test.ts",
             "tests/conventions/**/*.test.ts",
           ],

@@ -4,7 +4,7 @@ import type { Route } from "./+types/root";
 import { Announcer } from "./ui/Announcer.tsx";
 import { CopyPlain } from "./ui/CopyPlain.tsx";
 import { ErrorPage, statusWords } from "./ui/ErrorPage.tsx";
-import stylesheet from "./styles/tablewright.css?url";
+import "./styles/tablewright.css";
 
 // Two strong rules and a hairline, as on every table. Drawn here because the project ships no image files.
 const icon =
@@ -14,10 +14,7 @@ const icon =
       '<path fill="#13262b" d="M5 2h10v2H5zm0 4h10v1H5zm0 6h10v2H5z"/><path fill="#17655a" d="M1 0h3v9L2.500 7.500 1 9z"/></svg>',
   );
 
-export const links: Route.LinksFunction = () => [
-  { rel: "stylesheet", href: stylesheet },
-  { rel: "icon", href: icon, type: "image/svg+xml" },
-];
+export const links: Route.LinksFunction = () => [{ rel: "icon", href: icon, type: "image/svg+xml" }];
 
 export function Layout({ children }: { children: React.ReactNode }) {
   const nonce = useNonce();

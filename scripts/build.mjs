@@ -1,8 +1,8 @@
 // Builds the pages and the server's programs when a source is other than at the last build.
 import { createHash } from "node:crypto";
-import { existsSync, readdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
+import { existsSync, mkdirSync, readdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
 import path from "node:path";
-import { isScript, main, root, runOrStop, say } from "./terminal.mjs";
+import { isScript, main, root, runOrStop, say, sleep } from "./terminal.mjs";
 
 const SOURCES = [
   "app",
@@ -15,6 +15,7 @@ const SOURCES = [
   "public",
 ];
 const STAMP = path.join(root, "build", "stamp");
+const LOCK = path.join(root, ".data", "building");
 
 function* filesBelow(item) {
   if (!existsSync(path.join(root, item))) return;
@@ -41,17 +42,48 @@ function digestOfSources() {
   return hash.digest("hex");
 }
 
-/** @returns {Promise<boolean>} whether a build was needed */
+const isCurrent = (digest) => existsSync(STAMP) && readFileSync(STAMP, "utf8") === digest;
+
+/** Takes the one build place of this checkout; waits while another living process holds it. */
+async function takeTurn() {
+  mkdirSync(path.dirname(LOCK), { recursive: true, mode: 0o700 });
+  for (;;) {
+    try {
+      writeFileSync(LOCK, String(process.pid), { flag: "wx" });
+      return;
+    } catch (error) {
+      if (error.code !== "EEXIST") throw error;
+    }
+    const holder = existsSync(LOCK) ? readFileSync(LOCK, "utf8") : "";
+    if (holder !== "" && !existsSync(path.join("/proc", holder))) rmSync(LOCK, { force: true });
+    else await sleep(200);
+  }
+}
+
+/**
+ * Builds when a source is other than at the last build. Two at once take turns.
+ * @returns {Promise<boolean>} whether a build was needed
+ */
 export async function ensureBuild() {
-  const digest = digestOfSources();
-  if (existsSync(STAMP) && readFileSync(STAMP, "utf8") === digest) return false;
+  if (isCurrent(digestOfSources())) return false;
+  await takeTurn();
+  try {
+    const digest = digestOfSources();
+    if (isCurrent(digest)) return false;
+    await build(digest);
+    return true;
+  } finally {
+    rmSync(LOCK, { force: true });
+  }
+}
+
+async function build(digest) {
   say("Building …");
   rmSync(STAMP, { force: true });
   await runOrStop("The build failed.", path.join(root, "node_modules", ".bin", "react-router"), ["build"], {
     env: { ...process.env, NODE_ENV: "production" },
   });
   writeFileSync(STAMP, digest);
-  return true;
 }
 
 if (isScript(import.meta.url)) {

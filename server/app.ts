@@ -12,7 +12,7 @@ import { PROBLEM_TYPE, problemKinds, problemOf } from "#app/http/problem.ts";
 import { type RequestFacts, requestContext } from "#app/http/requestContext.server.ts";
 import { stopping } from "#app/http/stopping.server.ts";
 import { log } from "#app/log.server.ts";
-import { isApi } from "./front.ts";
+import { HEALTH, isApi } from "./front.ts";
 import { setStandardHeaders } from "./headers.ts";
 
 const YEAR = 365 * 24 * 60 * 60 * 1000;
@@ -34,7 +34,8 @@ function loggedPath(path: string): string {
 /** First step: gives the request its id, the answer its headers, and writes one line in the log when it is over. */
 const receive: RequestHandler = (request, response, next) => {
   const begun = performance.now();
-  const isPage = !isApi(request.path) && !request.path.startsWith("/assets/");
+  const isHealth = HEALTH.has(request.path);
+  const isPage = !isHealth && !isApi(request.path) && !request.path.startsWith("/assets/");
   const known: RequestFacts = {
     id: randomUUID(),
     address: request.ip ?? "",
@@ -48,6 +49,8 @@ const receive: RequestHandler = (request, response, next) => {
     nonce: isPage ? known.nonce : null,
   });
   const { method, path: requested } = request;
+  // A balancer asks every few seconds; that is not worth a line.
+  if (isHealth) return next();
   response.on("close", () => {
     log.info({
       event: "request",
@@ -129,9 +132,9 @@ function createApp(): express.Express {
   app.disable("x-powered-by");
   app.disable("etag");
   app.set("trust proxy", [...config().trustedProxies]);
+  app.use(receive);
   app.get("/healthz", answerHealth);
   app.get("/readyz", answerReadiness);
-  app.use(receive);
   app.use(keepFrameworkFromApi);
   // API answers keep their bytes, which their ETags are made from; event streams must not wait in a buffer.
   app.use(

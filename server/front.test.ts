@@ -1,5 +1,5 @@
 import { describe, expect, test } from "vitest";
-import { type Head, refusalOf } from "./front.ts";
+import { type Head, isForeign, refusalOf } from "./front.ts";
 
 const HOME = "https://tables.calderpoint.example";
 const head = (part: Partial<Head>): Head => ({
@@ -75,5 +75,34 @@ describe("refusalOf", () => {
       expect(refusalOf(head({ target: "/api/v1/editions", plainHttp: true }), HOME)).toMatchObject({ status: 400 });
       expect(refusalOf(head({ method: "POST", plainHttp: true }), HOME)).toMatchObject({ status: 400 });
     });
+  });
+});
+
+describe("isForeign", () => {
+  test.each([
+    ["our own origin", { origin: HOME, fetchSite: "same-origin" }, false],
+    ["typed by the person", { fetchSite: "none" }, false],
+    ["a program without either header", {}, false],
+    ["another origin", { origin: "https://elsewhere.example" }, true],
+    ["our host over plain http", { origin: "http://tables.calderpoint.example" }, true],
+    ["our host on another port", { origin: `${HOME}:8443` }, true],
+    ["an opaque origin", { origin: "null" }, true],
+    ["a sister host", { fetchSite: "same-site", origin: HOME }, true],
+    ["another site without Origin", { fetchSite: "cross-site" }, true],
+  ])("a POST from %s", (_from, sent, foreign) => {
+    const post = head({ method: "POST", target: "/resources/repair", ...sent });
+    expect(isForeign(post, HOME)).toBe(foreign);
+    expect(refusalOf(post, HOME)?.status).toBe(foreign ? 403 : undefined);
+  });
+
+  test.each(["GET", "HEAD"])("a %s changes nothing and is let through from anywhere", (method) => {
+    expect(isForeign(head({ method, origin: "https://elsewhere.example" }), HOME)).toBe(false);
+  });
+
+  test.each([
+    ["/api/v1/sheets", false],
+    ["/apiary", true],
+  ])("POST %s from another origin", (target, foreign) => {
+    expect(isForeign(head({ method: "POST", target, origin: "https://elsewhere.example" }), HOME)).toBe(foreign);
   });
 });

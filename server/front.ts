@@ -1,6 +1,6 @@
 /**
- * What is looked at before anything else sees a request: the method, the target and the host. Pure, so that each rule is
- * tested by itself.
+ * What is looked at before anything else sees a request: the method, the target, the host, and where it was sent from.
+ * Pure, so that each rule is tested by itself.
  */
 
 /** The parts of a request that decide whether it is let in. */
@@ -12,12 +12,16 @@ export interface Head {
   host: string | undefined;
   /** True when a trusted proxy says that the client came over plain http. */
   plainHttp: boolean;
+  /** The Origin header: the site whose page made the browser send this. */
+  origin?: string | undefined;
+  /** The Sec-Fetch-Site header: how far that site is from ours. */
+  fetchSite?: string | undefined;
 }
 
 /** Why a request is turned away. */
 export interface Refusal {
-  status: 400 | 405 | 308;
-  kind: "bad-request" | "method-not-allowed";
+  status: 400 | 403 | 405 | 308;
+  kind: "bad-request" | "forbidden" | "method-not-allowed";
   sentence: string;
   headers?: Record<string, string>;
 }
@@ -27,7 +31,7 @@ export const METHODS = ["GET", "HEAD", "POST", "PUT", "PATCH", "DELETE", "OPTION
 const bad = (sentence: string): Refusal => ({ status: 400, kind: "bad-request", sentence });
 
 /** Addresses that a load balancer asks for under whatever name it knows the machine by. */
-const HEALTH = new Set(["/healthz", "/readyz"]);
+export const HEALTH: ReadonlySet<string> = new Set(["/healthz", "/readyz"]);
 
 function decodes(text: string): boolean {
   try {
@@ -40,6 +44,19 @@ function decodes(text: string): boolean {
 /** Whether the address is one for programs, so that a refusal is a problem document. */
 export function isApi(target: string): boolean {
   return /^\/api(?:\/|\?|$)/.test(target);
+}
+
+const SAFE_METHODS = new Set(["GET", "HEAD", "OPTIONS"]);
+const OWN_SITES = new Set(["same-origin", "none"]);
+
+/**
+ * Whether a request that would change something was sent from another site. Browsers say where it comes from in
+ * Sec-Fetch-Site and Origin; a program that sends neither holds no cookie that a browser would add for it. The API is left
+ * out: it takes keys only, never the cookie.
+ */
+export function isForeign({ method, target, origin, fetchSite }: Head, publicUrl: string): boolean {
+  if (SAFE_METHODS.has(method) || isApi(target)) return false;
+  return (fetchSite !== undefined && !OWN_SITES.has(fetchSite)) || (origin !== undefined && origin !== publicUrl);
 }
 
 /**
@@ -76,6 +93,14 @@ export function refusalOf(head: Head, publicUrl: string): Refusal | undefined {
       return bad(`Use ${own.origin}; this service does not answer over plain http.`);
     }
     return { ...bad("Use https."), status: 308, headers: { Location: own.origin + target } };
+  }
+  // The framework has a rule of its own for this, but for pages only, and it answers as if we had failed.
+  if (isForeign(head, publicUrl)) {
+    return {
+      status: 403,
+      kind: "forbidden",
+      sentence: "This request came from another site, so nothing was changed. Open the page here and try again.",
+    };
   }
   return undefined;
 }

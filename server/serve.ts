@@ -81,6 +81,8 @@ export async function serve(handler: RequestListener, settings: Config): Promise
         target: request.url ?? "",
         host: (trusted ? first(request.headers["x-forwarded-host"]) : undefined) ?? request.headers.host,
         plainHttp: trusted && first(request.headers["x-forwarded-proto"]) === "http",
+        origin: request.headers.origin,
+        fetchSite: first(request.headers["sec-fetch-site"]),
       },
       publicUrl,
     );

@@ -46,8 +46,9 @@ export function openPool(url: string, options: ConnectionOptions = {}): pg.Pool 
     application_name: options.name ?? "tablewright",
     types,
   });
-  // A connection that the database closes while idle is dropped by the pool; without a listener it would end the
-  // process.
+  // A connection that the database closes is dropped by the pool, and a query on it fails by itself; without listeners
+  // it would end the process.
   pool.on("error", () => undefined);
+  pool.on("connect", (client) => client.on("error", () => undefined));
   return pool;
 }

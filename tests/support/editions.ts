@@ -187,13 +187,13 @@ async function somebody(email: string, name: string, role: "steward" | "reviewer
   return id;
 }
 
-function identityOf(key: string): SpeciesIdentity {
+export function identityOf(key: string): SpeciesIdentity {
   const reading = readKey(key);
   if (reading.outcome !== "read") throw new Error(`publishEditionOf: ${key}: ${reading.sentence}`);
   return reading.value;
 }
 
-async function insertSpecies(identity: SpeciesIdentity, db: Database): Promise<string> {
+export async function insertSpecies(identity: SpeciesIdentity, db: Database): Promise<string> {
   const { formula, phase } = identity;
   const { id } = await db
     .insertInto("species")
@@ -203,7 +203,7 @@ async function insertSpecies(identity: SpeciesIdentity, db: Database): Promise<s
   return id;
 }
 
-function sourceContentOf(source: SourceRow): SourceContent {
+export function sourceContentOf(source: SourceRow): SourceContent {
   const citation = source.citation ?? {
     type: "report",
     title: source.title ?? source.id,
@@ -218,7 +218,7 @@ function sourceContentOf(source: SourceRow): SourceContent {
   };
 }
 
-function detailContentOf(row: SpeciesRow): DetailContent {
+export function detailContentOf(row: SpeciesRow): DetailContent {
   const identity = identityOf(row.key);
   return {
     kind: "detail",
@@ -232,7 +232,7 @@ function detailContentOf(row: SpeciesRow): DetailContent {
   };
 }
 
-function valueContentOf(row: ValueRow): ValueContent {
+export function valueContentOf(row: ValueRow): ValueContent {
   return {
     kind: "value",
     digits: digits(row.digits),

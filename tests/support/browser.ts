@@ -1,0 +1,111 @@
+import { existsSync } from "node:fs";
+import path from "node:path";
+import { AxeBuilder } from "@axe-core/playwright";
+import { type Browser, type BrowserContext, chromium, type Page } from "playwright-core";
+import { afterAll, afterEach, beforeAll, expect } from "vitest";
+
+const FLAGS = [
+  "--headless",
+  "--no-sandbox",
+  "--disable-gpu",
+  "--disable-quic",
+  "--no-first-run",
+  "--disable-background-networking",
+  "--disable-component-update",
+  "--disable-sync",
+];
+
+/** WCAG 2.2 level AA, as far as a program can judge it. */
+const AXE_TAGS = ["wcag2a", "wcag2aa", "wcag21a", "wcag21aa", "wcag22aa"];
+
+/** What a person's browser offers to a test. */
+export interface TestBrowser {
+  /** A person's browser window: cookies of its own, nothing shared with another window. */
+  newWindow(baseUrl: string): Promise<Page>;
+  /** Says that the next console message holding `text` is meant to come, and is no failure. */
+  expectConsoleError(text: string): void;
+}
+
+function findChromium(): string {
+  const named = process.env["CHROMIUM"];
+  const found = named
+    ? [named]
+    : ["chromium", "chromium-browser", "google-chrome"].map((name) => path.join("/usr/bin", name));
+  const program = found.find((file) => existsSync(file));
+  // npm test has found or installed it before; alone, a missing browser fails the test and never skips it.
+  if (!program)
+    throw new Error("Chromium was not found; install Debian's package chromium, or set CHROMIUM to its path.");
+  return program;
+}
+
+/**
+ * Gives the test file a browser. Any console error, page error or refused script that the test did not announce fails the
+ * test in which it came.
+ */
+export function useBrowser(): TestBrowser {
+  let browser: Browser | undefined;
+  const windows: BrowserContext[] = [];
+  const complaints: string[] = [];
+  const foreseen: string[] = [];
+
+  beforeAll(async () => {
+    browser = await chromium.launch({ executablePath: findChromium(), args: FLAGS });
+  });
+  afterEach(() => {
+    const unforeseen = complaints.filter((line) => !foreseen.some((text) => line.includes(text)));
+    complaints.length = 0;
+    foreseen.length = 0;
+    expect(unforeseen).toEqual([]);
+  });
+  afterAll(async () => {
+    await Promise.all(windows.map((window) => window.close()));
+    await browser?.close();
+  });
+
+  return {
+    async newWindow(baseUrl) {
+      if (!browser) throw new Error("useBrowser(): the browser runs only while tests and hooks run.");
+      const window = await browser.newContext({
+        baseURL: baseUrl,
+        locale: "en-GB",
+        timezoneId: "UTC",
+        acceptDownloads: true,
+      });
+      windows.push(window);
+      const page = await window.newPage();
+      listen(page, complaints);
+      return page;
+    },
+    expectConsoleError(text) {
+      foreseen.push(text);
+    },
+  };
+}
+
+/** Collects what the page complains of. */
+function listen(page: Page, complaints: string[]): void {
+  // Chromium writes every answer from 400 on to the console. That a page or a fetch was refused is what tests look at;
+  // a missing file is a fault.
+  const refused = new Set<string>();
+  page.on("response", (response) => {
+    const kind = response.request().resourceType();
+    if (response.status() >= 400 && response.status() < 500 && ["document", "fetch", "xhr"].includes(kind)) {
+      refused.add(response.url());
+    }
+  });
+  page.on("console", (message) => {
+    if (message.type() !== "error") return;
+    if (message.text().startsWith("Failed to load resource") && refused.has(message.location().url)) return;
+    complaints.push(`${message.text()} (${message.location().url})`);
+  });
+  page.on("pageerror", (error) => complaints.push(`page error: ${error.message}`));
+}
+
+/** Fails when axe finds anything against WCAG 2.2 AA on the page as it stands. */
+export async function expectAccessible(page: Page): Promise<void> {
+  const { violations } = await new AxeBuilder({ page }).withTags(AXE_TAGS).analyze();
+  const found = violations.map(
+    ({ id, help, nodes }) => `${id}: ${help} — ${nodes.map((node) => node.target.join(" ")).join(", ")}`,
+  );
+  expect(found, `axe on ${page.url()}`).toEqual([]);
+}
