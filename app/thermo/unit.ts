@@ -75,6 +75,17 @@ export function convert(value: Digits, from: Unit, to: Unit): { digits: Digits; 
 }
 
 /**
+ * How many of one unit make up another, as the nearest double: for half units and uncertainties, whose own digits do
+ * not matter.
+ *
+ * @throws RangeError for unlike quantities
+ */
+export function conversionFactor(from: Unit, to: Unit): number {
+  if (!isLikeUnit(from, to)) throw new RangeError(`${from} and ${to} measure different quantities`);
+  return toNumber(conversionStep(from, to).factor);
+}
+
+/**
  * The exact factor from one unit to another, and how a person would write the step.
  * From a joule to a calorie the factor has no finite decimal, so it carries 30 digits.
  */
