@@ -4,7 +4,7 @@ import { enqueueLetter } from "#app/notify/letters.server.ts";
 import { revisionDecidedLetter, revisionReturnedLetter } from "#app/notify/reviewLetters.ts";
 import { demand } from "#app/people/permissions.ts";
 import type { Acting } from "#app/people/person.ts";
-import { findPersonById } from "#app/people/people.queries.server.ts";
+import { findAccount } from "#app/people/people.queries.server.ts";
 import { findingsOf } from "./examine.server.ts";
 import {
   findFinding,
@@ -192,7 +192,7 @@ export async function returnRevision(acting: Acting, id: number, remark: string)
       { revisionId: id, lineId: null, round: revision.round, body: remark, writtenBy: acting.person.id },
       trx,
     );
-    const author = await findPersonById(revision.madeBy, trx);
+    const author = await findAccount(revision.madeBy, trx);
     if (author) {
       await enqueueLetter(
         {
@@ -227,7 +227,7 @@ export async function closeReview(acting: Acting, id: number): Promise<{ accepte
       { id, from: revision.state, to: "decided", round: revision.round, by: acting.person.id, remark: "" },
       trx,
     );
-    const author = await findPersonById(revision.madeBy, trx);
+    const author = await findAccount(revision.madeBy, trx);
     if (author) {
       await enqueueLetter(
         {

@@ -77,7 +77,8 @@ export async function insertValues(rows: readonly ValueComing[], edition: number
           value: content.digits,
           uncertainty: content.uncertainty?.digits ?? null,
           uncertainty_kind: content.uncertainty?.kind ?? null,
-          coverage_factor: content.uncertainty?.kind === "expanded" ? (content.uncertainty.coverageFactor ?? 2) : null,
+          coverage_factor:
+            content.uncertainty?.kind === "expanded" ? String(content.uncertainty.coverageFactor ?? 2) : null,
           temperature: content.temperature,
           standard_pressure: content.standardPressure,
           basis: content.basis,

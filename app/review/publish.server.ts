@@ -4,7 +4,7 @@ import { Forbidden, Invalid, NotFound, Refused } from "#app/http/errors.ts";
 import { findEdition, findNewestEdition } from "#app/editions/editions.queries.server.ts";
 import { enqueueLetter } from "#app/notify/letters.server.ts";
 import { editionPublishedLetter } from "#app/notify/reviewLetters.ts";
-import { findPersonById } from "#app/people/people.queries.server.ts";
+import { findAccount } from "#app/people/people.queries.server.ts";
 import { demand } from "#app/people/permissions.ts";
 import type { Acting } from "#app/people/person.ts";
 import { keepExamination, findingsOf } from "./examine.server.ts";
@@ -229,7 +229,7 @@ async function tellAuthors(
     if (revision) byAuthor.set(revision.madeBy, [...(byAuthor.get(revision.madeBy) ?? []), id]);
   }
   for (const [authorId, revisions] of byAuthor) {
-    const author = await findPersonById(authorId, trx);
+    const author = await findAccount(authorId, trx);
     if (!author || author.id === acting.person.id) continue;
     await enqueueLetter(
       {

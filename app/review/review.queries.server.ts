@@ -707,15 +707,3 @@ export async function sealEdition(number: number, trx: Database): Promise<Buffer
   if (!digest) throw new Error("seal_edition answered nothing.");
   return digest;
 }
-
-/** People who hold the reviewer's role and may be written to. */
-export function findReviewers(db: Database) {
-  return db
-    .selectFrom("person as p")
-    .innerJoin("person_role as r", "r.person_id", "p.id")
-    .select(["p.id", "p.name", "p.email"])
-    .where("r.role", "=", "reviewer")
-    .where("p.switched_off_at", "is", null)
-    .orderBy("p.email")
-    .execute();
-}

@@ -5,6 +5,7 @@ import { Invalid, NotFound, Refused } from "#app/http/errors.ts";
 import { enqueueLetter } from "#app/notify/letters.server.ts";
 import { revisionSentLetter } from "#app/notify/reviewLetters.ts";
 import { demand } from "#app/people/permissions.ts";
+import { findPeopleWithRole } from "#app/people/people.queries.server.ts";
 import type { Acting } from "#app/people/person.ts";
 import type { LineContent } from "./content.ts";
 import { examineRevision } from "./examine.server.ts";
@@ -12,7 +13,6 @@ import {
   findLine,
   findLineBases,
   findLines,
-  findReviewers,
   findRevisionForUpdate,
   insertComment,
   insertLineVersion,
@@ -217,7 +217,7 @@ export async function sendToReview(acting: Acting, id: number, remark: string): 
     if (remark.trim()) {
       await insertComment({ revisionId: id, lineId: null, round, body: remark, writtenBy: acting.person.id }, trx);
     }
-    for (const reviewer of await findReviewers(trx)) {
+    for (const reviewer of await findPeopleWithRole("reviewer", trx)) {
       if (reviewer.id === acting.person.id) continue;
       await enqueueLetter(
         {

@@ -428,3 +428,112 @@ function valueHash(speciesId: string, property: Property, content: ValueContent)
     source: content.sourceId,
   });
 }
+
+/**
+ * Three small editions that hold one of everything a reader can meet. Numbers of edition 1 are CODATA Key Values (1989)
+ * except ammonia's ΔfH° and the heat capacity, which are those of the NBS tables (1982).
+ *
+ * 2: changes ammonia's ΔfH°, brings silver chloride, renames calcium carbonate. 3: withdraws silver chloride's S°, mends a
+ * citation, prints hydrogen's S° with a digit less, and withdraws edition 2.
+ */
+export async function publishThreeEditions(db: Database): Promise<readonly PublishedEdition[]> {
+  const water = { name: "water", cas: "7732-18-5" };
+  const first = await publishEditionOf(
+    {
+      notes: "The first edition.",
+      sources: [
+        {
+          id: "src_codata1989",
+          citation: {
+            type: "book",
+            title: "CODATA Key Values for Thermodynamics",
+            author: [
+              { family: "Cox", given: "J. D." },
+              { family: "Wagman", given: "D. D." },
+              { family: "Medvedev", given: "V. A." },
+            ],
+            publisher: "Hemisphere",
+            issued: { "date-parts": [[1989]] },
+          },
+        },
+        { id: "src_nbs1982", title: "The NBS Tables of Chemical Thermodynamic Properties", doi: "10.1063/1.555845" },
+      ],
+      species: [
+        { key: "H2O(l)", ...water },
+        { key: "H2O(g)", ...water },
+        { key: "H2(g)", name: "hydrogen", cas: "1333-74-0" },
+        { key: "C(cr,graphite)", name: "carbon" },
+        { key: "Na+(aq)", name: "sodium ion" },
+        { key: "NH3(g)", name: "ammonia", cas: "7664-41-7", synonyms: ["spirits of hartshorn"] },
+        { key: "CaCO3(cr)", name: "calcium carbonate" },
+      ],
+      values: [
+        codata("H2O(l)", "enthalpyOfFormation", "-285.830", "0.040"),
+        codata("H2O(l)", "entropy", "69.95", "0.03"),
+        codata("H2O(g)", "enthalpyOfFormation", "-241.826", "0.040"),
+        codata("H2O(g)", "entropy", "188.835", "0.010"),
+        codata("H2(g)", "enthalpyOfFormation", "0", null),
+        codata("H2(g)", "entropy", "130.680", "0.003"),
+        codata("C(cr,graphite)", "entropy", "5.74", "0.10"),
+        codata("Na+(aq)", "enthalpyOfFormation", "-240.34", "0.06"),
+        codata("Na+(aq)", "entropy", "58.45", "0.15"),
+        codata("NH3(g)", "entropy", "192.77", "0.05"),
+        { key: "NH3(g)", property: "enthalpyOfFormation", digits: "-46.11", sourceId: "src_nbs1982" },
+        {
+          key: "H2O(l)",
+          property: "heatCapacity",
+          digits: "75.291",
+          sourceId: "src_nbs1982",
+          given: { text: "17.995", unit: "cal/(mol K)", note: "× 4.184" },
+        },
+        { key: "CaCO3(cr)", property: "entropy", digits: "92.9", sourceId: "src_nbs1982" },
+      ],
+    },
+    db,
+  );
+  const second = await publishEditionOf(
+    {
+      notes: "Ammonia anew; silver chloride.",
+      sources: [{ id: "src_calderpoint9", title: "Calder Point Laboratory, cell 3 (invented)", kind: "measurement" }],
+      species: [
+        { key: "CaCO3(cr,calcite)", was: "CaCO3(cr)", name: "calcium carbonate, calcite" },
+        { key: "AgCl(cr)", name: "silver chloride" },
+      ],
+      values: [
+        {
+          key: "NH3(g)",
+          property: "enthalpyOfFormation",
+          digits: "-45.94",
+          uncertainty: expanded("0.35"),
+          sourceId: "src_calderpoint9",
+        },
+        codata("AgCl(cr)", "enthalpyOfFormation", "-127.01", "0.05"),
+        codata("AgCl(cr)", "entropy", "96.25", "0.20"),
+      ],
+    },
+    db,
+  );
+  const third = await publishEditionOf(
+    {
+      notes: "Withdraws edition 2.",
+      withdraws: { edition: 2, reason: "The ammonia value was read from the wrong column." },
+      sources: [
+        { id: "src_nbs1982", title: "The NBS tables of chemical thermodynamic properties", doi: "10.1063/1.555845" },
+      ],
+      values: [codata("H2(g)", "entropy", "130.68", "0.003")],
+      withdrawals: [{ key: "AgCl(cr)", property: "entropy", reason: "Not ours to print." }],
+    },
+    db,
+  );
+  return [first, second, third];
+}
+
+function codata(key: string, property: Property, printed: string, uncertainty: string | null): ValueRow {
+  return {
+    key,
+    property,
+    digits: printed,
+    uncertainty: uncertainty ? expanded(uncertainty) : null,
+    sourceId: "src_codata1989",
+  };
+}
