@@ -15,6 +15,13 @@ export interface Policy {
   readonly widerUncertainty: number;
   /** Relative distance within which a value counts as the standing one times a factor (1000, 4.184). */
   readonly factorAgreement: number;
+  /** Below this S° or Cp° of a pure substance is in another unit, J/(mol K); diamond, the lowest of all, has 2.4. */
+  readonly leastEntropy: number;
+  /** Above `mostEntropy` + `mostEntropyPerAtom` for each atom S° or Cp° is in another unit, J/(mol K). */
+  readonly mostEntropy: number;
+  readonly mostEntropyPerAtom: number;
+  /** Above this for each atom ΔfH° or ΔfG° is in another unit, kJ/mol; gas atoms of heavy metals reach 860. */
+  readonly mostEnergyPerAtom: number;
   /** Decimals that a value may carry beyond its standard uncertainty's first digit. */
   readonly digitsBeyondUncertainty: number;
 }
@@ -28,5 +35,9 @@ export const POLICY: Policy = {
   largeRelativeChange: 0.01,
   widerUncertainty: 1.5,
   factorAgreement: 0.02,
+  leastEntropy: 1,
+  mostEntropy: 300,
+  mostEntropyPerAtom: 100,
+  mostEnergyPerAtom: 1500,
   digitsBeyondUncertainty: 2,
 };
