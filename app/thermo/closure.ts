@@ -308,17 +308,17 @@ export function closureArithmetic(closure: GibbsClosure): string[] {
   const formed = parts.entropyOfFormation;
   const kilojoules = showNumber(formed.value / 1000, 5);
   const spread =
-    `2d + c + e = 2 × ${showNumber(parts.rounding, 3)} + ${showNumber(parts.allowance, 3)} + ` +
-    `${showNumber(parts.elements, 3)}`;
+    `2d + c + e = 2 × ${showNumber(parts.rounding, 4)} + ${showNumber(parts.allowance, 4)} + ` +
+    `${showNumber(parts.elements, 4)}`;
   return [
     entropyLine(formed),
     `ΔfH° − T ΔfS° = ${showDigits(parts.enthalpy)} − ${parts.temperature} × ${bracketed(kilojoules)} = ` +
       `${showNumber(parts.gibbsComputed, 3)} kJ/mol`,
     `r = ${showDigits(parts.gibbs)} − ${bracketed(showNumber(parts.gibbsComputed, 3))} = ${signed(residual)} kJ/mol`,
     parts.combinedUncertainty === null
-      ? `t = ${spread} = ${showNumber(tolerance, 2)} kJ/mol (one source)`
-      : `t = the larger of ${spread} and 2 u = 2 × ${showNumber(parts.combinedUncertainty, 3)}: ` +
-        `${showNumber(tolerance, 2)} kJ/mol (different sources)`,
+      ? `t = ${spread} = ${showNumber(tolerance, 3)} kJ/mol (one source)`
+      : `t = the larger of ${spread} and 2u = 2 × ${showNumber(parts.combinedUncertainty, 4)}: ` +
+        `${showNumber(tolerance, 3)} kJ/mol (different sources)`,
     `closes up to ${showNumber(tolerance, 2)}, blocks above ${showNumber(blockAbove, 2)} kJ/mol`,
   ];
 }
@@ -393,7 +393,7 @@ function shortNumber(value: number, place: number): string {
 
 function signed(value: number): string {
   const shown = showNumber(value, 2);
-  return /^[−0]/.test(shown) && !(value > 0) ? shown : `+${shown}`;
+  return shown.startsWith("−") || !/[1-9]/.test(shown) ? shown : `+${shown}`;
 }
 
 function bracketed(shown: string): string {
