@@ -16,6 +16,9 @@ export default function SpecimensPage() {
   const [search] = useSearchParams();
   const columns = ["species", "name", "enthalpyOfFormation", "entropy", "gibbsEnergyOfFormation"];
   return (
-    <Specimens sorting={readSorting(search.get("sort"), columns, { column: "species", direction: "ascending" })} />
+    <Specimens
+      withErrors={search.has("errors")}
+      sorting={readSorting(search.get("sort"), columns, { column: "species", direction: "ascending" })}
+    />
   );
 }

@@ -23,8 +23,8 @@ export interface Column<Row> {
   figure?: boolean;
   /** The cell that names its row; one a table. */
   rowHead?: boolean;
-  /** Text of the cell may break over lines. Without it cells keep to one line. */
-  wraps?: boolean;
+  /** Text of the cell may break over lines; "wide" for sentences. Without it cells keep to one line. */
+  wraps?: boolean | "wide";
   /** Negative, zero or positive, as for `Array.sort`. Rows without a value: use `missing`. */
   compare?: (a: Row, b: Row) => number;
   /** True for rows that have nothing in this column: they stand last in both directions. */
@@ -104,7 +104,13 @@ export function DataTable<Row extends object>(props: DataTableProps<Row>) {
             <tr key={row.id}>
               {mark && <MarginMark kind={mark(row.original)} />}
               {shown.map((column) => {
-                const cellClass = column.figure ? "figure" : column.wraps ? undefined : "tight";
+                const cellClass = column.figure
+                  ? "figure"
+                  : column.wraps === "wide"
+                    ? "wide"
+                    : column.wraps
+                      ? undefined
+                      : "tight";
                 return column.rowHead ? (
                   <th key={column.id} scope="row" className={cellClass}>
                     {column.cell(row.original)}

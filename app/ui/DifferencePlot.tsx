@@ -1,6 +1,7 @@
 import { SpeciesName } from "./SpeciesName.tsx";
 import { Table } from "./Table.tsx";
 import { scale, tickLabel, ticks } from "./scale.ts";
+import { cutFigure, tailOf } from "./figure.ts";
 import { InlineMark } from "./MarginMark.tsx";
 
 export interface Difference {
@@ -30,7 +31,8 @@ export function DifferencePlot({
     ...differences.map(({ difference, expanded }) => Math.abs(difference) + (expanded ?? 0)),
     1e-9,
   );
-  const marks = ticks(-reach, reach, 4);
+  const tail = tailOf(differences.map(({ printed }) => printed));
+  const marks = ticks(-reach, reach, 6);
   // 1000 units wide and stretched to the cell; strokes keep their width.
   const x = scale([-reach, reach], [20, 980]);
   return (
@@ -81,7 +83,9 @@ export function DifferencePlot({
                   />
                 </svg>
               </td>
-              <td className="figure">{printed}</td>
+              <td className="figure">
+                <Aligned text={printed} tail={tail} />
+              </td>
               <td className="tight">
                 {expanded === null ? (
                   <span className="text-soft">not known</span>
@@ -116,5 +120,15 @@ export function DifferencePlot({
         </tr>
       </tbody>
     </Table>
+  );
+}
+
+function Aligned({ text, tail }: { text: string; tail: number }) {
+  const { whole, fraction } = cutFigure(text);
+  return (
+    <span className="value">
+      {whole}
+      <span className={`value-tail tail-${tail}`}>{fraction}</span>
+    </span>
   );
 }

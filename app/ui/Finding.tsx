@@ -1,25 +1,31 @@
 import { Link } from "react-router";
-import type { Finding as FindingData } from "#app/checks/types.ts";
+import type { Finding as FindingData, Suggestion } from "#app/checks/types.ts";
 import { paths } from "#app/paths.ts";
 import { Prose } from "./Prose.tsx";
 import { markWords, Sign } from "./Signs.tsx";
 
-type Shown = Pick<FindingData, "check" | "severity" | "sentence" | "arithmetic" | "suggestions">;
+type ShownSuggestion = Pick<Suggestion, "property" | "becomes" | "slip" | "sentence">;
 
-interface FindingProps {
-  finding: Shown;
+interface FindingProps<S extends ShownSuggestion> {
+  finding: Pick<FindingData, "check" | "severity" | "sentence" | "arithmetic"> & { suggestions: readonly S[] };
   /** The check's title; without it the code is read as words ("gibbs-closure" is "Gibbs closure"). */
   title?: string | undefined;
   /** Who set it aside and why, in a sentence; the note then stands back. */
   setAside?: string | undefined;
   /** What can be done with one suggestion, beside it. */
-  suggestionAction?: ((suggestion: Shown["suggestions"][number]) => React.ReactNode) | undefined;
+  suggestionAction?: ((suggestion: S) => React.ReactNode) | undefined;
   /** Links and buttons under the note. */
   children?: React.ReactNode;
 }
 
 /** What a check found: severity in sign and word, the sentence, its arithmetic, and what single slips would explain it. */
-export function Finding({ finding, title, setAside, suggestionAction, children }: FindingProps) {
+export function Finding<S extends ShownSuggestion>({
+  finding,
+  title,
+  setAside,
+  suggestionAction,
+  children,
+}: FindingProps<S>) {
   const { severity, check } = finding;
   return (
     <section

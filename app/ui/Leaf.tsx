@@ -44,53 +44,55 @@ export function Leaf({ heading, headingKind, lede, section, bookmark, ribbon, ch
       <a className="skip" href="#text">
         Skip to the text
       </a>
-      <div className="leaf-margin">
+      <nav className="leaf-margin" aria-label="Bookmark">
         <Bookmark {...mark} />
-      </div>
+      </nav>
       <div className="leaf-text">
-        <header className="leaf-head">
-          <Link className="leaf-mark" to={paths.home()}>
-            Tablewright
-          </Link>
-          <nav className="leaf-nav" aria-label="Sections">
-            <ul>
-              {sections
-                .filter(([name]) => opens.includes(name))
-                .map(([name, label, to]) => (
-                  <li key={name}>
-                    <Link to={to} aria-current={name === section ? "page" : undefined}>
-                      {label}
-                    </Link>
-                  </li>
-                ))}
-            </ul>
-          </nav>
-          {opens.includes("table") && (
-            <Form method="get" action={paths.find()} role="search" className="contents">
-              <input
-                className="leaf-find"
-                type="search"
-                name="q"
-                aria-label="Find a species, source or revision"
-                placeholder="Find a species, source, revision"
-              />
-            </Form>
-          )}
-          {visitor ? (
-            <Link
-              className="leaf-person"
-              to={paths.account()}
-              aria-current={section === "account" ? "page" : undefined}
-            >
-              {visitor.name}
+        <header>
+          <div className="leaf-head">
+            <Link className="leaf-mark" to={paths.home()}>
+              Tablewright
             </Link>
-          ) : (
-            <Link className="leaf-person" to={paths.signIn()}>
-              Sign in
-            </Link>
-          )}
+            <nav className="leaf-nav" aria-label="Sections">
+              <ul>
+                {sections
+                  .filter(([name]) => opens.includes(name))
+                  .map(([name, label, to]) => (
+                    <li key={name}>
+                      <Link to={to} aria-current={name === section ? "page" : undefined}>
+                        {label}
+                      </Link>
+                    </li>
+                  ))}
+              </ul>
+            </nav>
+            {opens.includes("table") && (
+              <Form method="get" action={paths.find()} role="search" className="contents">
+                <input
+                  className="leaf-find"
+                  type="search"
+                  name="q"
+                  aria-label="Find a species, source or revision"
+                  placeholder="Find a species, source, revision"
+                />
+              </Form>
+            )}
+            {visitor ? (
+              <Link
+                className="leaf-person"
+                to={paths.account()}
+                aria-current={section === "account" ? "page" : undefined}
+              >
+                {visitor.name}
+              </Link>
+            ) : (
+              <Link className="leaf-person" to={paths.signIn()}>
+                Sign in
+              </Link>
+            )}
+          </div>
+          {ribbon ?? <DefaultRibbon currentEdition={currentEdition} />}
         </header>
-        {ribbon ?? <DefaultRibbon currentEdition={currentEdition} />}
         <main id="text" tabIndex={-1}>
           <h1 className={`leaf-title${headingKind === "species" ? " species-title" : ""}`} tabIndex={-1}>
             {heading}

@@ -9,7 +9,7 @@ export const markWords: Record<MarkKind, string> = { block: "blocks", look: "loo
 /** The sign of a severity: a square blocks, a triangle asks for a look, a dot remarks, a tick is clean. */
 export function Sign({ kind, size = 11 }: { kind: MarkKind; size?: number }) {
   return (
-    <svg className="inline-block" width={size} height={size} viewBox="0 0 12 12" aria-hidden="true" fill="currentColor">
+    <svg className="sign" width={size} height={size} viewBox="0 0 12 12" aria-hidden="true" fill="currentColor">
       {kind === "block" && <path d="M1 1h10v10H1z" />}
       {kind === "look" && <path d="M6 .8 11.6 11H.4z" />}
       {kind === "remark" && <circle cx="6" cy="6" r="2.6" />}
@@ -33,7 +33,7 @@ export function Drawn({ sign }: { sign: DrawnSign }) {
   const { label, plain, width, path } = signs[sign];
   return (
     <svg
-      className="inline-block align-[-0.15em]"
+      className="sign-drawn"
       role="img"
       aria-label={label}
       data-plain={plain}

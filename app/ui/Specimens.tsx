@@ -241,7 +241,7 @@ const phases = [
 ] as const;
 
 /** Every piece of the design in all its states, with sample figures. A page for development and for the tests. */
-export function Specimens({ sorting }: { sorting: Sorting }) {
+export function Specimens({ sorting, withErrors }: { sorting: Sorting; withErrors: boolean }) {
   return (
     <RootDataContext value={reader}>
       <Leaf
@@ -279,7 +279,7 @@ export function Specimens({ sorting }: { sorting: Sorting }) {
         <RevisionSpecimen />
         <SheetSpecimen />
         <DrawingSpecimens />
-        <FormSpecimens />
+        <FormSpecimens withErrors={withErrors} />
         <SmallPieces />
         <Caution />
         <DecisionBar
@@ -523,7 +523,9 @@ function SheetSpecimen() {
             <td className="figure">
               <InlineField label="Row 14, column S" wrong figure defaultValue="−16,72" />
             </td>
-            <td>The entropy of a substance cannot be negative. Did the sign come from the next column?</td>
+            <td className="wide">
+              The entropy of a substance cannot be negative. Did the sign come from the next column?
+            </td>
           </tr>
           <tr>
             <MarginMark kind="block" />
@@ -536,7 +538,7 @@ function SheetSpecimen() {
             <td>aq</td>
             <td className="figure">−217,34</td>
             <td className="figure">4,42</td>
-            <td>
+            <td className="wide">
               Two readings: <Formula printed="SO4-2" /> or <Formula printed="SO42-" />.{" "}
               <Button kind="text">
                 Take <Formula printed="SO4-2" />
@@ -640,7 +642,7 @@ function DrawingSpecimens() {
   );
 }
 
-function FormSpecimens() {
+function FormSpecimens({ withErrors }: { withErrors: boolean }) {
   const [pending, setPending] = useState(false);
   const wrongField = plainField("email", {
     errors: ["Write the address with an @, as in r.reviewer@calderpoint.example."],
@@ -649,7 +651,7 @@ function FormSpecimens() {
   return (
     <Section head="Forms">
       <Form method="get">
-        <FormErrors errors={["The form was not sent."]} fields={[[wrongField, "Email"]]} />
+        {withErrors && <FormErrors errors={["The form was not sent."]} fields={[[wrongField, "Email"]]} />}
         <Field field={wrongField} label="Email" type="email" autoComplete="email" />
         <Field
           field={plainField("title", { required: true })}

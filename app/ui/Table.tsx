@@ -70,7 +70,9 @@ export function RowUnder({
   return (
     <tr className="under">
       {marked && <td className="margin-cell" />}
-      <td colSpan={marked ? columns - 1 : columns}>{children}</td>
+      <td colSpan={marked ? columns - 1 : columns}>
+        <div className="under-text">{children}</div>
+      </td>
     </tr>
   );
 }

@@ -23,7 +23,7 @@ const unitNames = "kcal|cal|kJ|J|kg|mg|g|mol|eV|kPa|Pa|mV|V|kB|m|C|K";
 // A chain of at least one division, as the data spell it: "kJ/mol", "J/(mol K)", "cal/(mol K)", "g/mol", "C/mol".
 const unitPattern = `(?:${unitNames})/(?:(?:mol|K|g|kg|s)(?![A-Za-z])|\\((?:mol|K|kg|g)(?: (?:mol|K|kg|g))*\\))`;
 const symbolPattern =
-  "Δ[frca]?[HSGUC]p?°?|H°\\(T\\)\\s?[−-]\\s?H°\\(0\\)|(?:S|H|G)°|Cp°?|E_?n(?![a-z])|log10 ?K(?![a-z])|ln ?K(?![a-z])|χ²|T(?=ΔfS)";
+  "Δ[frca]?[HSGUC]p?°?|H°\\(T\\)\\s?[−-]\\s?H°\\(0\\)|(?:S|H|G)°|Cp°?|E_?n(?![a-z])|log10 ?K(?![a-z])|ln ?K(?![a-z])|χ²|T(?= ?·? ?Δ)";
 const keyPattern =
   "(?:[A-Z\\[(]|\\d+(?=[A-Z]))[A-Za-z0-9()\\[\\]·*./+−-]*?\\((?:g|l|s|cr|am|vit|lc|aq)(?:,[A-Za-z0-9α-ω-]+)?\\)";
 const superscripts = "⁰¹²³⁴⁵⁶⁷⁸⁹⁺⁻";
@@ -33,7 +33,9 @@ const scanner = new RegExp(
   [
     `(?<key>(?<![A-Za-z0-9])${keyPattern})`,
     `(?<unit>(?<![A-Za-z/])${unitPattern})`,
-    `(?<symbol>(?<![A-Za-z])(?:${symbolPattern}))`,
+    `(?<symbol>(?:(?<![A-Za-z])|(?=Δ))(?:${symbolPattern}))`,
+    "(?<formula>(?<=°\\()[A-Z][A-Za-z]*\\d[A-Za-z0-9]*(?=\\)))",
+    `(?<index>(?<=[A-Za-zΑ-ω°])_[A-Za-z0-9]{1,3}(?![A-Za-z0-9]))`,
     `(?<minus>(?<![A-Za-z0-9)\\]])-(?=\\d))`,
     `(?<raised>[${superscripts}]+)`,
     `(?<lowered>[${subscripts}]+)`,
@@ -125,7 +127,11 @@ export function typeset(text: string): Typeset[] {
     if (groups["key"] !== undefined) result.push({ kind: "species", key: whole });
     else if (groups["unit"] !== undefined) result.push({ kind: "pieces", pieces: unitPieces(whole), plain: whole });
     else if (groups["symbol"] !== undefined) result.push({ kind: "pieces", pieces: symbolPieces(whole), plain: whole });
-    else if (groups["minus"] !== undefined) result.push({ kind: "pieces", pieces: [{ text: "−" }], plain: "-" });
+    else if (groups["index"] !== undefined) {
+      result.push({ kind: "pieces", pieces: [{ text: whole.slice(1), as: "sub" }], plain: whole });
+    } else if (groups["formula"] !== undefined) {
+      result.push({ kind: "pieces", pieces: formulaPieces(whole), plain: whole });
+    } else if (groups["minus"] !== undefined) result.push({ kind: "pieces", pieces: [{ text: "−" }], plain: "-" });
     else if (groups["raised"] !== undefined) {
       const raised = [...whole].map((c) => raisedDigits[c] ?? c).join("");
       result.push({ kind: "pieces", pieces: [{ text: raised, as: "sup" }], plain: trueMinus(raised) });
