@@ -1,4 +1,4 @@
-import { readdirSync } from "node:fs";
+import { existsSync, readdirSync } from "node:fs";
 import path from "node:path";
 import { reactRouter } from "@react-router/dev/vite";
 import tailwindcss from "@tailwindcss/vite";
@@ -6,11 +6,12 @@ import { defineConfig } from "vite";
 
 /** The programs that are built for the server: the two processes, and one for each file in server/commands. */
 function serverPrograms(): Record<string, string> {
-  const commands = readdirSync("server/commands").filter((file) => file.endsWith(".ts"));
+  const folder = "server/commands";
+  const commands = existsSync(folder) ? readdirSync(folder).filter((file) => file.endsWith(".ts")) : [];
   return {
     web: "./server/web.ts",
     worker: "./server/worker.ts",
-    ...Object.fromEntries(commands.map((file) => [path.basename(file, ".ts"), `./server/commands/${file}`])),
+    ...Object.fromEntries(commands.map((file) => [path.basename(file, ".ts"), `./${folder}/${file}`])),
   };
 }
 
@@ -23,6 +24,4 @@ export default defineConfig(({ isSsrBuild }) => ({
     assetsInlineLimit: 0,
     ...(isSsrBuild ? { rollupOptions: { input: serverPrograms() } } : {}),
   },
-  // The local server of `npm run dev` is started by scripts/dev.mjs, which uses its own port for hot reload.
-  server: { middlewareMode: true },
 }));

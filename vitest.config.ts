@@ -2,8 +2,7 @@ import { defineConfig } from "vitest/config";
 
 const common = {
   environment: "node" as const,
-  // Expected texts and times are the same wherever the tests run.
-  env: { TZ: "UTC", NODE_ENV: "test" },
+  env: { NODE_ENV: "test" },
   restoreMocks: true,
 };
 

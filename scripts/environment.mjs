@@ -8,11 +8,13 @@ import { root, Stop } from "./terminal.mjs";
 /** What this checkout keeps between starts, beside its database. */
 export const dataFolder = path.join(root, ".data");
 
-/** The project's own reader of settings, which is TypeScript and so needs the installed packages. */
-async function settingsReader() {
+/** Loads one of the project's own TypeScript files, which needs the installed packages. */
+export async function importTypeScript(file) {
   const { createJiti } = await import("jiti");
-  return createJiti(import.meta.url).import(path.join(root, "app", "config.server.ts"));
+  return createJiti(import.meta.url).import(path.join(root, file));
 }
+
+const settingsReader = () => importTypeScript("app/config.server.ts");
 
 /** Stops with one sentence when a variable of the environment cannot be used. */
 export async function checkSettings() {

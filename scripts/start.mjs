@@ -2,58 +2,18 @@
 //
 // Without DATABASE_URL it runs the demo on a database of its own; with it, nothing is seeded and no account exists until
 // `npm run admin` makes the first.
-import { existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
 import { createServer } from "node:net";
-import path from "node:path";
 import { ensureBuild } from "./build.mjs";
+import { announce, claim, release } from "./claim.mjs";
 import { isEmpty, migrate, seed } from "./database.mjs";
-import { checkSettings, dataFolder, openEnvironment, publicUrlOf } from "./environment.mjs";
+import { checkSettings, importTypeScript, openEnvironment, publicUrlOf } from "./environment.mjs";
 import { startInbox } from "./inbox.mjs";
 import { startProgram, stopRequest } from "./processes.mjs";
 import { setup } from "./setup.mjs";
-import { main, root, say, sleep, Stop } from "./terminal.mjs";
+import { main, say, sleep, Stop } from "./terminal.mjs";
 
 const FIRST_PORT = 3000;
 const PORTS_TRIED = 50;
-const noteFile = path.join(dataFolder, "running.json");
-
-/** Whether a process of this number is one of ours; a number may have gone to another program since. */
-function isStart(pid) {
-  const commandLine = path.join("/proc", String(pid), "cmdline");
-  return existsSync(commandLine) && readFileSync(commandLine, "utf8").includes("start.mjs");
-}
-
-/** Claims this checkout for this process. When another one holds it, says so and returns false. */
-function claim() {
-  mkdirSync(dataFolder, { recursive: true, mode: 0o700 });
-  for (;;) {
-    try {
-      writeFileSync(noteFile, JSON.stringify({ pid: process.pid }), { flag: "wx" });
-      return true;
-    } catch (error) {
-      if (error.code !== "EEXIST") throw error;
-    }
-    const { pid, url } = readNote();
-    if (pid !== undefined && isStart(pid)) {
-      say(
-        url
-          ? `Tablewright is already running at ${url} (process ${pid}).`
-          : `Tablewright is already being started (process ${pid}).`,
-      );
-      return false;
-    }
-    // Left behind by a process that was ended by force.
-    rmSync(noteFile, { force: true });
-  }
-}
-
-function readNote() {
-  try {
-    return JSON.parse(readFileSync(noteFile, "utf8"));
-  } catch {
-    return {};
-  }
-}
 
 function isFree(port, host) {
   return new Promise((resolve) => {
@@ -92,13 +52,13 @@ async function waitUntilHealthy(host, port) {
   throw new Stop("The web process started but does not answer at /healthz.");
 }
 
-/** The demo's people; the seeds make them from the same file. */
-function demoAccounts() {
-  const people = JSON.parse(readFileSync(path.join(root, "db", "seeds", "accounts.json"), "utf8"));
+/** The demo's people, from the same file as the seeds make them from. */
+async function demoAccounts() {
+  const { demoPeople, DEMO_PASSWORD } = await importTypeScript("app/people/demoPeople.ts");
+  const people = Object.values(demoPeople);
   const widest = Math.max(...people.map((person) => person.email.length));
-  return people
-    .map((person) => `  ${person.email.padEnd(widest)}  ${person.password}  (${person.roles.join(", ")})`)
-    .join("\n");
+  const lines = people.map((person) => `  ${person.email.padEnd(widest)}  ${person.roles.join(", ")}`);
+  return `${lines.join("\n")}\nThe password of each is: ${DEMO_PASSWORD}`;
 }
 
 await main(async () => {
@@ -110,7 +70,7 @@ await main(async () => {
 
   const host = process.env.HOST || "127.0.0.1";
   // What was started, to be ended in the reverse order whatever happens.
-  const undo = [() => rmSync(noteFile, { force: true })];
+  const undo = [release];
   try {
     const port = await choosePort(host);
     const { demo, env, ownerUrl, appUrl, close } = await openEnvironment();
@@ -139,12 +99,12 @@ await main(async () => {
     up.catch(() => undefined);
     const early = await Promise.race([up.then(() => undefined), stopping, gaveUp]);
     if (early === undefined) {
-      writeFileSync(noteFile, JSON.stringify({ pid: process.pid, url: env.PUBLIC_URL }));
+      announce(env.PUBLIC_URL);
       const seconds = ((Date.now() - begun) / 1000).toFixed(1);
       say(`\nTablewright is running at ${env.PUBLIC_URL} (started in ${seconds} s). Ctrl-C stops it.`);
       if (demo) {
         say("This is the demo: DATABASE_URL is not set, so it keeps its own database on this machine.");
-        say(`Sign in as one of these people of the fictional Calder Point Laboratory:\n${demoAccounts()}`);
+        say(`Sign in as one of these people of the fictional Calder Point Laboratory:\n${await demoAccounts()}`);
         if (!process.env.SMTP_URL) say(`Letters are not sent; read them at ${env.PUBLIC_URL}/inbox`);
       } else {
         say(
