@@ -54,7 +54,7 @@ export const paths = {
   conventionsCheck: (check: string) => `/conventions/checks/${segment(check)}`,
 
   // People
-  signIn: (then?: string) => `/sign-in${queryString({ then })}`,
+  signIn: (to?: string) => `/sign-in${queryString({ to })}`,
   signOut: () => "/sign-out",
   forgotten: () => "/forgotten",
   reset: (token: string) => `/reset/${segment(token)}`,

@@ -43,6 +43,8 @@ const receive: RequestHandler = (request, response, next) => {
     actor: null,
   };
   factsOf.set(request, known);
+  // Acts put the id on record; whatever a client sent under this name is overwritten.
+  request.headers["x-request-id"] = known.id;
   setStandardHeaders(response, {
     publicUrl: config().publicUrl,
     requestId: known.id,

@@ -5,9 +5,8 @@
 
 import type { ColumnType } from "kysely";
 
-export type Generated<T> = T extends ColumnType<infer S, infer I, infer U>
-  ? ColumnType<S, I | undefined, U>
-  : ColumnType<T, T | undefined, T>;
+export type Generated<T> =
+  T extends ColumnType<infer S, infer I, infer U> ? ColumnType<S, I | undefined, U> : ColumnType<T, T | undefined, T>;
 
 export type Int8 = ColumnType<string, bigint | number | string, bigint | number | string>;
 
@@ -22,8 +21,6 @@ export type JsonObject = {
 export type JsonPrimitive = boolean | number | string | null;
 
 export type JsonValue = JsonArray | JsonObject | JsonPrimitive;
-
-export type Numeric = ColumnType<string, number | string, number | string>;
 
 export type Timestamp = ColumnType<Date, Date | string, Date | string>;
 
@@ -174,10 +171,18 @@ export interface Invitation {
 export interface Letter {
   attempts: Generated<number>;
   body: string;
+  /**
+   * On whose act the letter is written; null for the system and the command line.
+   */
+  from_person: string | null;
   id: Generated<string>;
   kind: string;
   last_error: string | null;
   made_at: Generated<Timestamp>;
+  /**
+   * The page the letter is about, as a path of this site; null when there is none or the link is made on sending.
+   */
+  path: string | null;
   /**
    * Null while it waits to be sent.
    */
@@ -457,7 +462,7 @@ export interface TableValue {
    * Standard state of a solute as the source said it: molality (1 mol/kg) or concentration (1 mol/L); null for other phases or when not said.
    */
   basis: string | null;
-  coverage_factor: Numeric | null;
+  coverage_factor: string | null;
   /**
    * The conversion that was applied, null when there was none.
    */
@@ -489,15 +494,15 @@ export interface TableValue {
   /**
    * In pascal.
    */
-  standard_pressure: Numeric;
+  standard_pressure: string;
   /**
    * In kelvin.
    */
-  temperature: Numeric;
+  temperature: string;
   /**
    * In the unit of the value, as given; null = none stated.
    */
-  uncertainty: Numeric | null;
+  uncertainty: string | null;
   /**
    * exact (by convention), standard (k = 1), expanded (with its coverage factor), unstated (counted as k = 2); null = none stated.
    */
@@ -506,7 +511,20 @@ export interface TableValue {
   /**
    * In the unit of the property: kJ/mol for enthalpyOfFormation, gibbsEnergyOfFormation and enthalpyIncrement; J/(mol K) for entropy and heatCapacity.
    */
-  value: Numeric;
+  value: string;
+}
+
+export interface TryCount {
+  began_at: Timestamp;
+  /**
+   * Which limit, a name of app/people/limits.ts.
+   */
+  limit_name: string;
+  /**
+   * SHA-256 of what the limit counts by: a source, an address, or both.
+   */
+  subject_hash: Buffer;
+  tries: number;
 }
 
 export interface DB {
@@ -538,4 +556,5 @@ export interface DB {
   species: Species;
   species_detail: SpeciesDetail;
   table_value: TableValue;
+  try_count: TryCount;
 }

@@ -1,4 +1,4 @@
-import { Logger, run, type Runner, type Task, type TaskList } from "graphile-worker";
+import { Logger, run, runOnce, type Runner, type RunnerOptions, type Task, type TaskList } from "graphile-worker";
 import type pg from "pg";
 import { log } from "#app/log.server.ts";
 import { tasks } from "./tasks.server.ts";
@@ -50,15 +50,11 @@ const neverMigrate: GraphileConfig.Plugin = {
   },
 };
 
-/** Starts to take jobs from the queue. `stop()` lets running jobs finish. */
-export async function startRunner(pgPool: pg.Pool): Promise<Runner> {
+function options(pgPool: pg.Pool): RunnerOptions {
   const taskList: TaskList = Object.fromEntries(
-    Object.entries(tasks).map(([name, work]) => [
-      name,
-      ((payload) => (work as Task)(payload, undefined as never)) as Task,
-    ]),
+    Object.entries(tasks).map(([name, work]) => [name, (payload: unknown) => work(payload as never)] as [string, Task]),
   );
-  return run({
+  return {
     pgPool,
     taskList,
     logger,
@@ -66,5 +62,15 @@ export async function startRunner(pgPool: pg.Pool): Promise<Runner> {
     pollInterval: POLL_INTERVAL,
     noHandleSignals: true,
     preset: { plugins: [neverMigrate] },
-  });
+  };
+}
+
+/** Starts to take jobs from the queue. `stop()` lets running jobs finish. */
+export async function startRunner(pgPool: pg.Pool): Promise<Runner> {
+  return run(options(pgPool));
+}
+
+/** Does the jobs whose time has come, and those they add, then ends. For tests and the seeds. */
+export async function runPending(pgPool: pg.Pool): Promise<void> {
+  await runOnce(options(pgPool));
 }

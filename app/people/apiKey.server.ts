@@ -1,0 +1,132 @@
+import { timingSafeEqual } from "node:crypto";
+import { act } from "#app/audit/act.server.ts";
+import { database } from "#app/db/database.server.ts";
+import { Forbidden, Invalid, NotFound, Refused, Unauthenticated } from "#app/http/errors.ts";
+import {
+  formatApiKey,
+  LONGEST_KEY_DAYS,
+  MOST_KEYS,
+  readApiKey,
+  type Scope,
+  SCOPES,
+  scopeInfo,
+  USED_EVERY,
+} from "./key.ts";
+import {
+  countKeys,
+  findKey,
+  findKeys,
+  insertKey,
+  type ListedKey,
+  updateLastUsed,
+  updateWithdrawn,
+} from "./keys.queries.server.ts";
+import { demand, may, permissions } from "./permissions.ts";
+import type { Acting } from "./person.ts";
+import { hashSecret, makeKeyId, makeSecret } from "./secrets.server.ts";
+
+const DAY = 24 * 60 * 60 * 1000;
+
+/**
+ * Who acts through the API key of a request. Keys are taken from the Authorization header only: an address ends up in logs
+ * and histories, and a cookie is sent by a browser without being asked.
+ *
+ * @throws Unauthenticated for a missing, mistyped, unknown, withdrawn or outdated key, or one whose owner is switched off;
+ *   Forbidden when the key lacks the scope or its owner no longer the role for it
+ */
+export async function requireKey(request: Request, scope: Scope, now: Date = new Date()): Promise<Acting> {
+  const header = request.headers.get("Authorization");
+  if (header === null) throw new Unauthenticated("Give an API key in the header Authorization: Bearer twk_….");
+  const [, text] = /^Bearer +(\S+)$/i.exec(header.trim()) ?? [];
+  const parts = text === undefined ? undefined : readApiKey(text);
+  if (!parts) throw new Unauthenticated("The Authorization header does not hold an API key of the form Bearer twk_….");
+  const key = await findKey(parts.id, database());
+  // The same sentence whether the id or the secret is wrong: neither can be tried by itself.
+  if (!key || !timingSafeEqual(key.secretHash, hashSecret(parts.secret))) {
+    throw new Unauthenticated("This API key is not known. Look at its spelling, or make a new one.");
+  }
+  if (key.withdrawnAt) throw new Unauthenticated("This API key was withdrawn. Make a new one.");
+  if (key.endsAt <= now) throw new Unauthenticated("This API key is past its time. Make a new one.");
+  if (key.ownerSwitchedOffAt) throw new Unauthenticated("The account that this API key belongs to is switched off.");
+  if (!key.scopes.includes(scope)) {
+    throw new Forbidden(`This API key does not hold the scope ${scope}. Make one that does.`);
+  }
+  if (!may(key.owner.roles, scopeInfo[scope].permission)) {
+    const needed = permissions[scopeInfo[scope].permission].join(" or ");
+    throw new Forbidden(`The owner of this API key no longer holds a role that this needs (${needed}).`);
+  }
+  if (!key.lastUsedAt || now.getTime() - key.lastUsedAt.getTime() >= USED_EVERY) {
+    await updateLastUsed(key.id, now, database());
+  }
+  return { person: key.owner, apiKeyId: key.id, requestId: request.headers.get("X-Request-Id") };
+}
+
+/** What a key is made of, as its owner chooses it. */
+export interface NewKey {
+  name: string;
+  scopes: readonly Scope[];
+  /** How long it can be used. */
+  days: number;
+}
+
+/**
+ * Makes an API key of one's own.
+ * @returns the key, to be shown once: only its hash is stored
+ * @throws Invalid, Refused (too many keys), Forbidden (a scope for which one lacks the role)
+ */
+export async function makeKey(
+  acting: Acting,
+  { name, scopes, days }: NewKey,
+  now: Date = new Date(),
+): Promise<{ id: string; key: string; endsAt: Date }> {
+  demand(acting, "key:own");
+  const title = name.trim();
+  if (title === "" || title.length > 80 || /\p{Cc}/u.test(title)) {
+    const detail = "Give the key a name of 1 to 80 characters that says which program uses it.";
+    throw new Invalid(detail, [{ pointer: "/name", detail }]);
+  }
+  const chosen = SCOPES.filter((scope) => scopes.includes(scope));
+  if (chosen.length === 0) {
+    const detail = "Choose at least one thing the key may do.";
+    throw new Invalid(detail, [{ pointer: "/scopes", detail }]);
+  }
+  for (const scope of chosen) demand(acting, scopeInfo[scope].permission);
+  if (!Number.isInteger(days) || days < 1 || days > LONGEST_KEY_DAYS) {
+    const detail = `Give a whole number of days from 1 to ${LONGEST_KEY_DAYS}.`;
+    throw new Invalid(detail, [{ pointer: "/days", detail }]);
+  }
+  const secret = makeSecret();
+  const id = makeKeyId();
+  const endsAt = new Date(now.getTime() + days * DAY);
+  await act(acting, async ({ trx, record }) => {
+    if ((await countKeys(acting.person.id, now, trx)) >= MOST_KEYS) {
+      throw new Refused(`You hold ${MOST_KEYS} keys already, which is the most. Withdraw one that is no longer used.`);
+    }
+    await insertKey(
+      { id, personId: acting.person.id, name: title, scopes: chosen, secretHash: secret.hash, madeAt: now, endsAt },
+      trx,
+    );
+    record({ act: "key.made", objectId: id, detail: { name: title, scopes: chosen, endsAt: endsAt.toISOString() } });
+  });
+  return { id, key: formatApiKey({ id, secret: secret.text }), endsAt };
+}
+
+/**
+ * Withdraws one of one's own keys; its next request is refused.
+ * @throws NotFound when one has no such key, or it was withdrawn before
+ */
+export async function withdrawKey(acting: Acting, id: string, now: Date = new Date()): Promise<void> {
+  demand(acting, "key:own");
+  await act(acting, async ({ trx, record }) => {
+    if (!(await updateWithdrawn(id, acting.person.id, now, trx))) {
+      throw new NotFound("You have no such key in use; it may have been withdrawn already.");
+    }
+    record({ act: "key.withdrawn", objectId: id });
+  });
+}
+
+/** One's own keys, the newest first. */
+export async function findOwnKeys(acting: Acting): Promise<ListedKey[]> {
+  demand(acting, "key:own");
+  return findKeys(acting.person.id, database());
+}

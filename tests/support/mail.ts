@@ -1,0 +1,73 @@
+import { readdir, readFile } from "node:fs/promises";
+import path from "node:path";
+import { simpleParser } from "mailparser";
+import type { SendMailOptions } from "nodemailer";
+import { afterAll, beforeAll, beforeEach } from "vitest";
+import { useMailTransport } from "#app/notify/transport.server.ts";
+
+/** A letter as its reader gets it. */
+export interface ReadLetter {
+  to: string;
+  subject: string;
+  text: string;
+}
+
+/** The letters that were sent while a test ran, oldest first. */
+export interface Outbox {
+  readonly sent: readonly SendMailOptions[];
+  /** The newest letter to an address. @throws when there is none */
+  newestTo(address: string): ReadLetter;
+}
+
+function addressOf(mail: SendMailOptions): string {
+  const { to } = mail;
+  if (typeof to === "object" && "address" in to && to.address) return to.address;
+  throw new Error("A letter has one recipient, given as an address.");
+}
+
+/** Puts an outbox in the place of the mail server for a test file; it is emptied before each test. */
+export function useOutbox(): Outbox {
+  const sent: SendMailOptions[] = [];
+  beforeAll(() => useMailTransport({ sendMail: async (mail) => sent.push(mail) }));
+  beforeEach(() => void (sent.length = 0));
+  afterAll(() => useMailTransport(undefined));
+  return {
+    sent,
+    newestTo(address) {
+      const mail = sent.findLast((one) => addressOf(one) === address);
+      if (!mail) throw new Error(`No letter was sent to ${address}; there are ${sent.length} to others.`);
+      return { to: address, subject: String(mail.subject), text: String(mail.text) };
+    },
+  };
+}
+
+/** The path of the first link to this site in a letter. */
+export function linkIn(letter: ReadLetter): string {
+  const address = /^https?:\/\/\S+$/m.exec(letter.text)?.[0];
+  if (!address) throw new Error(`The letter "${letter.subject}" holds no link.`);
+  return new URL(address).pathname;
+}
+
+/**
+ * Waits for a letter in the folder of the demo's inbox, for tests that run against the built server.
+ * @param timeout in milliseconds
+ */
+export async function waitForLetter(
+  folder: string,
+  { to, subject }: { to: string; subject?: RegExp },
+  timeout = 10_000,
+): Promise<ReadLetter> {
+  const deadline = Date.now() + timeout;
+  do {
+    const files = (await readdir(folder).catch(() => [])).filter((file) => file.endsWith(".eml")).sort();
+    for (const file of files.reverse()) {
+      const mail = await simpleParser(await readFile(path.join(folder, file)));
+      const recipients = [mail.to ?? []].flat().flatMap((list) => list.value.map(({ address }) => address));
+      if (recipients.includes(to) && (subject === undefined || subject.test(mail.subject ?? ""))) {
+        return { to, subject: mail.subject ?? "", text: mail.text ?? "" };
+      }
+    }
+    await new Promise((resolve) => setTimeout(resolve, 100));
+  } while (Date.now() < deadline);
+  throw new Error(`No letter to ${to} arrived within ${timeout / 1000} s.`);
+}
