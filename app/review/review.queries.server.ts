@@ -624,29 +624,22 @@ export function findFindings(examinationId: string, db: Database) {
       join.onRef("a.revision_id", "=", "f.revision_id").onRef("a.fingerprint", "=", "f.fingerprint"),
     )
     .leftJoin("person as p", "p.id", "a.set_aside_by")
-    .select([
+    .select((eb) => [
       "f.id",
       "f.line_id as lineId",
       "f.species_id as speciesId",
-      "f.property",
+      eb.ref("f.property").$castTo<Property | null>().as("property"),
       "f.check_code as check",
-      "f.severity",
+      eb.ref("f.severity").$castTo<Finding["severity"]>().as("severity"),
       "f.sentence",
-      "f.arithmetic",
-      "f.data",
-      "f.suggestions",
+      eb.ref("f.arithmetic").$castTo<Finding["arithmetic"]>().as("arithmetic"),
+      eb.ref("f.data").$castTo<Finding["data"]>().as("data"),
+      eb.ref("f.suggestions").$castTo<Finding["suggestions"]>().as("suggestions"),
       "f.fingerprint",
       "a.reason as setAsideReason",
       "a.set_aside_at as setAsideAt",
       "p.name as setAsideBy",
     ])
-    .$narrowType<{
-      severity: Finding["severity"];
-      property: Property | null;
-      arithmetic: Finding["arithmetic"];
-      data: Finding["data"];
-      suggestions: Finding["suggestions"];
-    }>()
     .where("f.examination_id", "=", examinationId)
     .orderBy("f.id")
     .execute();

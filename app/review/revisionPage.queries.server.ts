@@ -3,7 +3,8 @@ import type { Database } from "#app/db/database.server.ts";
 import type { SourceKind } from "#app/checks/types.ts";
 import type { Digits } from "#app/thermo/digits.ts";
 import type { Uncertainty } from "#app/thermo/uncertainty.ts";
-import { type LineContent, lineContent } from "./content.ts";
+import { lineContent } from "./content.ts";
+import type { LineRow } from "./review.queries.server.ts";
 import type { StoodContent } from "./revisionPage.ts";
 
 /*
@@ -11,8 +12,9 @@ import type { StoodContent } from "./revisionPage.ts";
  * lists of ids, so that a revision of thousands of lines costs the same number of statements as one of three.
  */
 
-/** `column = any(list)` takes one parameter however long the list is. */
-const anyOf = (ids: readonly string[]) => sql`any(${[...ids]})`;
+/** A list of ids as one parameter, however long it is. */
+const anyNumber = (ids: readonly string[]) => sql`any(${[...ids]}::bigint[])`;
+const anyText = (ids: readonly string[]) => sql`any(${[...ids]}::text[])`;
 
 /** Standing or former rows of values by row id, in the shape of a line's content, with the editions they stood in. */
 export async function findValueRows(ids: readonly string[], db: Database) {
@@ -29,7 +31,7 @@ export async function findValueRows(ids: readonly string[], db: Database) {
       eb.ref("v.uncertainty_kind").$castTo<Uncertainty["kind"] | null>().as("kind"),
       eb.ref("v.coverage_factor").$castTo<string | null>().as("coverageFactor"),
     ])
-    .where(sql<boolean>`v.id = ${anyOf(ids)}::bigint[]`)
+    .where(sql<boolean>`v.id = ${anyNumber(ids)}`)
     .execute();
   return rows.map(({ id, since, until, sourceId, digits, uncertainty, kind, coverageFactor }) => ({
     id,
@@ -52,8 +54,19 @@ export async function findDetailRows(ids: readonly string[], db: Database) {
   if (ids.length === 0) return [];
   const rows = await db
     .selectFrom("species_detail as d")
-    .select(["d.id", "d.since", "d.until", "d.key", "d.printed", "d.label", "d.name", "d.cas", "d.inchikey", "d.synonyms"])
-    .where(sql<boolean>`d.id = ${anyOf(ids)}::bigint[]`)
+    .select([
+      "d.id",
+      "d.since",
+      "d.until",
+      "d.key",
+      "d.printed",
+      "d.label",
+      "d.name",
+      "d.cas",
+      "d.inchikey",
+      "d.synonyms",
+    ])
+    .where(sql<boolean>`d.id = ${anyNumber(ids)}`)
     .execute();
   return rows.map(({ id, since, until, ...detail }) => ({
     id,
@@ -77,7 +90,7 @@ export async function findSourceRows(ids: readonly string[], db: Database) {
       eb.ref("s.citation").$castTo<Record<string, unknown>>().as("citation"),
       eb.ref("s.kind").$castTo<SourceKind>().as("sourceKind"),
     ])
-    .where(sql<boolean>`s.id = ${anyOf(ids)}::bigint[]`)
+    .where(sql<boolean>`s.id = ${anyNumber(ids)}`)
     .execute();
   return rows.map(({ id, since, until, ...source }) => ({
     id,
@@ -94,7 +107,7 @@ export async function findVersionContents(ids: readonly string[], db: Database) 
     .selectFrom("line_version as v")
     .innerJoin("revision_line as l", "l.id", "v.line_id")
     .select(["v.id", "v.content", "l.revision_id as revisionId", "l.published_in as publishedIn"])
-    .where(sql<boolean>`v.id = ${anyOf(ids)}::bigint[]`)
+    .where(sql<boolean>`v.id = ${anyNumber(ids)}`)
     .execute();
   return rows.map((row) => ({ ...row, content: lineContent.parse(row.content) }));
 }
@@ -106,7 +119,7 @@ export async function findNewestNames(speciesIds: readonly string[], db: Databas
     .selectFrom("species_detail as d")
     .distinctOn("d.species_id")
     .select((eb) => ["d.species_id as speciesId", "d.key", "d.name", eb("d.until", "is", null).as("stands")])
-    .where(sql<boolean>`d.species_id = ${anyOf(speciesIds)}::text[]`)
+    .where(sql<boolean>`d.species_id = ${anyText(speciesIds)}`)
     .orderBy("d.species_id")
     .orderBy("d.since", "desc")
     .execute();
@@ -119,7 +132,7 @@ export async function findProposedNames(speciesIds: readonly string[], db: Datab
     select distinct on (l.species_id) l.species_id as "speciesId", v.content->>'key' as key, v.content->>'name' as name
       from revision_line l
       join line_version v on v.line_id = l.id
-     where l.kind = 'detail' and l.species_id = ${anyOf(speciesIds)}::text[]
+     where l.kind = 'detail' and l.species_id = ${anyText(speciesIds)}
      order by l.species_id, (l.state = 'accepted') desc, v.id desc
   `.execute(db);
   return result.rows;
@@ -136,7 +149,7 @@ export async function findNewestCitations(sourceIds: readonly string[], db: Data
       eb.ref("s.citation").$castTo<Record<string, unknown>>().as("citation"),
       eb("s.until", "is", null).as("stands"),
     ])
-    .where(sql<boolean>`s.source_id = ${anyOf(sourceIds)}::text[]`)
+    .where(sql<boolean>`s.source_id = ${anyText(sourceIds)}`)
     .orderBy("s.source_id")
     .orderBy("s.since", "desc")
     .execute();
@@ -149,25 +162,53 @@ export async function findProposedCitations(sourceIds: readonly string[], db: Da
     select distinct on (l.source_id) l.source_id as "sourceId", v.content->'citation' as citation
       from revision_line l
       join line_version v on v.line_id = l.id
-     where l.kind = 'source' and l.source_id = ${anyOf(sourceIds)}::text[]
+     where l.kind = 'source' and l.source_id = ${anyText(sourceIds)}
      order by l.source_id, (l.state = 'accepted') desc, v.id desc
   `.execute(db);
   return result.rows;
 }
 
-/** Lines that were taken out of a revision or fell with it, as they last read. */
-export async function findDroppedLines(revisionId: number, db: Database) {
+/** Lines that were taken out of a revision or fell with it, as they last read, in their order. */
+export async function findDroppedLines(revisionId: number, db: Database): Promise<LineRow[]> {
   const rows = await db
     .selectFrom("revision_line as l")
-    .innerJoin("line_version as v", "v.line_id", "l.id")
-    .distinctOn("l.id")
-    .select(["l.id", "l.species_id as speciesId", "l.property", "l.source_id as sourceId", "v.content"])
+    .innerJoinLateral(
+      (eb) =>
+        eb
+          .selectFrom("line_version as v")
+          .selectAll("v")
+          .whereRef("v.line_id", "=", "l.id")
+          .orderBy("v.version", "desc")
+          .limit(1)
+          .as("v"),
+      (join) => join.onTrue(),
+    )
+    .select((eb) => [
+      "l.id",
+      "l.revision_id as revisionId",
+      "l.position",
+      eb.ref("l.kind").$castTo<LineRow["kind"]>().as("kind"),
+      "l.species_id as speciesId",
+      eb.ref("l.property").$castTo<LineRow["property"]>().as("property"),
+      "l.source_id as sourceId",
+      "l.row_number as rowNumber",
+      "l.against_row as againstRow",
+      "l.against_version as againstVersion",
+      eb.ref("l.state").$castTo<LineRow["state"]>().as("state"),
+      "l.published_in as publishedIn",
+      "v.id as versionId",
+      "v.version",
+      "v.content",
+      "v.content_hash as contentHash",
+      "v.made_by as madeBy",
+      "v.made_at as madeAt",
+    ])
     .where("l.revision_id", "=", revisionId)
     .where("l.state", "=", "dropped")
+    .orderBy("l.position")
     .orderBy("l.id")
-    .orderBy("v.version", "desc")
     .execute();
-  return rows.map((row) => ({ ...row, content: lineContent.parse(row.content) as LineContent }));
+  return rows.map((row) => ({ ...row, content: lineContent.parse(row.content) }));
 }
 
 /** Who took which line out and why, from the record. */
