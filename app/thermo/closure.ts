@@ -47,6 +47,9 @@ export interface ElementPart {
   readonly count: number;
   /** Atoms of the element that go in, n_E: ν_E, less z for the hydrogen of a solute. */
   readonly netCount: number;
+  /** S° of the reference state as printed, J/(mol K), and the atoms in its formula. */
+  readonly digits: Digits;
+  readonly atoms: number;
   /** S° per atom of the reference state, J/(mol K). */
   readonly entropy: number;
   /** Half a unit of its last printed place, per atom, J/(mol K). */
@@ -185,6 +188,8 @@ export function entropyOfFormation(
       key: found.key,
       count,
       netCount,
+      digits: found.digits,
+      atoms,
       entropy: toNumber(found.digits) / atoms,
       halfUnit: toNumber(halfUnit(found.digits)) / atoms,
       standardUncertainty: uncertainty === null ? null : uncertainty / atoms,
@@ -374,21 +379,29 @@ function atomsOf(element: string, key: string): number {
 function entropyLine(formed: EntropyOfFormation): string {
   const elements = formed.parts
     .filter(({ count }) => count !== 0)
-    .map(({ element, count, entropy }) => `${shortNumber(count, 4)} ${element} × ${shortNumber(entropy, 4)}`);
-  const hydrogenEntropy = formed.charge === 0 ? 0 : (2 * formed.chargeTerm) / formed.charge;
+    .map((part) => `${withoutZeros(part.count, 4, 0)} ${part.element} × ${perAtom(part, 1)}`);
+  const hydrogen = formed.parts.find(({ element }) => element === "H");
   const convention =
-    formed.charge === 0
+    formed.charge === 0 || hydrogen === undefined
       ? ""
-      : ` + ${bracketed(`${showNumber(formed.charge, 0)}/2`)} × ${shortNumber(hydrogenEntropy, 4)} (H2)`;
+      : ` + ${bracketed(`${showNumber(formed.charge, 0)}/2`)} × ${perAtom(hydrogen, 2)} (H2)`;
   return (
     `ΔfS° = ${showDigits(formed.entropy)} − (${elements.join(" + ")})${convention} = ` +
     `${showNumber(formed.value, Math.max(2, places(formed.entropy)))} J/(mol K)`
   );
 }
 
-/** Up to so many decimals, without zeros at the end. */
-function shortNumber(value: number, place: number): string {
-  return showNumber(value, place).replace(/\.?0+$/, "");
+/** S° of so many atoms of a reference state, with the digits it was printed with. */
+function perAtom(part: ElementPart, atoms: number): string {
+  if (part.atoms === atoms) return showDigits(part.digits);
+  return withoutZeros(part.entropy * atoms, places(part.digits) + 3, places(part.digits));
+}
+
+/** Up to so many decimals, without zeros at the end, but never fewer decimals than stated. */
+function withoutZeros(value: number, most: number, fewest: number): string {
+  const short = showNumber(value, most).replace(/\.?0+$/, "");
+  const decimals = short.split(".")[1]?.length ?? 0;
+  return decimals < fewest ? showNumber(value, fewest) : short;
 }
 
 function signed(value: number): string {

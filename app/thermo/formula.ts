@@ -221,8 +221,8 @@ class GroupParser {
       for (const [element, inner] of unit.counts) addTo(counts, element, productOf(inner, count));
       printed += `${unit.printed}${isOne(count) ? "" : spellFraction(count)}`;
     }
-    if (printed === "")
-      throw this.position < this.text.length ? this.unexpected() : new FormulaFault("a bracket is empty.");
+    if (printed === "" && depth > 0) throw new FormulaFault("a bracket is empty.");
+    if (printed === "") throw this.unexpected();
     return { printed, counts };
   }
 

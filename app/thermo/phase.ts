@@ -79,7 +79,7 @@ const NOT_KEPT: Readonly<Record<string, string>> = {
 
 /** What may stand behind aq without naming a concentration: the standard state itself. */
 const STANDARD_SOLUTE =
-  /^(?:∞|inf(?:inite)?(?:-dilution|-dil)?|std(?:-state)?|standard-state|undissoc(?:iated|\.)?|ao|ion(?:ized|ised)?)$/i;
+  /^(?:∞|inf(?:inite)?(?:-dilution|-dil)?|std\.?(?:-state)?|standard-state|undissoc(?:iated|\.)?|ao|ion(?:ized|ised)?)$/i;
 
 /**
  * Reads a phase as sheets and handbooks spell it, with or without brackets: `g`, `gas`, `lq`, `c,alpha`, `(cr, graphite)`.
