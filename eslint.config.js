@@ -84,6 +84,8 @@ const importPolicies = [
   { from: file("act", "queries", "enqueue", "top"), allow: { to: file("settings") } },
   { from: from("server", "tests", "seeds", "routes"), allow: { to: file("settings", "paths", "top") } },
   { from: from("ui", "notify", "http"), allow: { to: file("paths") } },
+  // Each route module takes the types that the framework writes for it (./+types/…), and nothing of another's code.
+  { from: from("routes"), allow: { to: to("routes"), dependency: { kind: "type" } } },
   { from: file("top"), allow: { to: to("http", "ui", "styles", ...everyRoom) } },
   { from: file("top", "settings", "test"), allow: { to: file("top", "paths", "settings") } },
 ];

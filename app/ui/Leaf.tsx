@@ -33,7 +33,7 @@ const sections: readonly (readonly [SectionName, string, string])[] = [
 
 /** The frame of every page: the ruled margin with its bookmark, the head, the ribbon, and one column of text. */
 export function Leaf({ heading, headingKind, lede, section, bookmark, ribbon, children }: LeafProps) {
-  const { visitor, opens, currentEdition } = useRootData();
+  const { visitor, opens, currentEdition, demo } = useRootData();
   const mark: BookmarkProps =
     bookmark ??
     (currentEdition === null
@@ -103,6 +103,12 @@ export function Leaf({ heading, headingKind, lede, section, bookmark, ribbon, ch
         <footer className="leaf-foot">
           298.15 K and 100 kPa unless a value says otherwise · <Link to={paths.conventions()}>conventions</Link> ·{" "}
           <Link to={paths.apiGuide()}>for programs</Link>
+          {demo && (
+            <>
+              {" "}
+              · a demonstration with invented in-house numbers; its <Link to={paths.inbox()}>letters</Link> stay here
+            </>
+          )}
         </footer>
       </div>
     </div>
@@ -110,6 +116,8 @@ export function Leaf({ heading, headingKind, lede, section, bookmark, ribbon, ch
 }
 
 function DefaultRibbon({ currentEdition }: { currentEdition: number | null }) {
+  const { visitor } = useRootData();
+  if (!visitor) return <Ribbon>Standard formation properties of substances, in numbered editions</Ribbon>;
   return (
     <Ribbon>
       {currentEdition === null ? (

@@ -42,6 +42,7 @@ const reader: RootData = {
   visitor: { name: "R. Reviewer", roles: ["reviewer"] },
   opens: ["table", "sheets", "revisions", "editions", "sources", "conventions"],
   currentEdition: 7,
+  demo: true,
 };
 
 interface Row {

@@ -12,9 +12,11 @@ export interface RootData {
   opens: readonly SectionName[];
   /** Number of the newest edition; null before the first. */
   currentEdition: number | null;
+  /** The demonstration, which has a page for its letters. */
+  demo: boolean;
 }
 
-const nobody: RootData = { visitor: null, opens: ["conventions"], currentEdition: null };
+const nobody: RootData = { visitor: null, opens: ["conventions"], currentEdition: null, demo: false };
 
 /** Takes the place of the root loader's answer, for specimens that show what a signed-in person sees. */
 export const RootDataContext = createContext<RootData | null>(null);

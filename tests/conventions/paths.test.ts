@@ -5,14 +5,14 @@ import { inEdition, paths } from "#app/paths.ts";
 import routes from "#app/routes.ts";
 
 /** Every pattern of the manifest, children joined to their parents. */
-async function patterns(): Promise<string[]> {
+function patterns(): string[] {
   const collect = (entries: readonly RouteConfigEntry[], base: string): string[] =>
     entries.flatMap((entry) => {
       const here = entry.path === undefined ? base : `${base}/${entry.path}`.replace(/\/+/g, "/");
       const own = entry.index === true || entry.path !== undefined ? [here === "" ? "/" : here] : [];
       return [...own, ...collect(entry.children ?? [], here)];
     });
-  return [...new Set(collect(await routes, ""))];
+  return [...new Set(collect(routes, ""))];
 }
 
 /** One address from each function of `paths`, made with arguments that need care in an address. */
@@ -59,8 +59,8 @@ const prefixes = ["/api/", "/resources/"];
 const withoutQuery = (address: string): string => address.replace(/\?.*$/, "");
 
 describe("the address space", () => {
-  it("has a route for every link function", async () => {
-    const known = (await patterns()).filter((pattern) => pattern !== "/*");
+  it("has a route for every link function", () => {
+    const known = patterns().filter((pattern) => pattern !== "/*");
     const dead = Object.entries(samples)
       .filter(([, address]) => !prefixes.some((prefix) => address.startsWith(prefix)))
       .filter(([, address]) => !known.some((pattern) => matchPath(pattern, withoutQuery(address))))
@@ -68,8 +68,8 @@ describe("the address space", () => {
     expect(dead, "give it a route module in app/routes.ts, or drop the link function").toEqual([]);
   });
 
-  it("has a link function for every page of the manifest", async () => {
-    const lonely = (await patterns())
+  it("has a link function for every page of the manifest", () => {
+    const lonely = patterns()
       .filter((pattern) => pattern !== "/*" && !prefixes.some((prefix) => pattern.startsWith(prefix)))
       .filter((pattern) => !Object.values(samples).some((address) => matchPath(pattern, withoutQuery(address))));
     expect(lonely, "add a function to app/paths.ts").toEqual([]);
