@@ -2,7 +2,7 @@ import { defineConfig } from "vitest/config";
 
 const common = {
   environment: "node" as const,
-  env: { NODE_ENV: "test" },
+  env: { NODE_ENV: "test", LOG_LEVEL: "silent" },
   restoreMocks: true,
 };
 

@@ -70,7 +70,7 @@ function pathOf(request: Request): string | undefined {
   const query = new URLSearchParams(search);
   query.delete("_routes");
   query.delete("index");
-  const path = pathname.replace(/\/?_?\.data$/, "") || "/";
+  const path = pathname.replace(/(?:^\/_root|\/_)?\.data$/, "") || "/";
   const text = query.toString();
   return path === "/" && text === "" ? undefined : `${path}${text === "" ? "" : `?${text}`}`;
 }

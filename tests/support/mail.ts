@@ -25,10 +25,21 @@ function addressOf(mail: SendMailOptions): string {
   throw new Error("A letter has one recipient, given as an address.");
 }
 
+/** The address of the service in letters of tests. */
+export const SITE = "http://localhost:3000";
+
 /** Puts an outbox in the place of the mail server for a test file; it is emptied before each test. */
 export function useOutbox(): Outbox {
   const sent: SendMailOptions[] = [];
-  beforeAll(() => useMailTransport({ sendMail: async (mail) => sent.push(mail) }));
+  beforeAll(() => {
+    // Sending reads the settings, which in a test nobody has set; the database is the test's own whatever stands here.
+    Object.assign(process.env, {
+      DATABASE_URL: "postgres://nobody@localhost/nothing",
+      SESSION_SECRET: "only for tests, only for tests, only",
+      PUBLIC_URL: SITE,
+    });
+    useMailTransport({ sendMail: async (mail) => sent.push(mail) });
+  });
   beforeEach(() => void (sent.length = 0));
   afterAll(() => useMailTransport(undefined));
   return {
