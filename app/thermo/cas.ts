@@ -1,4 +1,4 @@
-import { quote, read, type Reading, refused } from "./reading.ts";
+import { isTooLong, quote, read, type Reading, refused } from "./reading.ts";
 import { plainText } from "./typography.ts";
 
 /**
@@ -11,6 +11,7 @@ import { plainText } from "./typography.ts";
  * @returns the number with its hyphens
  */
 export function readCas(text: string): Reading<string> {
+  if (isTooLong(text)) return refused(`${quote(text)} is too long for a CAS Registry Number.`);
   const plain = plainText(text)
     .trim()
     .replace(/^(?:CAS(?:\s?(?:RN|No\.?|number))?|RN)[\s:#.]*/i, "")

@@ -103,7 +103,8 @@ function whoseDigit(stem: string, tail: string, sign: 1 | -1): "atom" | "charge"
     if (sign > 0) return ORDINARY_CATIONS.has(`${stem}${size}`) ? "charge" : "either";
     return size > 4 ? "atom" : "either";
   }
-  // Polyatomic. No anion ends in a single atom and carries two charges or more, so NO3- and Al(OH)4- have one reading.
+  // Polyatomic. An anion that ends in a single atom or group and carries two charges or more is not met outside square
+  // brackets, so NO3- and Al(OH)4- have one reading.
   // Cations may (VO2+ is two ions of vanadium, AlF2+ two complexes), but only of a metal, and to three charges.
   if (sign < 0 || size > 3) return "atom";
   return (stem.match(/[A-Z][a-z]?/g) ?? []).some(isMetal) ? "either" : "atom";

@@ -6,7 +6,7 @@ import { readNumber } from "./number.ts";
 import { type Property, propertyInfo } from "./property.ts";
 import { isConventionalZero, referenceStateOf } from "./referenceStates.ts";
 import { formatKey, isSolute, readKey, type SpeciesIdentity } from "./speciesKey.ts";
-import { expandedUncertainty, standardUncertainty, type Uncertainty } from "./uncertainty.ts";
+import { standardUncertainty, type Uncertainty } from "./uncertainty.ts";
 import { conversionFactor, type Unit } from "./unit.ts";
 
 /**

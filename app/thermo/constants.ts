@@ -25,5 +25,3 @@ export const STANDARD_PRESSURE = 100_000;
 export const STANDARD_ATMOSPHERE = 101_325;
 /** Reference temperature of the table, K. */
 export const REFERENCE_TEMPERATURE = 298.15;
-/** Zero of the Celsius scale, K. */
-export const CELSIUS_ZERO = 273.15;

@@ -121,8 +121,7 @@ export function isZero(value: Digits): boolean {
 
 /** Half a unit of the last printed place: how far the printed number may be from the one that was rounded. */
 export function halfUnit(value: Digits): Digits {
-  const count = places(value);
-  return spell(new Exact(10).pow(-count).times("0.5"), count + 1);
+  return canonical(false, "0", `${"0".repeat(places(value))}5`);
 }
 
 function spell(value: Decimal, count: number): Digits {

@@ -11,7 +11,7 @@ import {
   sumOf,
   ZERO,
 } from "./fraction.ts";
-import { ambiguous, quote, read, type Reading, refused } from "./reading.ts";
+import { ambiguous, isTooLong, quote, read, type Reading, refused } from "./reading.ts";
 import { markedText } from "./typography.ts";
 
 /** A chemical formula with its charge. */
@@ -44,6 +44,7 @@ const SOLVATE = /^\d+(?:\.\d+|\/\d+)?(?:H2O|D2O|NH3|H_\{2\}O|D_\{2\}O|NH_\{3\})(
  * Two readings are a question, never a guess (`Hg2+`, `O2-`, `SO42-`); the sentence says how to write either.
  */
 export function readFormula(text: string): Reading<Formula> {
+  if (isTooLong(text)) return refused(`${quote(text)} is too long for a formula.`);
   const marked = markedText(text)
     .trim()
     .replace(/_(\d)(?![\d}])/g, "_{$1}");

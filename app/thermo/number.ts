@@ -1,5 +1,5 @@
 import { type Digits, digits, places, readDigits } from "./digits.ts";
-import { ambiguous, quote, read, type Reading, refused } from "./reading.ts";
+import { ambiguous, isTooLong, quote, read, type Reading, refused } from "./reading.ts";
 import { plainText } from "./typography.ts";
 
 /** A number as a cell holds it, with the uncertainty when it stands in the same cell. */
@@ -32,6 +32,7 @@ const ABSENT = /^(?:|[-–—]+|\.{2,}|…|n\.?\s?[ad]\.?|nan|none|null|\?+|#n\/
  * Refused: empty cells, ranges, bounds, numbers with a unit or a footnote mark, numbers wholly in brackets.
  */
 export function readNumber(text: string, options: NumberOptions = {}): Reading<ReadNumber> {
+  if (isTooLong(text)) return refused(`${quote(text)} is too long for a number.`);
   const plain = plainText(text).trim();
   if (ABSENT.test(plain)) {
     return refused(plain === "" ? "The cell is empty." : `${quote(text.trim())} is not a number: no value is given.`);

@@ -1,5 +1,4 @@
 import { describe, expect, it } from "vitest";
-import { normalizeLabel } from "./label.ts";
 import { readPhase } from "./phase.ts";
 
 describe("reading a phase", () => {
@@ -54,33 +53,13 @@ describe("reading a phase", () => {
     ["plasma", "not a phase"],
     ["1", "not a phase"],
     ["graphite", "not a phase"],
+    ["constructor", "not a phase"],
     ["cr,<b>", "characters"],
   ])("refuses %j: %s", (text, sentence) => {
     expect(readPhase(text)).toMatchObject({ outcome: "refused", sentence: expect.stringContaining(sentence) });
   });
-});
 
-describe("labels", () => {
-  it.each([
-    ["Alpha quartz", "alpha-quartz", "one word, small letters"],
-    ["RUTILE", "rutile", "capitals of a sheet"],
-    ["α", "alpha", "Greek letters spelled out"],
-    ["insoluble, anhydrite", "insoluble,anhydrite", "a comma stays, its space goes"],
-    ["II", "II", "short words keep their capitals"],
-    ["2,2-dimethylpropane", "2,2-dimethylpropane", "an isomer's name"],
-    ["  red ", "red", "spaces around it"],
-  ])("%s is %s: %s", (text, expected) => {
-    expect(normalizeLabel(text)).toBe(expected);
-  });
-
-  it.each(["", " ", "-", "a(b)", "a/b", "<b>", "x".repeat(61)])("refuses %j", (text) => {
-    expect(normalizeLabel(text)).toBeUndefined();
-  });
-
-  it("does not change what it has normalised", () => {
-    for (const text of ["Alpha quartz", "β-rhombohedral", "E-2-butene"]) {
-      const once = normalizeLabel(text);
-      expect(once && normalizeLabel(once)).toBe(once);
-    }
+  it("refuses a text that is no phase before it looks into it", () => {
+    expect(readPhase("x".repeat(10_000))).toMatchObject({ sentence: expect.stringContaining("too long") });
   });
 });

@@ -1,5 +1,5 @@
 import { normalizeLabel } from "./label.ts";
-import { quote, read, type Reading, refused } from "./reading.ts";
+import { isTooLong, quote, read, type Reading, refused } from "./reading.ts";
 import { plainText } from "./typography.ts";
 
 /** Phases of the table: gas, liquid, solid, crystal, amorphous, glass, solute in water (IUPAC Green Book, 2.11.1). */
@@ -26,56 +26,60 @@ export interface ReadPhase {
   handbookCode?: string;
 }
 
-const SPELLINGS: Readonly<Record<string, Phase>> = {
-  g: "g",
-  gas: "g",
-  gaseous: "g",
-  "ideal gas": "g",
-  ig: "g",
-  vap: "g",
-  vapor: "g",
-  vapour: "g",
-  l: "l",
-  lq: "l",
-  liq: "l",
-  liquid: "l",
-  s: "s",
-  solid: "s",
-  cr: "cr",
-  c: "cr",
-  crys: "cr",
-  cryst: "cr",
-  crystal: "cr",
-  crystalline: "cr",
-  "crystalline solid": "cr",
-  am: "am",
-  amor: "am",
-  amorp: "am",
-  amorph: "am",
-  amorphous: "am",
-  vit: "vit",
-  vitreous: "vit",
-  glass: "vit",
-  gls: "vit",
-  aq: "aq",
-  ao: "aq",
-  aqueous: "aq",
-};
+const SPELLINGS: ReadonlyMap<string, Phase> = new Map(
+  Object.entries({
+    g: "g",
+    gas: "g",
+    gaseous: "g",
+    "ideal gas": "g",
+    ig: "g",
+    vap: "g",
+    vapor: "g",
+    vapour: "g",
+    l: "l",
+    lq: "l",
+    liq: "l",
+    liquid: "l",
+    s: "s",
+    solid: "s",
+    cr: "cr",
+    c: "cr",
+    crys: "cr",
+    cryst: "cr",
+    crystal: "cr",
+    crystalline: "cr",
+    "crystalline solid": "cr",
+    am: "am",
+    amor: "am",
+    amorp: "am",
+    amorph: "am",
+    amorphous: "am",
+    vit: "vit",
+    vitreous: "vit",
+    glass: "vit",
+    gls: "vit",
+    aq: "aq",
+    ao: "aq",
+    aqueous: "aq",
+  } satisfies Record<string, Phase>),
+);
 
 /** Phases that exist but have no row in a table of standard states, each with what to do instead. */
-const NOT_KEPT: Readonly<Record<string, string>> = {
-  ai: "is a sum of ions, not a species. Its values are those of its ions; give the ions.",
-  au: "is a solution of undefined concentration, not a standard state. Leave the row out.",
-  sln: "is a solution without a solvent named. Only solutes in water (aq) are kept.",
-  soln: "is a solution without a solvent named. Only solutes in water (aq) are kept.",
-  sol: "may mean a solid or a solution. Write s or aq.",
-  cd: "may be a liquid or a solid. Write l, s or cr.",
-  fl: "may be a gas or a liquid. Write g or l.",
-  lc: "(liquid crystal) has no place in this table.",
-  ads: "(adsorbed) has no place in this table.",
-  mon: "(monomer) names a form, not a phase.",
-  pol: "(polymer) names a form, not a phase.",
-};
+const NOT_KEPT: ReadonlyMap<string, string> = new Map(
+  Object.entries({
+    ai: "is a sum of ions, not a species. Its values are those of its ions; give the ions.",
+    au: "is a solution of undefined concentration, not a standard state. Leave the row out.",
+    sln: "is a solution without a solvent named. Only solutes in water (aq) are kept.",
+    soln: "is a solution without a solvent named. Only solutes in water (aq) are kept.",
+    sol: "may mean a solid or a solution. Write s or aq.",
+    cd: "may be a liquid or a solid. Write l, s or cr.",
+    fl: "may be a gas or a liquid. Write g or l.",
+    lc: "(liquid crystal) has no place in this table.",
+    ads: "(adsorbed) has no place in this table.",
+    mon: "(monomer) names a form, not a phase.",
+    pol: "(polymer) names a form, not a phase.",
+  }),
+);
 
 /** What may stand behind aq without naming a concentration: the standard state itself. */
 const STANDARD_SOLUTE =
@@ -90,11 +94,12 @@ const STANDARD_SOLUTE =
  * (`aq, 100 H2O`, `au`), solutions, adsorbates.
  */
 export function readPhase(text: string): Reading<ReadPhase> {
+  if (isTooLong(text)) return refused(`${quote(text)} is too long for a phase.`);
   const plain = plainText(text)
     .trim()
     .replace(/^[([]\s*(.*?)\s*[)\]]$/, "$1");
   if (plain === "") return refused("No phase is given. Write g, l, s, cr, am, vit or aq.");
-  const whole = SPELLINGS[plain.toLowerCase()];
+  const whole = SPELLINGS.get(plain.toLowerCase());
   if (whole !== undefined) return read(withCode(plain, { phase: whole }));
 
   const numbered = /^(?:cr|c)\s*,?\s*([1-9])$/i.exec(plain);
@@ -105,9 +110,9 @@ export function readPhase(text: string): Reading<ReadPhase> {
     );
   }
   const [, head = "", rest = ""] = /^([A-Za-z]+)\.?(?:[\s,;:]+(.*))?$/s.exec(plain) ?? [];
-  const excluded = NOT_KEPT[head.toLowerCase()];
+  const excluded = NOT_KEPT.get(head.toLowerCase());
   if (excluded !== undefined) return refused(`${quote(text.trim())} ${excluded}`);
-  const phase = SPELLINGS[head.toLowerCase()];
+  const phase = SPELLINGS.get(head.toLowerCase());
   if (phase === undefined) {
     return refused(`${quote(text.trim())} is not a phase this table knows. Write g, l, s, cr, am, vit or aq.`);
   }

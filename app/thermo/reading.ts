@@ -41,3 +41,10 @@ export function quote(text: string): string {
   const shown = text.length > 60 ? `${text.slice(0, 57)}…` : text;
   return `“${shown}”`;
 }
+
+/** No number, unit, formula or key is longer; readers refuse such a text before they look into it. */
+const LONGEST_TEXT = 500;
+
+export function isTooLong(text: string): boolean {
+  return text.length > LONGEST_TEXT;
+}

@@ -1,6 +1,6 @@
 import { type Formula, readFormula } from "./formula.ts";
 import { type Phase, readPhase, type ReadPhase } from "./phase.ts";
-import { ambiguous, mapReading, quote, read, type Reading, refused } from "./reading.ts";
+import { ambiguous, isTooLong, mapReading, quote, read, type Reading, refused } from "./reading.ts";
 import { markedText } from "./typography.ts";
 
 /** What makes a species: formula with charge, phase and, where that leaves more than one substance, a label. */
@@ -22,6 +22,7 @@ export function formatKey(identity: SpeciesIdentity): string {
  * Two readings of the formula are two species; the phase does not settle them silently.
  */
 export function readKey(text: string): Reading<SpeciesIdentity> {
+  if (isTooLong(text)) return refused(`${quote(text)} is too long for a key.`);
   const marked = markedText(text).trim();
   if (marked === "") return refused("No species is given. Write a key such as H2O(l).");
   const parts = splitPhase(marked);

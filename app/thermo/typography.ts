@@ -7,19 +7,21 @@ const RAISED = "⁰¹²³⁴⁵⁶⁷⁸⁹⁺⁻⁼⁽⁾";
 const LOWERED = "₀₁₂₃₄₅₆₇₈₉₊₋₌₍₎";
 const LEVEL = "0123456789+-=()";
 
-const NAMED_CHARACTERS: Readonly<Record<string, string>> = {
-  middot: "·",
-  sdot: "·",
-  bull: "·",
-  minus: "-",
-  ndash: "-",
-  nbsp: " ",
-  thinsp: " ",
-  plusmn: "±",
-  times: "×",
-  frac12: "1/2",
-  deg: "°",
-};
+const NAMED_CHARACTERS: ReadonlyMap<string, string> = new Map(
+  Object.entries({
+    middot: "·",
+    sdot: "·",
+    bull: "·",
+    minus: "-",
+    ndash: "-",
+    nbsp: " ",
+    thinsp: " ",
+    plusmn: "±",
+    times: "×",
+    frac12: "1/2",
+    deg: "°",
+  }),
+);
 
 /**
  * Plain text with raised parts marked `^{…}` and lowered parts `_{…}`, whether they came as markup
@@ -58,7 +60,7 @@ function levelled(text: string): string {
 
 function entities(text: string): string {
   return text
-    .replace(/&([a-z]+\d*);/gi, (whole, name: string) => NAMED_CHARACTERS[name.toLowerCase()] ?? whole)
+    .replace(/&([a-z]+\d*);/gi, (whole, name: string) => NAMED_CHARACTERS.get(name.toLowerCase()) ?? whole)
     .replace(/&#(?:x2212|8722);/gi, "-")
     .replace(/&#(?:xb7|183);/gi, "·");
 }

@@ -1,6 +1,6 @@
 import { type Digits, add, multiply, places, roundTo, subtract, toNumber, digits } from "./digits.ts";
 import { plainText } from "./typography.ts";
-import { ambiguous, quote, read, type Reading, refused } from "./reading.ts";
+import { ambiguous, isTooLong, quote, read, type Reading, refused } from "./reading.ts";
 
 /** Units of an energy per amount of substance. */
 export type EnergyUnit = "kJ/mol" | "J/mol" | "kcal/mol" | "cal/mol";
@@ -119,6 +119,7 @@ const ENERGY_SYMBOL = /^(k?)(J|cal)$/;
  * `gibbs/mol` and their like. Energies per gram, per kilomole or per particle, and other calories, are refused.
  */
 export function readUnit(text: string): Reading<Unit> {
+  if (isTooLong(text)) return refused(`${quote(text)} is too long for a unit.`);
   const plain = plainText(text).trim();
   if (plain === "") return refused("No unit is given. Write the unit, for example kJ/mol or J/(mol K).");
   const entropyUnit = /^(?:e\.?\s?u\.?|(?:gibbs|gbs)(?:\/mole?|\s*mole?\^?-1))$/i.exec(plain);
