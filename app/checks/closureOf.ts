@@ -1,5 +1,6 @@
-import type { ClosureInput, ClosureValue } from "#app/thermo/closure.ts";
+import type { ClosureInput, ClosureSettings, ClosureValue } from "#app/thermo/closure.ts";
 import type { Property } from "#app/thermo/property.ts";
+import type { Policy } from "./policy.ts";
 import type { TableView, ViewedSpecies, ViewedValue } from "./types.ts";
 
 /** The three properties a Gibbs closure ties together. */
@@ -29,6 +30,11 @@ export function closureInput(species: ViewedSpecies, values: ClosureValues, view
     elementEntropy: (element) => view.elementEntropy(element),
     constraintRelaxed: isConstraintRelaxed(species, values),
   };
+}
+
+/** The settings of the closure that a policy holds. */
+export function closureSettings(policy: Policy): ClosureSettings {
+  return { allowance: policy.closureAllowance };
 }
 
 /** The closure's input with one value's digits replaced. */

@@ -1,22 +1,23 @@
-import { type ClosureInput, type ClosureSettings, type GibbsClosure, gibbsClosure } from "#app/thermo/closure.ts";
+import { type ClosureInput, type GibbsClosure, gibbsClosure } from "#app/thermo/closure.ts";
 import { spellCharge } from "#app/thermo/charge.ts";
 import { REFERENCE_TEMPERATURE } from "#app/thermo/constants.ts";
-import {
-  add,
-  compare,
-  type Digits,
-  digits,
-  digitsOf,
-  halfUnit,
-  places,
-  subtract,
-  toNumber,
-} from "#app/thermo/digits.ts";
-import type { Formula } from "#app/thermo/formula.ts";
+import { add, type Digits, digitsOf, halfUnit, places, subtract, toNumber } from "#app/thermo/digits.ts";
+import { atomCount, type Formula } from "#app/thermo/formula.ts";
+import { molarMass } from "#app/thermo/molarMass.ts";
+import { isSolute } from "#app/thermo/speciesKey.ts";
+import { sackurTetrode } from "#app/thermo/thirdLaw.ts";
 import { showDigits, showNumber } from "#app/thermo/notation.ts";
 import type { Property } from "#app/thermo/property.ts";
 import { expandedUncertainty } from "#app/thermo/uncertainty.ts";
-import { CLOSURE_PROPERTIES, type ClosureProperty, type ClosureValues, withValue } from "./closureOf.ts";
+import {
+  CLOSURE_PROPERTIES,
+  closureInput,
+  type ClosureProperty,
+  closureSettings,
+  type ClosureValues,
+  withValue,
+} from "./closureOf.ts";
+import type { Policy } from "./policy.ts";
 import { explanationSentence, ranked, type Weighed } from "./ranking.ts";
 import { printedValue, slipNumber, slipWords, VALUE_SLIP_FREQUENCY, valueSlips } from "./slips.ts";
 import type { Repair, Suggestion, TableView, ViewedSpecies, ViewedValue } from "./types.ts";
@@ -58,6 +59,8 @@ interface Trial {
   readonly outcome: string;
   /** Null where values change. */
   readonly formula: string | null;
+  /** How far the spoilt number is from what the slip would have made of the good one, in tolerances. */
+  readonly misfit?: number;
 }
 
 /** What the suggestions and the scores need to know of the case. */
@@ -66,7 +69,7 @@ interface Case {
   readonly values: ClosureValues;
   readonly view: TableView;
   readonly input: ClosureInput;
-  readonly settings: ClosureSettings;
+  readonly policy: Policy;
   readonly residual: number;
   readonly tolerance: number;
   /** The values that may have slipped: the proposed ones, or all where none is. */
@@ -83,10 +86,10 @@ export function explainClosure(
   species: ViewedSpecies,
   values: ClosureValues,
   view: TableView,
-  input: ClosureInput,
   closure: GibbsClosure,
-  settings: ClosureSettings,
+  policy: Policy,
 ): Suggestion[] {
+  const input = closureInput(species, values, view);
   const { residual, tolerance } = closure;
   const fails = closure.verdict === "look" || closure.verdict === "block";
   if (!fails || residual === null || tolerance === null || input.constraintRelaxed === true) return [];
@@ -94,7 +97,7 @@ export function explainClosure(
   const suspects = (proposed.length > 0 ? proposed : [...CLOSURE_PROPERTIES]).filter(
     (property) => !values[property].conventional,
   );
-  const one: Case = { species, values, view, input, settings, residual, tolerance, suspects };
+  const one: Case = { species, values, view, input, policy, residual, tolerance, suspects };
 
   const honest =
     Math.log(HONEST_FAILURE.share / tolerance) -
@@ -111,9 +114,9 @@ interface Explanation extends Trial {
 }
 
 function weigh(one: Case, trial: Trial): Weighed<Explanation>[] {
-  const closure = gibbsClosure(trial.repaired, one.settings);
+  const closure = gibbsClosure(trial.repaired, closureSettings(one.policy));
   if (closure.verdict !== "closes" || closure.residual === null || closure.tolerance === null) return [];
-  const fit = closure.residual / (closure.tolerance / 2);
+  const fit = 2 * ((trial.misfit ?? 0) + Math.abs(closure.residual) / closure.tolerance);
   return [
     {
       item: { ...trial, after: closure.residual },
@@ -186,9 +189,9 @@ function trialsOf(one: Case, closure: GibbsClosure): Trial[] {
 /** Slips of one printed number. */
 function valueTrials(one: Case, property: ClosureProperty): Trial[] {
   const value = one.values[property];
-  const mayBeNegative = property !== "entropy" || one.species.identity.phase === "aq";
+  const mayBeNegative = property !== "entropy" || isSolute(one.species.identity);
   return valueSlips(value, mayBeNegative)
-    .filter((slip) => couldClose(one, property, slip.becomes))
+    .filter((slip) => couldClose(one, property, slip.becomes) && couldBe(one, property, slip.becomes))
     .map((slip) => ({
       slip: slip.code,
       frequency: VALUE_SLIP_FREQUENCY[slip.code],
@@ -210,6 +213,20 @@ function couldClose(one: Case, property: ClosureProperty, becomes: Digits): bool
   return after <= 10 * one.tolerance + 4 * toNumber(halfUnit(becomes)) * Math.abs(factor);
 }
 
+/** Whether physics allows the value at all: no pure substance has an entropy below its floor. */
+function couldBe(one: Case, property: ClosureProperty, becomes: Digits): boolean {
+  const { identity } = one.species;
+  if (property !== "entropy" || isSolute(identity)) return true;
+  const floor = identity.phase === "g" ? gasFloor(identity.formula) : one.policy.leastEntropy;
+  return toNumber(becomes) >= floor;
+}
+
+/** Translation alone, less a little for a standard pressure of 1 atm and rounding; 0 where the molar mass is not known. */
+function gasFloor(formula: Formula): number {
+  const mass = molarMass(formula);
+  return mass === undefined ? 0 : sackurTetrode(mass) - 1;
+}
+
 /** ΔfS° filed as S°. */
 function entropyOfFormationTrial(one: Case, closure: GibbsClosure): Trial[] {
   const parts = closure.parts;
@@ -218,7 +235,7 @@ function entropyOfFormationTrial(one: Case, closure: GibbsClosure): Trial[] {
   const becomes = digitsOf(2 * toNumber(stated) - parts.entropyOfFormation.value, places(stated));
   return [
     replacement(one, "entropy-of-formation-as-entropy", { property: "entropy", becomes }, "ΔfS° filed as S°"),
-  ].filter(() => one.species.identity.phase === "aq" || compare(becomes, digits("0")) > 0);
+  ].filter(() => couldBe(one, "entropy", becomes));
 }
 
 /** The (z/2) S°(H2) of an ion forgotten where its ΔfG° or S° was worked out. */
@@ -226,7 +243,7 @@ function conventionTrials(one: Case): Trial[] {
   const { identity } = one.species;
   const hydrogen = one.view.elementEntropy("H");
   const { charge } = identity.formula;
-  if (identity.phase !== "aq" || charge === 0 || hydrogen === undefined) return [];
+  if (!isSolute(identity) || charge === 0 || hydrogen === undefined) return [];
   const shift = (charge / 2) * toNumber(hydrogen.digits);
   const moves: Partial<Record<ClosureProperty, number>> = {
     entropy: -shift,
@@ -295,16 +312,26 @@ function computedTrials(one: Case, closure: GibbsClosure): Trial[] {
   const gibbs = toNumber(parts.gibbs);
   const entropyTerm = enthalpy - gibbsComputed;
   const becomes = digitsOf(gibbsComputed, places(one.values.gibbsEnergyOfFormation.digits));
-  const trials: [slip: "joules-in-entropy-term" | "celsius-in-entropy-term", wrong: number, cause: string][] = [
-    ["joules-in-entropy-term", enthalpy - 1000 * entropyTerm, "TΔfS° in joules taken as kilojoules"],
-    ["celsius-in-entropy-term", enthalpy - (25 / REFERENCE_TEMPERATURE) * entropyTerm, "T in degrees Celsius in TΔfS°"],
-  ];
-  return trials
-    .filter(([slip, wrong]) => {
-      const open = slip === "joules-in-entropy-term" ? 1000 * one.tolerance : one.tolerance;
-      return Math.abs(gibbs - wrong) <= open && Math.abs(gibbs - wrong) < Math.abs(one.residual) / 20;
-    })
-    .map(([slip, , cause]) => replacement(one, slip, { property: "gibbsEnergyOfFormation", becomes }, cause));
+  const trials = [
+    {
+      slip: "joules-in-entropy-term",
+      wrong: enthalpy - 1000 * entropyTerm,
+      open: 1000 * one.tolerance,
+      cause: "TΔfS° in joules taken as kilojoules",
+    },
+    {
+      slip: "celsius-in-entropy-term",
+      wrong: enthalpy - (25 / REFERENCE_TEMPERATURE) * entropyTerm,
+      open: one.tolerance,
+      cause: "T in degrees Celsius in TΔfS°",
+    },
+  ] as const;
+  return trials.flatMap(({ slip, wrong, open, cause }) => {
+    const misfit = Math.abs(gibbs - wrong) / open;
+    // The wrong number must also lie much nearer than the right one, or anything would do where TΔfS° is small.
+    if (misfit > 1 || Math.abs(gibbs - wrong) >= Math.abs(one.residual) / 20) return [];
+    return [{ ...replacement(one, slip, { property: "gibbsEnergyOfFormation", becomes }, cause), misfit }];
+  });
 }
 
 function replacement(
@@ -345,7 +372,9 @@ function formulaTrials(one: Case): Trial[] {
 function chargeTrials(one: Case, change: number): Trial[] {
   const { identity } = one.species;
   const charge = identity.formula.charge + change;
-  if (identity.phase !== "aq" || Math.abs(charge) > 4) return [];
+  if (!isSolute(identity) || Math.abs(charge) > 4) return [];
+  // A single atom in water is an ion.
+  if (charge === 0 && atomCount(identity.formula) === 1) return [];
   const body = identity.formula.printed.replace(/[+-]\d*$/, "");
   const formula = { ...identity.formula, charge, printed: `${body}${spellCharge(body, charge)}` };
   return [

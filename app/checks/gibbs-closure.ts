@@ -1,7 +1,15 @@
-import { closureArithmetic, type ClosureSettings, type GibbsClosure, gibbsClosure } from "#app/thermo/closure.ts";
+import { closureArithmetic, type GibbsClosure, gibbsClosure } from "#app/thermo/closure.ts";
 import { showDigits, showNumber } from "#app/thermo/notation.ts";
-import { CLOSURE_PROPERTIES, type ClosureValues, closureInput, closureValues, withValue } from "./closureOf.ts";
+import {
+  CLOSURE_PROPERTIES,
+  type ClosureValues,
+  closureInput,
+  closureSettings,
+  closureValues,
+  withValue,
+} from "./closureOf.ts";
 import { explainClosure, suspectProperty } from "./explainClosure.ts";
+import type { Policy } from "./policy.ts";
 import type { Check, FindingDraft, TableView, ViewedSpecies } from "./types.ts";
 import { listed, shownSigned, symbolOf } from "./words.ts";
 
@@ -35,9 +43,7 @@ export const gibbsClosureCheck: Check = {
   run: (species, view, policy) => {
     const values = closureValues(species.values);
     if (values === undefined) return [];
-    const settings: ClosureSettings = { allowance: policy.closureAllowance };
-    const input = closureInput(species, values, view);
-    const closure = gibbsClosure(input, settings);
+    const closure = gibbsClosure(closureInput(species, values, view), closureSettings(policy));
     switch (closure.verdict) {
       case "closes":
         return [];
@@ -45,7 +51,7 @@ export const gibbsClosureCheck: Check = {
         return [notMade(species, closure)];
       case "look":
       case "block":
-        return [failing(species, values, view, closure, settings)];
+        return [failing(species, values, view, closure, policy)];
     }
   },
 };
@@ -68,11 +74,11 @@ function failing(
   values: ClosureValues,
   view: TableView,
   closure: GibbsClosure,
-  settings: ClosureSettings,
+  policy: Policy,
 ): FindingDraft {
   const input = closureInput(species, values, view);
   const { residual = 0, tolerance = 0 } = closure;
-  const suggestions = explainClosure(species, values, view, input, closure, settings);
+  const suggestions = explainClosure(species, values, view, closure, policy);
   const off = `Gibbs closure is off by ${shownSigned(residual ?? 0, 2)} kJ/mol, tolerance ${showNumber(tolerance ?? 0, 2)}.`;
   const relaxed = input.constraintRelaxed === true ? " The source says that it relaxed the constraint." : "";
   const unexplained =
@@ -83,10 +89,10 @@ function failing(
     severity: closure.verdict === "block" ? "block" : "look",
     property: suspectProperty(values, suggestions),
     sentence: `${off}${relaxed}${unexplained}`,
-    arithmetic: [...closureArithmetic(closure), ...withWhatStands(species, values, view, settings)],
+    arithmetic: [...closureArithmetic(closure), ...withWhatStands(species, values, view, policy)],
     data: {
-      residual: showNumber(residual ?? 0, 3),
-      tolerance: showNumber(tolerance ?? 0, 3),
+      residual: (residual ?? 0).toFixed(3),
+      tolerance: (tolerance ?? 0).toFixed(3),
       enthalpyOfFormation: values.enthalpyOfFormation.digits,
       entropy: values.entropy.digits,
       gibbsEnergyOfFormation: values.gibbsEnergyOfFormation.digits,
@@ -96,19 +102,14 @@ function failing(
 }
 
 /** Which single value, put back to what stands, would make it close: the mark of a row revised only in part. */
-function withWhatStands(
-  species: ViewedSpecies,
-  values: ClosureValues,
-  view: TableView,
-  settings: ClosureSettings,
-): string[] {
+function withWhatStands(species: ViewedSpecies, values: ClosureValues, view: TableView, policy: Policy): string[] {
   return CLOSURE_PROPERTIES.flatMap((property) => {
     const standing = species.standing[property];
     const value = values[property];
     if (standing === undefined || value.lineRef === null || standing.digits === value.digits) return [];
     const restored = gibbsClosure(
       withValue(closureInput(species, values, view), property, { digits: standing.digits, given: standing.given }),
-      settings,
+      closureSettings(policy),
     );
     if (restored.verdict !== "closes" || restored.residual === null) return [];
     return [

@@ -31,19 +31,28 @@ export const lessPrecise: Check = {
 
 function weaker(species: ViewedSpecies, replacement: Replacement, policy: Policy): FindingDraft[] {
   const { value, standing, normalizedError: ratio } = replacement;
+  const { property } = value;
+  const before = expandedUncertainty(standing.uncertainty) ?? 0;
+  const now = expandedUncertainty(value.uncertainty);
   const faults = [
     ...(places(value.digits) < places(standing.digits) ? ["fewer digits"] : []),
-    ...uncertaintyFault(replacement, policy),
+    ...(now !== null && before > 0 && now > policy.widerUncertainty * before ? ["a wider uncertainty"] : []),
   ];
-  if (faults.length === 0) return [];
-  const { property } = value;
-  const what = faults.join(" and ");
-  const of = ` for ${symbolOf(property)} of ${species.key}, ${shownWithUncertainty(standing)} ${unitOf(property)}.`;
+  const lacksUncertainty = now === null && before > 0;
+  if (faults.length === 0 && !lacksUncertainty) return [];
+
+  const stands = `${shownWithUncertainty(standing)} ${unitOf(property)}`;
+  const of = `${symbolOf(property)} of ${species.key}`;
+  const less = capital(`${faults.join(" and ")} than what stands for ${of}, ${stands}`);
+  const sentence =
+    faults.length === 0
+      ? `No uncertainty is stated for ${of}, where ${stands} stands.`
+      : `${less}${lacksUncertainty ? ", and no uncertainty" : ""}.`;
   return [
     {
       severity: "look",
       property,
-      sentence: `${what.charAt(0).toUpperCase()}${what.slice(1)} than what stands${of}${agreement(replacement)}`,
+      sentence: `${sentence}${agreement(replacement)}`,
       data: {
         value: value.digits,
         standing: standing.digits,
@@ -55,17 +64,13 @@ function weaker(species: ViewedSpecies, replacement: Replacement, policy: Policy
   ];
 }
 
-function uncertaintyFault({ value, standing }: Replacement, policy: Policy): string[] {
-  const before = expandedUncertainty(standing.uncertainty);
-  const now = expandedUncertainty(value.uncertainty);
-  if (before === null || before === 0) return [];
-  if (now === null) return ["less said about the uncertainty"];
-  return now > policy.widerUncertainty * before ? ["a wider uncertainty"] : [];
-}
-
 function agreement({ value, standing, normalizedError: ratio }: Replacement): string {
   if (ratio !== null) {
     return ratio <= 1 ? ` Agrees with it (E_n ${showNumber(ratio, 2)}): is it meant to replace it?` : "";
   }
   return toNumber(subtract(value.digits, standing.digits)) === 0 ? " The number is the same." : "";
+}
+
+function capital(text: string): string {
+  return text.charAt(0).toUpperCase() + text.slice(1);
 }

@@ -10,6 +10,7 @@ import {
   roundTo,
 } from "#app/thermo/digits.ts";
 import { showDigits } from "#app/thermo/notation.ts";
+import { readNumber } from "#app/thermo/number.ts";
 import { type Property, propertyInfo } from "#app/thermo/property.ts";
 import { convert, type Unit } from "#app/thermo/unit.ts";
 import type { ViewedValue } from "./types.ts";
@@ -83,7 +84,13 @@ export function printedValue(value: Pick<ViewedValue, "property" | "digits" | "g
 } {
   const { unit } = propertyInfo[value.property];
   if (value.given === null) return { digits: value.digits, unit };
-  return { digits: convert(value.digits, unit, value.given.unit).digits, unit: value.given.unit };
+  const { text, unit: givenUnit } = value.given;
+  const reading = readNumber(text);
+  const readings =
+    reading.outcome === "read" ? [reading.value] : reading.outcome === "ambiguous" ? reading.candidates : [];
+  // Of two readings, the one that became the table's value; back from the value where the text tells nothing.
+  const own = readings.find((one) => convert(one.digits, givenUnit, unit).digits === value.digits);
+  return { digits: own?.digits ?? convert(value.digits, unit, givenUnit).digits, unit: givenUnit };
 }
 
 /**
