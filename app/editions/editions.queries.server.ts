@@ -4,6 +4,7 @@ import type { Digits } from "#app/thermo/digits.ts";
 import type { Phase } from "#app/thermo/phase.ts";
 import type { Property } from "#app/thermo/property.ts";
 import type { Uncertainty } from "#app/thermo/uncertainty.ts";
+import type { Search, SpeciesFilter } from "./search.ts";
 
 /*
  * Reading the one append-only table as of an edition. Edition n is the rows with since <= n that had not gone out by n;
@@ -226,6 +227,112 @@ function detailsAsOf(n: number, db: Database) {
       eb.ref("s.phase").$castTo<Phase>().as("phase"),
     ])
     .orderBy("d.key");
+}
+
+// --- Browsing ---------------------------------------------------------------
+
+export interface SpeciesOrder {
+  by: "key" | "name" | Property;
+  direction: "ascending" | "descending";
+}
+
+export interface SpeciesSlice {
+  order: SpeciesOrder;
+  limit: number;
+  /** How many to pass over; for pages with a number. */
+  offset?: number;
+  /** Only keys behind this one; for cursors, with the order by key. */
+  after?: string | null;
+}
+
+/** The value of a property of the species `d`, as of edition n: what a table is sorted by and filtered on. */
+function valueOf(n: number, property: Property) {
+  return sql<string | null>`(select v.value from table_value v
+    where v.species_id = d.species_id and v.property = ${property} and v.since <= ${n} and (v.until is null or v.until > ${n}))`;
+}
+
+function filtered(n: number, filter: SpeciesFilter, db: Database) {
+  const { search, elements, phases, cas, holds, lacks } = filter;
+  let query = detailsAsOf(n, db);
+  if (elements.length > 0) query = query.where(sql<boolean>`s.composition ?& ${[...elements]}::text[]`);
+  if (phases.length > 0) query = query.where((eb) => oneOf(eb.ref("s.phase"), phases));
+  if (cas !== null) query = query.where("d.cas", "=", cas);
+  for (const property of holds) query = query.where(sql<boolean>`${valueOf(n, property)} is not null`);
+  for (const property of lacks) query = query.where(sql<boolean>`${valueOf(n, property)} is null`);
+  if (search) query = query.where((eb) => eb.or(searched(search)));
+  return query;
+}
+
+/** The ways in which a species can be what was typed. */
+function searched(search: Search): Expression<SqlBool>[] {
+  const part = `%${search.text.toLowerCase().replace(/[\\%_]/g, "\\$&")}%`;
+  const ways: Expression<SqlBool>[] = [
+    sql<SqlBool>`lower(d.name) like ${part}`,
+    sql<SqlBool>`lower(d.key) like ${part.slice(1)}`,
+    sql<SqlBool>`exists (select from unnest(d.synonyms) as known(name) where lower(known.name) like ${part})`,
+  ];
+  if (search.cas !== null) ways.push(sql<SqlBool>`d.cas = ${search.cas}`);
+  for (const { hill, charge } of search.formulas) {
+    ways.push(sql<SqlBool>`(s.hill = ${hill} and (${charge}::integer is null or s.charge = ${charge}))`);
+  }
+  for (const { formula, phase, label } of search.identities) {
+    ways.push(
+      sql<SqlBool>`(s.hill = ${formula.hill} and s.charge = ${formula.charge} and s.phase = ${phase}
+        and (${label ?? null}::text is null or d.label = ${label ?? null}))`,
+    );
+  }
+  return ways;
+}
+
+/** A slice of the species of edition n that a filter lets through. Species without the value sorted by stand last. */
+export async function findSpeciesPageAsOf(n: number, filter: SpeciesFilter, slice: SpeciesSlice, db: Database) {
+  const { order, limit, offset, after } = slice;
+  const turn = order.direction === "descending" ? "desc" : "asc";
+  let query = filtered(n, filter, db).clearOrderBy().limit(limit);
+  if (order.by === "name") query = query.orderBy(sql`lower(d.name)`, turn);
+  else if (order.by !== "key") {
+    query = query.orderBy(valueOf(n, order.by), (ob) => (turn === "desc" ? ob.desc() : ob.asc()).nullsLast());
+  }
+  query = query.orderBy("d.key", order.by === "key" ? turn : "asc");
+  if (offset) query = query.offset(offset);
+  if (after !== null && after !== undefined) query = query.where("d.key", ">", after);
+  return query.execute();
+}
+
+/** How many species of edition n a filter lets through. */
+export async function countSpeciesAsOf(n: number, filter: SpeciesFilter, db: Database): Promise<number> {
+  const { count } = await filtered(n, filter, db)
+    .clearSelect()
+    .clearOrderBy()
+    .select((eb) => eb.fn.countAll<string>().as("count"))
+    .executeTakeFirstOrThrow();
+  return Number(count);
+}
+
+/** The species that had this key in edition n or in one before it, each id once: where an old key leads. */
+export async function findSpeciesOnceCalled(n: number, key: string, db: Database) {
+  return db
+    .selectFrom("species_detail as d")
+    .where("d.key", "=", key)
+    .where("d.since", "<=", n)
+    .select("d.species_id as speciesId")
+    .distinct()
+    .execute();
+}
+
+/**
+ * Values of edition n behind a place in the order of key and property, at most `limit`: a download reads an edition in
+ * such portions, so that it never stands in memory whole. An edition never changes, so the portions belong together.
+ */
+export async function findValuesBehind(
+  n: number,
+  place: { key: string; property: string } | null,
+  limit: number,
+  db: Database,
+) {
+  let query = valuesAsOf(n, {}, db).limit(limit);
+  if (place) query = query.where(sql<boolean>`(d.key, v.property) > (${place.key}, ${place.property})`);
+  return (await query.execute()).map(withUncertainty);
 }
 
 // --- Sources ----------------------------------------------------------------
