@@ -15,26 +15,31 @@ import { main, say, sleep, Stop } from "./terminal.mjs";
 const FIRST_PORT = 3000;
 const PORTS_TRIED = 50;
 
-function isFree(port, host) {
+/** Tries to listen; gives the error's code, or undefined when the port is free. */
+function tryPort(port, host) {
   return new Promise((resolve) => {
     const server = createServer();
-    server.once("error", () => resolve(false));
-    server.listen(port, host, () => server.close(() => resolve(true)));
+    server.once("error", (error) => resolve(error.code));
+    server.listen(port, host, () => server.close(() => resolve(undefined)));
   });
 }
 
 /** The port asked for, or the first free one from 3000 on. */
 async function choosePort(host) {
   const { PORT } = process.env;
-  if (PORT) {
-    if (await isFree(Number(PORT), host)) return Number(PORT);
-    throw new Stop(
-      `PORT ${PORT} cannot be listened on: it is taken, reserved, or HOST names no address of this machine. Set PORT to a free one.`,
-    );
+  const ports = PORT ? [Number(PORT)] : Array.from({ length: PORTS_TRIED }, (_, index) => FIRST_PORT + index);
+  for (const port of ports) {
+    const code = await tryPort(port, host);
+    if (code === undefined) return port;
+    if (code === "EADDRNOTAVAIL" || code === "ENOTFOUND" || code === "EAI_AGAIN") {
+      throw new Stop("HOST does not name an address of this machine.");
+    }
+    if (PORT && code === "EACCES") throw new Stop("PORT may not be used by this user; set it to a port above 1023.");
   }
-  for (let port = FIRST_PORT; port < FIRST_PORT + PORTS_TRIED; port++) if (await isFree(port, host)) return port;
   throw new Stop(
-    `None of the ports ${FIRST_PORT} to ${FIRST_PORT + PORTS_TRIED - 1} is free; set PORT to one that is.`,
+    PORT
+      ? "PORT is taken by another program; set it to a free port, or leave it unset to take the next free one."
+      : `None of the ports ${FIRST_PORT} to ${FIRST_PORT + PORTS_TRIED - 1} is free; set PORT to one that is.`,
   );
 }
 

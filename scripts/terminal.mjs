@@ -66,7 +66,7 @@ export function run(program, args, options = {}) {
 export async function runOrStop(sentence, program, args, options = {}) {
   const result = await run(program, args, options).catch((error) => ({ code: 1, output: String(error.message) }));
   if (result.code !== 0) {
-    const tail = result.output.trim().split("\n").slice(-8).join("\n");
+    const tail = result.output.trim().split("\n").slice(-30).join("\n");
     throw new Stop(tail ? `${sentence}\n${tail}` : sentence);
   }
   return result.output;
