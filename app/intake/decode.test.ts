@@ -24,8 +24,8 @@ describe("delimiter and decimal sign", () => {
     ["tabs", "formula\tphase\tS\nH2O\tl\t69.95\n", "\t", false],
     ["tabs with decimal commas", "formula\tphase\tS\nH2O\tl\t69,95\n", "\t", true],
     ["three decimals behind every comma", "formula;phase;dHf\nH2O;l;-285,830\nCO2;g;-393,510\n", ";", true],
-    ["thousands marks", "formula,phase,dHf\nCaCO3,cr,\"-1,206.92\"\nCaO,cr,-635.09\n", ",", false],
-    ["semicolons inside descriptions", "formula,phase,d,S\nA,g,\"a; b\",1.5\nB,g,c; d,2.5\n", ",", false],
+    ["thousands marks", 'formula,phase,dHf\nCaCO3,cr,"-1,206.92"\nCaO,cr,-635.09\n', ",", false],
+    ["semicolons inside descriptions", 'formula,phase,d,S\nA,g,"a; b",1.5\nB,g,c; d,2.5\n', ",", false],
   ])("%s", (_what, text, delimiter, decimalComma) => {
     expect(decoded(text).dialect).toMatchObject({ delimiter, decimalComma });
   });
@@ -112,7 +112,9 @@ describe("limits", () => {
   });
 
   test("one character too many in a cell", () => {
-    expect(refusal(`formula,remark\nH2O,${"x".repeat(SHEET_LIMITS.cell + 1)}\n`)).toMatch(/Row 2, column 2: the cell has 2001/);
+    expect(refusal(`formula,remark\nH2O,${"x".repeat(SHEET_LIMITS.cell + 1)}\n`)).toMatch(
+      /Row 2, column 2: the cell has 2001/,
+    );
   });
 });
 

@@ -58,7 +58,8 @@ export function decodeSheet(bytes: Uint8Array): Decoding {
   if (foreign) return refused(`This is ${foreign}, not a table in plain text. ${SAVE_AS}`);
   const text = decodeUtf8(bytes);
   if (text.outcome === "refused") return text;
-  if (text.value.trim() === "") return refused("The file is empty. Send a sheet with a row of heads and rows below it.");
+  if (text.value.trim() === "")
+    return refused("The file is empty. Send a sheet with a row of heads and rows below it.");
 
   const delimiter = guessDelimiter(text.value);
   if (delimiter === null) {
@@ -73,7 +74,9 @@ export function decodeSheet(bytes: Uint8Array): Decoding {
   const headIndex = findHeads(parsed.rows);
   const headRow = headIndex === -1 ? undefined : parsed.rows[headIndex];
   if (!headRow) {
-    return refused("No row names the columns. Put heads such as formula, phase, dHf (kJ/mol) above the first row of values.");
+    return refused(
+      "No row names the columns. Put heads such as formula, phase, dHf (kJ/mol) above the first row of values.",
+    );
   }
   const heads = withoutTrailingBlanks(headRow.cells).map((head) => head.trim());
   const rows = parsed.rows.filter((_, index) => index !== headIndex);
@@ -124,9 +127,7 @@ function foreignContent(bytes: Uint8Array): string | null {
   return null;
 }
 
-type Decoded =
-  | { outcome: "decoded"; value: string; byteOrderMark: boolean }
-  | { outcome: "refused"; sentence: string };
+type Decoded = { outcome: "decoded"; value: string; byteOrderMark: boolean } | { outcome: "refused"; sentence: string };
 
 function decodeUtf8(bytes: Uint8Array): Decoded {
   const utf16 = (bytes[0] === 0xff && bytes[1] === 0xfe) || (bytes[0] === 0xfe && bytes[1] === 0xff);
@@ -216,7 +217,11 @@ function parseRows(text: string, delimiter: Delimiter): Parsed {
     step: ({ data, errors, meta }, parser) => {
       const number = line;
       // Count the lines this row took, quoted line ends included.
-      for (let feed = text.indexOf("\n", read); feed !== -1 && feed < meta.cursor; feed = text.indexOf("\n", feed + 1)) {
+      for (
+        let feed = text.indexOf("\n", read);
+        feed !== -1 && feed < meta.cursor;
+        feed = text.indexOf("\n", feed + 1)
+      ) {
         line += 1;
       }
       read = meta.cursor;

@@ -80,7 +80,10 @@ export function propertyOf(text: string): Property | null {
 }
 
 const PROPERTY_NAMES: readonly (readonly [Property, RegExp])[] = [
-  ["enthalpyOfFormation", /^(?:(?:enthalpy|heat)(?:of)?formation|formationenthalpy|d(?:elta)?(?:fh|hf|h)o?f?|hof|hf|dfh|dhform)$/],
+  [
+    "enthalpyOfFormation",
+    /^(?:(?:enthalpy|heat)(?:of)?formation|formationenthalpy|d(?:elta)?(?:fh|hf|h)o?f?|hof|hf|dfh|dhform)$/,
+  ],
   [
     "gibbsEnergyOfFormation",
     /^(?:(?:gibbs|free|gibbsfree)(?:energy|function)(?:of)?formation|gibbsformation|d(?:elta)?(?:fg|gf|g)o?f?|gf|dfg)$/,
@@ -184,7 +187,7 @@ function withoutRemarks(plain: string): {
   };
 
   let rest = plain;
-  for (let changed = true; changed; ) {
+  for (let changed = true; changed;) {
     changed = false;
     // `S (J/(mol K))`: the last bracket group, which may hold one inside itself.
     const group = /[[(]((?:[^()[\]]|\([^()]*\))*)[\])]\s*$/.exec(rest);
@@ -247,7 +250,8 @@ function readPressure(piece: string): HeadReading["pressure"] {
   return null;
 }
 
-const UNCERTAINTY_WORD = "(?:±|\\+/-|unc(?:ertainty|ert)?\\.?|err(?:or)?\\.?|s\\.?d\\.?|sigma|stdev|standard uncertainty|expanded uncertainty)";
+const UNCERTAINTY_WORD =
+  "(?:±|\\+/-|unc(?:ertainty|ert)?\\.?|err(?:or)?\\.?|s\\.?d\\.?|sigma|stdev|standard uncertainty|expanded uncertainty)";
 
 function readUncertaintyHead(symbol: string): { of: string; kind: HeadReading["uncertaintyKind"] } | null {
   const kindOf = (sign: string): HeadReading["uncertaintyKind"] => {

@@ -1,0 +1,529 @@
+import { compare, digits, type Digits, isZero } from "#app/thermo/digits.ts";
+import { type Formula, readFormula } from "#app/thermo/formula.ts";
+import { readCas } from "#app/thermo/cas.ts";
+import { normalizeLabel } from "#app/thermo/label.ts";
+import { type NumberOptions, readNumber, type ReadNumber } from "#app/thermo/number.ts";
+import { type Phase, readPhase } from "#app/thermo/phase.ts";
+import { type Property, propertyInfo } from "#app/thermo/property.ts";
+import { quote, type Reading } from "#app/thermo/reading.ts";
+import { isConventionalZero } from "#app/thermo/referenceStates.ts";
+import { formatKey, readKey, type SpeciesIdentity } from "#app/thermo/speciesKey.ts";
+import type { Uncertainty } from "#app/thermo/uncertainty.ts";
+import { convert, isLikeUnit, readUnit, type Unit } from "#app/thermo/unit.ts";
+import { readDescription } from "./description.ts";
+import { propertyOf } from "./head.ts";
+import type { ColumnMeans } from "./meaning.ts";
+import { columnName, type ColumnPlan, columnsOf, type SheetSettings } from "./plan.ts";
+
+/** A row as it came, with the repairs of its cells laid over it. */
+export interface SheetRow {
+  /** Line of the file. */
+  readonly number: number;
+  readonly cells: readonly string[];
+  /** What the steward answered when asked which species this is: a key of the table, `new`, or nothing yet. */
+  readonly answer: string | null;
+}
+
+/** One click that would mend a cell. `column` may be `ANSWER`: the steward says which species the row is. */
+export interface Repair {
+  readonly label: string;
+  readonly column: number;
+  readonly text: string;
+}
+
+/** What is wrong with a row, at the cell where it shows; `column` null when it is the row as a whole. */
+export interface CellProblem {
+  readonly column: number | null;
+  readonly sentence: string;
+  readonly repairs: readonly Repair[];
+  /** Set when the problem came of comparing rows with each other, so that mending another row may settle it. */
+  readonly amongRows?: readonly number[];
+}
+
+/** Stands in place of a column for the answer to "which species is this?"; kept as a repair like the cells' own. */
+export const ANSWER = 10_000;
+
+export interface ReadValue {
+  readonly property: Property;
+  /** In the unit of the property. */
+  readonly digits: Digits;
+  readonly uncertainty: Uncertainty | null;
+  readonly given: { readonly text: string; readonly unit: Unit; readonly note: string | null };
+  readonly column: number;
+}
+
+/** A row that was read: a species as the sheet names it, and its values. */
+export interface RowReading {
+  readonly species: {
+    readonly formula: Formula;
+    readonly phase: Phase;
+    readonly label: string | null;
+    readonly name: string | null;
+    readonly cas: string | null;
+  };
+  readonly values: readonly ReadValue[];
+  readonly remark: string | null;
+  /** What was taken for granted while reading, each a sentence. */
+  readonly notes: readonly string[];
+}
+
+export type RowOutcome =
+  | { readonly outcome: "read"; readonly reading: RowReading }
+  | { readonly outcome: "refused"; readonly problems: readonly CellProblem[] }
+  | { readonly outcome: "skipped"; readonly problems: readonly CellProblem[] };
+
+/** What reading a row needs to know of its sheet. */
+export interface SheetFrame {
+  readonly heads: readonly string[];
+  readonly headRow: number;
+  readonly plan: ColumnPlan;
+  readonly settings: SheetSettings;
+}
+
+/** Reads every row; a row never stops the others. */
+export function readRows(rows: readonly SheetRow[], frame: SheetFrame): RowOutcome[] {
+  return rows.map((row) => readRow(row, frame));
+}
+
+/** Reads one row: to values of one species, to problems with their cells, or to the reason why it is none. */
+export function readRow(row: SheetRow, frame: SheetFrame): RowOutcome {
+  const skipped = whyNoValues(row, frame);
+  if (skipped !== null) return { outcome: "skipped", problems: [problem(null, skipped)] };
+
+  const { plan } = frame;
+  const problems: CellProblem[] = [];
+  const filled = row.cells.findLastIndex((cell) => cell.trim() !== "") + 1;
+  if (filled > frame.heads.length || row.cells.length < frame.heads.length) {
+    const count = Math.max(filled, Math.min(row.cells.length, frame.heads.length));
+    return {
+      outcome: "refused",
+      problems: [
+        problem(
+          null,
+          `The row has ${count} ${count === 1 ? "cell" : "cells"} where the heads name ${frame.heads.length}. A delimiter is missing or doubled, or a text that holds one lacks its quotation marks.`,
+        ),
+      ],
+    };
+  }
+
+  const cell = (means: ColumnMeans): { text: string; column: number } => {
+    const column = columnsOf(plan, means)[0] ?? -1;
+    return { text: row.cells[column]?.trim() ?? "", column };
+  };
+  const named = readIdentity(cell, problems, frame);
+  const cas = cell("cas");
+  const readNumberOfCas = cas.text === "" ? null : readCas(cas.text);
+  if (readNumberOfCas && readNumberOfCas.outcome !== "read") {
+    problems.push(
+      problem(cas.column, readNumberOfCas.sentence, [{ label: "Leave the number out", column: cas.column, text: "" }]),
+    );
+  }
+
+  const notes = [...(named?.notes ?? [])];
+  const values = named
+    ? readValues(row, named.identity, frame, problems, notes)
+    : readValues(row, null, frame, problems, notes);
+  if (problems.length > 0 || !named) return { outcome: "refused", problems };
+  return {
+    outcome: "read",
+    reading: {
+      species: {
+        formula: named.identity.formula,
+        phase: named.identity.phase,
+        label: named.identity.label ?? null,
+        name: cell("name").text || named.name,
+        cas: readNumberOfCas?.outcome === "read" ? readNumberOfCas.value : null,
+      },
+      values,
+      remark:
+        [...columnsOf(plan, "remark").map((index) => row.cells[index]?.trim() ?? ""), named.remark ?? ""]
+          .filter(Boolean)
+          .join("; ") || null,
+      notes,
+    },
+  };
+}
+
+function problem(column: number | null, sentence: string, repairs: readonly Repair[] = []): CellProblem {
+  return { column, sentence, repairs };
+}
+
+/** Cells that say that there is no value; an empty cell is never a zero. */
+export function isAbsent(cell: string): boolean {
+  return /^(?:|[-–—−]+|\.{2,}|…|n\.?\s?[ad]\.?)$/i.test(cell.trim());
+}
+
+/** The reason why a row holds no values: blank, a title, the heads again, a footnote. Null when it should be read. */
+function whyNoValues(row: SheetRow, frame: SheetFrame): string | null {
+  const { plan, heads } = frame;
+  const filled = row.cells.filter((cell) => cell.trim() !== "");
+  if (filled.length === 0) return "a blank row";
+  if (row.number < frame.headRow) return "a title above the heads";
+  if (heads.length > 1 && heads.every((head, index) => (row.cells[index]?.trim() ?? "") === head))
+    return "the heads again";
+  const valueColumns = plan.flatMap((column, index) =>
+    column.means === "value" || column.means === "anyValue" ? [index] : [],
+  );
+  if (valueColumns.some((index) => !isAbsent(row.cells[index] ?? ""))) return null;
+  if (filled.length === 1) return "a title or a note: one cell, no values";
+  const phase = columnsOf(plan, "phase").some((index) => (row.cells[index]?.trim() ?? "") !== "");
+  const key = columnsOf(plan, "key").some((index) => (row.cells[index]?.trim() ?? "") !== "");
+  // A short row may have lost its values with a delimiter: that is for the steward to see, not to skip.
+  if ((phase || key) && row.cells.length < heads.length) return null;
+  return phase || key
+    ? "a species without values in the columns that are read"
+    : "a title or a note: no phase and no values";
+}
+
+interface NamedSpecies {
+  identity: SpeciesIdentity;
+  name: string | null;
+  remark: string | null;
+  notes: string[];
+}
+
+type CellOf = (means: ColumnMeans) => { text: string; column: number };
+
+/** Formula, phase and form of the row; problems are added to the list, and then there is no identity. */
+function readIdentity(cell: CellOf, problems: CellProblem[], frame: SheetFrame): NamedSpecies | null {
+  const keyed = cell("key").column !== -1;
+  const notes: string[] = [];
+  let formula: Formula | null = null;
+  let phase: Phase | null = null;
+  let label: string | null = null;
+  let furtherForm = false;
+
+  if (keyed) {
+    const key = cell("key");
+    const identity = take(readKey(key.text), key.column, problems, notes, formatKey);
+    if (identity) ({ formula, phase } = identity);
+    label = identity?.label ?? null;
+    furtherForm = /^form-\d$/.test(label ?? "");
+  } else {
+    const formulaCell = cell("formula");
+    formula = take(readFormula(formulaCell.text), formulaCell.column, problems, notes, (one) => one.printed);
+    const phaseCell = cell("phase");
+    const read = take(readPhase(phaseCell.text), phaseCell.column, problems, notes, (one) => one.phase);
+    phase = read?.phase ?? null;
+    label = read?.label ?? null;
+    furtherForm = read?.handbookCode !== undefined && /^cr?\d$/.test(read.handbookCode);
+  }
+  if (phase === "s" && frame.settings.solidIs === "cr") phase = "cr";
+
+  const form = cell("label");
+  const described = phase ? readDescription(cell("description").text, phase) : null;
+  const named = form.text === "" ? described?.label : normalizeLabel(form.text);
+  if (named === undefined && form.text !== "") {
+    problems.push(
+      problem(
+        form.column,
+        `The form ${quote(form.text)} holds characters that a species key cannot. Use letters, digits and hyphens.`,
+      ),
+    );
+  }
+  if (named) {
+    if (label !== null && !furtherForm && label !== named) {
+      problems.push(
+        problem(
+          form.column === -1 ? cell("description").column : form.column,
+          `The phase names the form ${label}, but this cell says ${named}. Which is it?`,
+        ),
+      );
+    }
+    label = named;
+  } else if (furtherForm) {
+    problems.push(
+      problem(
+        form.column === -1
+          ? cell("description").column === -1
+            ? cell("phase").column
+            : cell("description").column
+          : form.column,
+        `${quote(cell("phase").text || cell("key").text)} is a further crystal form, and nothing says which. Name the form.`,
+      ),
+    );
+  }
+  if (!formula || !phase || problems.length > 0) return null;
+
+  if (formula.charge !== 0 && phase !== "aq" && phase !== "g") {
+    const column = keyed ? cell("key").column : cell("phase").column;
+    problems.push(
+      problem(
+        column,
+        `${formula.printed} carries a charge, and ions are kept in water (aq) or in the gas (g) only. Is the phase or the charge wrong?`,
+        keyed ? [] : [{ label: "Take aq", column, text: "aq" }],
+      ),
+    );
+    return null;
+  }
+  return {
+    identity: label === null ? { formula, phase } : { formula, phase, label },
+    name: described?.name ?? null,
+    remark: described?.remark ?? null,
+    notes,
+  };
+}
+
+/** The value of a reading, or null with its problem in the list; two readings become one-click repairs. */
+function take<T>(
+  reading: Reading<T>,
+  column: number,
+  problems: CellProblem[],
+  notes: string[],
+  spell: (value: T) => string,
+): T | null {
+  switch (reading.outcome) {
+    case "read":
+      notes.push(...reading.notes);
+      return reading.value;
+    case "ambiguous":
+      problems.push(
+        problem(
+          column,
+          reading.sentence,
+          reading.candidates.map((candidate) => ({
+            label: `Take ${spell(candidate)}`,
+            column,
+            text: spell(candidate),
+          })),
+        ),
+      );
+      return null;
+    case "refused":
+      problems.push(problem(column, reading.sentence));
+      return null;
+  }
+}
+
+/** The values of a row in a wide or a long sheet. */
+function readValues(
+  row: SheetRow,
+  identity: SpeciesIdentity | null,
+  frame: SheetFrame,
+  problems: CellProblem[],
+  notes: string[],
+): ReadValue[] {
+  const values: ReadValue[] = [];
+  for (const slot of slotsOf(row, frame, problems)) {
+    const value = readValue(row, slot, identity, frame, problems, notes);
+    if (value) values.push(value);
+  }
+  return values;
+}
+
+/** One value to read: which cell, of what, in which unit, with which cell for its uncertainty. */
+interface Slot {
+  column: number;
+  property: Property;
+  unit: Unit;
+  uncertaintyColumn: number;
+}
+
+function slotsOf(row: SheetRow, frame: SheetFrame, problems: CellProblem[]): Slot[] {
+  const { plan } = frame;
+  const slots: Slot[] = [];
+  for (const [column, planned] of plan.entries()) {
+    if (planned.means === "value" && planned.property && planned.unit) {
+      const { property, unit } = planned;
+      const uncertaintyColumn = plan.findIndex((other) => other.means === "uncertainty" && other.property === property);
+      slots.push({ column, property, unit, uncertaintyColumn });
+    }
+    if (planned.means !== "anyValue") continue;
+    const which = columnsOf(plan, "propertyName")[0] ?? -1;
+    const property = propertyOf(row.cells[which] ?? "");
+    if (!property) {
+      problems.push(
+        problem(
+          which,
+          `${quote(row.cells[which]?.trim() ?? "")} is no quantity of this table. Write ΔfH°, S°, ΔfG°, Cp° or H°(T)−H°(0).`,
+        ),
+      );
+      continue;
+    }
+    const unitColumn = columnsOf(plan, "unitName")[0] ?? -1;
+    const unitText = row.cells[unitColumn]?.trim() ?? "";
+    const reading = unitText === "" && planned.unit ? null : readUnit(unitText);
+    if (reading && reading.outcome !== "read") {
+      problems.push(problem(unitColumn === -1 ? column : unitColumn, reading.sentence));
+      continue;
+    }
+    const unit = reading ? reading.value : planned.unit;
+    if (!unit) continue;
+    if (!isLikeUnit(unit, propertyInfo[property].unit)) {
+      problems.push(
+        problem(
+          unitColumn === -1 ? column : unitColumn,
+          `${propertyInfo[property].symbol} is not measured in ${unit} but in ${propertyInfo[property].unit} or another unit of its kind. Is the quantity or the unit wrong?`,
+        ),
+      );
+      continue;
+    }
+    slots.push({ column, property, unit, uncertaintyColumn: columnsOf(plan, "anyUncertainty")[0] ?? -1 });
+  }
+  return slots;
+}
+
+function readValue(
+  row: SheetRow,
+  slot: Slot,
+  identity: SpeciesIdentity | null,
+  frame: SheetFrame,
+  problems: CellProblem[],
+  notes: string[],
+): ReadValue | null {
+  const { column, property } = slot;
+  const text = row.cells[column]?.trim() ?? "";
+  const spreadText = slot.uncertaintyColumn === -1 ? "" : (row.cells[slot.uncertaintyColumn]?.trim() ?? "");
+  if (isAbsent(text)) {
+    if (!isAbsent(spreadText) && !/^0(?:[.,]0*)?$/.test(spreadText)) {
+      problems.push(problem(column, `There is an uncertainty (${spreadText}) but no value. Was the value lost?`));
+    }
+    return null;
+  }
+  const options: NumberOptions = { decimalComma: frame.settings.decimalComma };
+  const number = readCell(text, column, options, problems, notes);
+  if (!number) return null;
+
+  const before = problems.length;
+  const value = convert(number.digits, slot.unit, propertyInfo[property].unit);
+  if (identity && mustBePositive(property, identity.phase) && compare(value.digits, ZERO) <= 0) {
+    problems.push(notPositive(text, slot, number.digits, row, frame));
+  }
+  const uncertainty = readSpread(
+    { text: spreadText, slot, number, identity, valueDigits: value.digits },
+    options,
+    frame,
+    problems,
+    notes,
+  );
+  if (problems.length > before) return null;
+  return {
+    property,
+    digits: value.digits,
+    uncertainty,
+    given: { text, unit: slot.unit, note: value.note },
+    column,
+  };
+}
+
+const ZERO = digits("0");
+
+/** A number, or its problem with a repair where a footnote mark is all that is in the way. */
+function readCell(
+  text: string,
+  column: number,
+  options: NumberOptions,
+  problems: CellProblem[],
+  notes: string[],
+): ReadNumber | null {
+  const reading = readNumber(text, options);
+  const marked = reading.outcome === "refused" ? /^(.*?\d\)?)\s*[*†‡§#]+$|^(.*?\d)\s+[a-d]\)?$/.exec(text) : null;
+  const bare = marked ? (marked[1] ?? marked[2] ?? "") : "";
+  if (reading.outcome === "refused" && bare !== "" && readNumber(bare, options).outcome === "read") {
+    problems.push(problem(column, reading.sentence, [{ label: `Take ${minus(bare)}`, column, text: bare }]));
+    return null;
+  }
+  return take(reading, column, problems, notes, (one) => one.digits);
+}
+
+/** Third law: a pure substance has a positive entropy; so is its heat capacity and its enthalpy increment. */
+function mustBePositive(property: Property, phase: Phase): boolean {
+  if (property === "enthalpyIncrement") return true;
+  return (property === "entropy" || property === "heatCapacity") && phase !== "aq";
+}
+
+function notPositive(text: string, slot: Slot, value: Digits, row: SheetRow, frame: SheetFrame): CellProblem {
+  const what = {
+    entropy: "The entropy of a substance",
+    heatCapacity: "The heat capacity of a substance",
+    enthalpyIncrement: "The enthalpy increment of a substance",
+  }[slot.property as "entropy" | "heatCapacity" | "enthalpyIncrement"];
+  if (isZero(value)) {
+    return problem(slot.column, `${what} is not zero at 298.15 K. Was a missing value typed as 0?`, [
+      { label: "Leave the cell empty", column: slot.column, text: "" },
+    ]);
+  }
+  const neighbour = frame.plan.findIndex(
+    (column) => column.property === "enthalpyOfFormation" && column.means === "value",
+  );
+  const positive = text.replace(/^\s*[-−–]\s*/, "");
+  const from =
+    neighbour === -1 || neighbour === slot.column || isAbsent(row.cells[neighbour] ?? "")
+      ? ""
+      : ` Did the sign come from the column ${columnName(frame.heads[neighbour] ?? "", neighbour)}?`;
+  return problem(slot.column, `${what} cannot be negative.${from}`, [
+    { label: `Take ${positive}`, column: slot.column, text: positive },
+  ]);
+}
+
+interface SpreadCell {
+  text: string;
+  slot: Slot;
+  number: ReadNumber;
+  identity: SpeciesIdentity | null;
+  valueDigits: Digits;
+}
+
+/** The uncertainty of a value, from its own column or from the value's cell, in the unit of the property. */
+function readSpread(
+  cell: SpreadCell,
+  options: NumberOptions,
+  frame: SheetFrame,
+  problems: CellProblem[],
+  notes: string[],
+): Uncertainty | null {
+  const { slot, number, identity } = cell;
+  const column = slot.uncertaintyColumn;
+  const conventional = identity !== null && isZero(cell.valueDigits) && isConventionalZero(identity, slot.property);
+  const exact: Uncertainty = { digits: ZERO, kind: "exact", coverageFactor: null };
+  const inCell = number.uncertainty;
+  if (isAbsent(cell.text)) {
+    if (!inCell) return conventional ? exact : null;
+    if (isZero(inCell.digits) && conventional) return exact;
+    return inTableUnit(inCell.digits, inCell.kind === "standard" ? "standard" : kindOf(frame), slot);
+  }
+
+  // A bare ± before the number in a column of its own says nothing new.
+  const read = readCell(cell.text.replace(/^(?:±|\+\/-)\s*/, ""), column, options, problems, notes);
+  if (!read) return null;
+  if (inCell) {
+    if (compare(inCell.digits, read.digits) === 0) return inTableUnit(read.digits, kindOf(frame), slot);
+    problems.push(
+      problem(column, `The value's cell says ± ${inCell.digits}, this one ${read.digits}. Leave one of them.`),
+    );
+    return null;
+  }
+  if (compare(read.digits, ZERO) < 0) {
+    const positive = cell.text.replace(/^\s*[-−–]\s*/, "");
+    problems.push(
+      problem(column, "An uncertainty is never negative.", [{ label: `Take ${positive}`, column, text: positive }]),
+    );
+    return null;
+  }
+  if (isZero(read.digits)) {
+    if (conventional) return exact;
+    problems.push(
+      problem(
+        column,
+        "Only a value that holds by convention has no uncertainty at all. Leave the cell empty where none is known.",
+        [{ label: "Leave the cell empty", column, text: "" }],
+      ),
+    );
+    return null;
+  }
+  return inTableUnit(read.digits, kindOf(frame), slot);
+}
+
+function kindOf(frame: SheetFrame): "standard" | "expanded" | "unstated" {
+  return frame.settings.uncertaintyKind ?? "unstated";
+}
+
+function inTableUnit(value: Digits, kind: "standard" | "expanded" | "unstated", slot: Slot): Uncertainty {
+  return {
+    digits: convert(value, slot.unit, propertyInfo[slot.property].unit).digits,
+    kind,
+    coverageFactor: kind === "expanded" ? 2 : null,
+  };
+}
+
+const minus = (text: string): string => text.replace(/^-/, "−");
