@@ -178,6 +178,7 @@ describe("texts that are refused", () => {
     ["½O2", "coefficient", "belongs to an equation"],
     ["CuSO4-5H2O", "hyphen", "a hyphen is no dot"],
     ["CuSO4 5H2O", "space", "a space is no dot"],
+    ["CuSO4·2½H2O", "space", "two and a half, never 21/2"],
     ["CuSO4·xH2O", "amount of water open", "how much water?"],
     ["CuSO4·nH2O", "amount of water open", "how much water?"],
     ["Mg(OH2", "not closed", "a bracket is missing"],

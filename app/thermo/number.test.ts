@@ -25,6 +25,7 @@ describe("numbers that are read", () => {
     ["1.2×10−3", "0.0012", "an exponent written out"],
     ["1.2 x 10^-3", "0.0012", "with a letter x"],
     ["1.2 × 10<sup>3</sup>", "1200", "with markup"],
+    ["1.2×10⁻³", "0.0012", "with raised characters"],
     ["１２．５", "12.5", "full-width digits"],
   ])("%s is %s: %s", (text, expected) => {
     expect(readNumber(text)).toMatchObject({ outcome: "read", value: { digits: expected } });
@@ -104,6 +105,10 @@ describe("cells that are refused", () => {
     ["(12.3)", "stands in brackets"],
     ["-285.83*", "footnote mark"],
     ["12.3a", "footnote mark"],
+    ["205.15¹", "footnote mark"],
+    ["205.15<sup>a</sup>", "footnote mark"],
+    ["2½", "is not a number"],
+    ["12₃", "is not a number"],
     ["-285.83 kJ/mol", "holds a unit"],
     ["12..3", "is not a number"],
     ["1,23,4", "is not a number"],

@@ -1,6 +1,6 @@
 import { type Digits, digits, places, readDigits } from "./digits.ts";
 import { ambiguous, isTooLong, quote, read, type Reading, refused } from "./reading.ts";
-import { plainText } from "./typography.ts";
+import { markedText } from "./typography.ts";
 
 /** A number as a cell holds it, with the uncertainty when it stands in the same cell. */
 export interface ReadNumber {
@@ -29,11 +29,12 @@ const ABSENT = /^(?:|[-–—]+|\.{2,}|…|n\.?\s?[ad]\.?|nan|none|null|\?+|#n\/
  * carry the standard uncertainty in the last digits: `-285.830(20)` is −285.830 with u = 0.020.
  *
  * Two readings: `1,234` (a decimal comma or thousands), unless `decimalComma` settles it.
- * Refused: empty cells, ranges, bounds, numbers with a unit or a footnote mark, numbers wholly in brackets.
+ * Refused: empty cells, ranges, bounds, numbers with a unit or a footnote mark (`205.15¹` is not 205.151), numbers
+ * wholly in brackets.
  */
 export function readNumber(text: string, options: NumberOptions = {}): Reading<ReadNumber> {
   if (isTooLong(text)) return refused(`${quote(text)} is too long for a number.`);
-  const plain = plainText(text).trim();
+  const plain = markedText(text).trim();
   if (ABSENT.test(plain)) {
     return refused(plain === "" ? "The cell is empty." : `${quote(text.trim())} is not a number: no value is given.`);
   }
@@ -190,7 +191,7 @@ function whyNotANumber(plain: string, shown: string): string {
   if (/^[+-]?[\d.,]+\s?(?:-|…|to)\s?[+-]?[\d.,]+$/i.test(plain)) {
     return `${quote(shown)} is a range. Give one number with its uncertainty, for example 12.3 ± 0.4.`;
   }
-  if (/^[+-]?[\d.,\s]+[*†‡§#a-d]{1,3}$/i.test(plain)) {
+  if (/^[+-]?[\d.,\s]+(?:\^\{.*\}|[*†‡§#a-d]{1,3})$/i.test(plain)) {
     return `${quote(shown)} ends in a footnote mark. Put the note in the remarks and leave only the number here.`;
   }
   if (/^[+-]?[\d.,\s]+\s?(?:k?J|k?cal|e\.?u)/i.test(plain)) {

@@ -55,6 +55,7 @@ describe("reading a phase", () => {
     ["graphite", "not a phase"],
     ["constructor", "not a phase"],
     ["cr,<b>", "characters"],
+    ["cr²", "not a phase"],
   ])("refuses %j: %s", (text, sentence) => {
     expect(readPhase(text)).toMatchObject({ outcome: "refused", sentence: expect.stringContaining(sentence) });
   });

@@ -1,6 +1,6 @@
 import { normalizeLabel } from "./label.ts";
 import { isTooLong, quote, read, type Reading, refused } from "./reading.ts";
-import { plainText } from "./typography.ts";
+import { markedText } from "./typography.ts";
 
 /** Phases of the table: gas, liquid, solid, crystal, amorphous, glass, solute in water (IUPAC Green Book, 2.11.1). */
 export type Phase = "g" | "l" | "s" | "cr" | "am" | "vit" | "aq";
@@ -95,7 +95,7 @@ const STANDARD_SOLUTE =
  */
 export function readPhase(text: string): Reading<ReadPhase> {
   if (isTooLong(text)) return refused(`${quote(text)} is too long for a phase.`);
-  const plain = plainText(text)
+  const plain = markedText(text)
     .trim()
     .replace(/^[([]\s*(.*?)\s*[)\]]$/, "$1");
   if (plain === "") return refused("No phase is given. Write g, l, s, cr, am, vit or aq.");

@@ -6,6 +6,8 @@
 const RAISED = "⁰¹²³⁴⁵⁶⁷⁸⁹⁺⁻⁼⁽⁾";
 const LOWERED = "₀₁₂₃₄₅₆₇₈₉₊₋₌₍₎";
 const LEVEL = "0123456789+-=()";
+const RAISED_RUN = new RegExp(`[${RAISED}]+`, "g");
+const LOWERED_RUN = new RegExp(`[${LOWERED}]+`, "g");
 
 const NAMED_CHARACTERS: ReadonlyMap<string, string> = new Map(
   Object.entries({
@@ -32,8 +34,8 @@ export function markedText(text: string): string {
     entities(text)
       .replace(/<sup>(.*?)<\/sup>/gi, "^{$1}")
       .replace(/<sub>(.*?)<\/sub>/gi, "_{$1}")
-      .replace(new RegExp(`[${RAISED}]+`, "g"), (run) => `^{${level(run, RAISED)}}`)
-      .replace(new RegExp(`[${LOWERED}]+`, "g"), (run) => `_{${level(run, LOWERED)}}`),
+      .replace(RAISED_RUN, (run) => `^{${level(run, RAISED)}}`)
+      .replace(LOWERED_RUN, (run) => `_{${level(run, LOWERED)}}`),
   );
 }
 
@@ -42,14 +44,15 @@ export function plainText(text: string): string {
   return levelled(
     entities(text)
       .replace(/<\/?su[bp]>/gi, "")
-      .replace(new RegExp(`[${RAISED}]`, "g"), (character) => level(character, RAISED))
-      .replace(new RegExp(`[${LOWERED}]`, "g"), (character) => level(character, LOWERED)),
+      .replace(RAISED_RUN, (run) => level(run, RAISED))
+      .replace(LOWERED_RUN, (run) => level(run, LOWERED)),
   );
 }
 
 /** One minus, one space, one middle dot, and no compatibility characters (full-width letters, `½`). */
 function levelled(text: string): string {
   return text
+    .replace(/(?<=\d)(?=[¼½¾⅐-⅞])/g, " ") // 2½ is not 21/2
     .normalize("NFKC")
     .replace(/[‐‑‒–—−﹣]/g, "-")
     .replace(/⁄/g, "/")
