@@ -1,6 +1,7 @@
 import { Link } from "react-router";
 import { paths } from "#app/paths.ts";
 import { Leaf } from "./Leaf.tsx";
+import { useRootData } from "./useRootData.ts";
 
 const heads: Record<number, { head: string; help: string }> = {
   400: {
@@ -46,23 +47,28 @@ interface ErrorPageProps {
 /** A page for what went wrong: what it is, what to do, and the ways on. */
 export function ErrorPage({ status, sentence }: ErrorPageProps) {
   const { head, help } = statusWords(status);
+  const { visitor, opens } = useRootData();
   return (
     <Leaf heading={head} lede={sentence ?? help}>
       {sentence && sentence !== help && <p className="max-w-[68ch]">{help}</p>}
       <ul className="mt-4 space-y-1">
-        {status === 401 && (
+        {!visitor && (
           <li>
             <Link to={paths.signIn()}>Sign in</Link>
           </li>
         )}
+        {opens.includes("table") && (
+          <>
+            <li>
+              <Link to={paths.table()}>The table, newest edition</Link>
+            </li>
+            <li>
+              <Link to={paths.home()}>What waits for you</Link>
+            </li>
+          </>
+        )}
         <li>
-          <Link to={paths.table()}>The table, newest edition</Link>
-        </li>
-        <li>
-          <Link to={paths.editions()}>All editions</Link>
-        </li>
-        <li>
-          <Link to={paths.home()}>What waits for you</Link>
+          <Link to={paths.conventions()}>Conventions</Link>
         </li>
       </ul>
       <p className="fine mt-6">Status {status}</p>

@@ -34,11 +34,7 @@ const sections: readonly (readonly [SectionName, string, string])[] = [
 /** The frame of every page: the ruled margin with its bookmark, the head, the ribbon, and one column of text. */
 export function Leaf({ heading, headingKind, lede, section, bookmark, ribbon, children }: LeafProps) {
   const { visitor, opens, currentEdition, demo } = useRootData();
-  const mark: BookmarkProps =
-    bookmark ??
-    (currentEdition === null
-      ? { kind: "plain", label: "Edition", mark: "–" }
-      : editionBookmark(currentEdition, currentEdition));
+  const mark = bookmark ?? usualBookmark(visitor !== null, currentEdition);
   return (
     <div className="leaf">
       <a className="skip" href="#text">
@@ -113,6 +109,14 @@ export function Leaf({ heading, headingKind, lede, section, bookmark, ribbon, ch
       </div>
     </div>
   );
+}
+
+function usualBookmark(known: boolean, currentEdition: number | null): BookmarkProps {
+  if (currentEdition !== null) return editionBookmark(currentEdition, currentEdition);
+  // A stranger has no edition to be told of, and a new laboratory has none yet.
+  return known
+    ? { kind: "draft", label: "Draft of", mark: 1 }
+    : { kind: "plain", label: "Home", mark: "°", to: paths.home() };
 }
 
 function DefaultRibbon({ currentEdition }: { currentEdition: number | null }) {

@@ -1,4 +1,4 @@
-import { formulaPieces, keyParts, statePrinted, trueMinus, type Piece } from "./formulaPieces.ts";
+import { formulaPieces, trueMinus, type Piece } from "./formulaPieces.ts";
 
 /** What a plain sentence turns into: runs of text, species by key, and the few signs that are drawn. */
 export type Typeset =
@@ -23,7 +23,7 @@ const unitNames = "kcal|cal|kJ|J|kg|mg|g|mol|eV|kPa|Pa|mV|V|kB|m|C|K";
 // A chain of at least one division, as the data spell it: "kJ/mol", "J/(mol K)", "cal/(mol K)", "g/mol", "C/mol".
 const unitPattern = `(?:${unitNames})/(?:(?:mol|K|g|kg|s)(?![A-Za-z])|\\((?:mol|K|kg|g)(?: (?:mol|K|kg|g))*\\))`;
 const symbolPattern =
-  "Δ[frca]?[HSGUC]p?°?|H°\\(T\\)\\s?[−-]\\s?H°\\(0\\)|(?:S|H|G)°|Cp°?|E_?n(?![a-z])|log10 ?K(?![a-z])|ln ?K(?![a-z])|χ²|T(?= ?·? ?Δ)";
+  "Δ[frca]?[HSGUC]p?°?|H°\\(T\\)\\s?[−-]\\s?H°\\(0\\)|(?:S|H|G)°|Cp°?|E_?n(?![a-z])|log10 ?K(?![a-z])|ln ?K(?![a-z])|χ²|T(?= ?·? ?Δ|/1000)|R(?= ln)";
 const keyPattern =
   "(?:[A-Z\\[(]|\\d+(?=[A-Z]))[A-Za-z0-9()\\[\\]·*./+−-]*?\\((?:g|l|s|cr|am|vit|lc|aq)(?:,[A-Za-z0-9α-ω-]+)?\\)";
 const superscripts = "⁰¹²³⁴⁵⁶⁷⁸⁹⁺⁻";
@@ -145,10 +145,4 @@ export function typeset(text: string): Typeset[] {
   }
   plain(text.slice(last));
   return result;
-}
-
-/** The pieces of a species key on one line: formula and state. For drawings, where there is no markup. */
-export function keyPieces(key: string): Piece[] {
-  const { formula, phase, label } = keyParts(key);
-  return [...formulaPieces(formula), ...(phase ? [{ text: statePrinted(phase, label) }] : [])];
 }
