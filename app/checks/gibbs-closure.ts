@@ -38,7 +38,7 @@ export const gibbsClosureCheck: Check = {
   ],
   example: {
     given: "NH3(g) with ΔfH° −49.54, S° 192.77 and ΔfG° −16.41",
-    sentence: "Gibbs closure is off by +3.60 kJ/mol, tolerance 0.20.",
+    sentence: "Gibbs closure is off by +3.60 kJ/mol, tolerance 0.14.",
   },
   run: (species, view, policy) => {
     const values = closureValues(species.values);
