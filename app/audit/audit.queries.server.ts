@@ -66,3 +66,52 @@ export function findEntries(after: number, limit: number, db: Database) {
     .limit(limit)
     .execute();
 }
+
+/** Which entries of the record are looked for; what is left out does not restrict. */
+export interface RecordFilter {
+  act?: string | undefined;
+  objectKind?: string | undefined;
+  objectId?: string | undefined;
+  /** Part of the actor's name or address. */
+  person?: string | undefined;
+  /** From the beginning of this day on, UTC ("2026-03-12"). */
+  from?: string | undefined;
+  /** Up to the end of this day, UTC. */
+  to?: string | undefined;
+  /** Entries with a smaller number only: the page after. */
+  before?: string | undefined;
+}
+
+/** Entries with the names of who acted, newest first. */
+export function findRecord(filter: RecordFilter, limit: number, db: Database) {
+  let query = db
+    .selectFrom("audit_entry as e")
+    .leftJoin("person as p", "p.id", "e.actor")
+    .leftJoin("api_key as k", "k.id", "e.api_key_id")
+    .select((eb) => [
+      "e.number",
+      "e.at",
+      "e.act",
+      "e.object_kind as objectKind",
+      "e.object_id as objectId",
+      "e.request_id as requestId",
+      "p.name as person",
+      "p.email",
+      "k.name as keyName",
+      eb.ref("e.detail").$castTo<Record<string, unknown>>().as("detail"),
+      eb.fn<string>("encode", ["e.hash", sql.lit("hex")]).as("hash"),
+    ]);
+  const { act, objectKind, objectId, person, from, to, before } = filter;
+  if (act) query = query.where("e.act", "=", act);
+  if (objectKind) query = query.where("e.object_kind", "=", objectKind);
+  if (objectId) query = query.where("e.object_id", "=", objectId);
+  if (person) {
+    // The text is looked for as it is: % and _ stand for themselves.
+    const part = `%${person.replace(/[\\%_]/g, "\\$&")}%`;
+    query = query.where((eb) => eb.or([eb("p.name", "ilike", part), eb("p.email", "ilike", part)]));
+  }
+  if (from) query = query.where("e.at", ">=", sql<Date>`${from}::date at time zone 'UTC'`);
+  if (to) query = query.where("e.at", "<", sql<Date>`(${to}::date + 1) at time zone 'UTC'`);
+  if (before) query = query.where("e.number", "<", before);
+  return query.orderBy("e.number", "desc").limit(limit).execute();
+}

@@ -178,8 +178,8 @@ export interface SuggestionView {
   becomes: string;
   slip: string;
   sentence: string;
-  /** Its place in the finding, for the form that takes it; null where it cannot be taken here. */
-  takes: number | null;
+  /** For the form that takes it: its place in the finding and the lines it rewrites; null where it cannot be taken here. */
+  takes: { index: number; seen: readonly string[] } | null;
   /** For the reviewer: the words with which the revision would be returned. */
   asRemark: string;
 }
@@ -585,14 +585,17 @@ function findingView(finding: PageFinding, group: Grouped, context: LineContext,
     arithmetic,
     setAside,
     maySetAside: context.decides && severity === "block" && !setAside && !ownSpecies,
-    suggestions: finding.suggestions.map((suggestion, index) => ({
-      property: suggestion.property,
-      becomes: suggestion.becomes,
-      slip: suggestion.slip,
-      sentence: suggestion.sentence,
-      takes: context.writable && repairsOf(suggestion, group.lines) ? index : null,
-      asRemark: `${key}: ${finding.sentence} ${suggestion.sentence}`,
-    })),
+    suggestions: finding.suggestions.map((suggestion, index) => {
+      const repairs = context.writable ? repairsOf(suggestion, group.lines) : null;
+      return {
+        property: suggestion.property,
+        becomes: suggestion.becomes,
+        slip: suggestion.slip,
+        sentence: suggestion.sentence,
+        takes: repairs && { index, seen: repairs.map(({ line }) => `${line.id}:${line.versionId}`) },
+        asRemark: `${key}: ${finding.sentence} ${suggestion.sentence}`,
+      };
+    }),
   };
 }
 
@@ -669,7 +672,7 @@ const SOURCE_KINDS: Record<SourceKind, string> = {
 };
 
 /** What a line that says words changes, field by field; empty for values. */
-function textChanges(
+export function textChanges(
   before: StoodContent | undefined,
   after: LineContent,
   printCitation: RevisionPageInput["printCitation"],

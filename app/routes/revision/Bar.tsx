@@ -1,0 +1,225 @@
+import type { RevisionPage } from "#app/review/revisionPage.ts";
+import { Button } from "#app/ui/Button.tsx";
+import { DecisionBar, KeysHint } from "#app/ui/DecisionBar.tsx";
+import { count } from "#app/ui/figure.ts";
+import { InlineMark } from "#app/ui/MarginMark.tsx";
+import { Note } from "#app/ui/Note.tsx";
+import { Prose } from "#app/ui/Prose.tsx";
+import { StatusLine } from "#app/ui/StatusLine.tsx";
+import { ActForm, OpenLink, useDesk, useLineKeys } from "./desk.tsx";
+import { ReasonForm } from "./Reason.tsx";
+
+const DECIDING_KEYS = [
+  ["j", "next"],
+  ["k", "back"],
+  ["a", "accept"],
+  ["d", "decline"],
+  ["c", "comment"],
+] as const;
+const WRITING_KEYS = [
+  ["j", "next"],
+  ["k", "back"],
+  ["c", "comment"],
+] as const;
+
+/** What can be done with the whole revision, always within reach; what was refused and what was done is said here. */
+export function Bar({ page, digest }: { page: RevisionPage; digest: string }) {
+  const { said, refusal, dismiss, open } = useDesk();
+  const keys = useLineKeys();
+  const { may, revision } = page;
+  const acts = may.decide || may.send || may.withdraw || may.comment;
+  if (!acts) return <StatusLine shown={false}>{said}</StatusLine>;
+  return (
+    <div id="decide" className="contents">
+      <DecisionBar
+        end={
+          <>
+            <Counts page={page} />
+            {page.groups.length > 0 && (
+              <span className="keys-hint ml-2">
+                {keys.on && <KeysHint keys={may.decide ? DECIDING_KEYS : WRITING_KEYS} />}
+                <Button kind="text" type="button" onClick={keys.toggle}>
+                  <span className="text-fine">{keys.on ? "keys off" : "keys on"}</span>
+                </Button>
+              </span>
+            )}
+          </>
+        }
+      >
+        {refusal && (
+          <div role="alert" className="flex basis-full flex-wrap items-baseline gap-x-4">
+            <Note kind="block" word="refused">
+              <p>
+                <Prose text={refusal} />
+              </p>
+            </Note>
+            <Button kind="text" type="button" onClick={dismiss}>
+              Close this
+            </Button>
+          </div>
+        )}
+        <Panel page={page} open={open} />
+        {may.decide && <Deciding page={page} digest={digest} />}
+        {!may.decide && may.write && <Writing page={page} />}
+        {may.withdraw && (
+          <OpenLink form="withdraw" anchor="decide" className="button button-quiet">
+            Withdraw
+          </OpenLink>
+        )}
+        {may.comment && (
+          <OpenLink form="comment" anchor="decide" className="button button-quiet">
+            Comment
+          </OpenLink>
+        )}
+        <StatusLine>{said || (revision.state === "in_review" ? progress(page) : "")}</StatusLine>
+      </DecisionBar>
+    </div>
+  );
+}
+
+function progress({ counts }: RevisionPage): string {
+  const decided = counts.lines - counts.open;
+  return decided === 0 ? "" : `${count(decided)} of ${count(counts.lines)} decided`;
+}
+
+function Counts({ page: { counts } }: { page: RevisionPage }) {
+  return (
+    <span className="inline-flex flex-wrap gap-x-3">
+      {counts.blocks > 0 && <InlineMark kind="block">{count(counts.blocks)} block</InlineMark>}
+      {counts.looks > 0 && <InlineMark kind="look">{count(counts.looks)} to look at</InlineMark>}
+      {counts.overtaken > 0 && <InlineMark kind="look">{count(counts.overtaken)} overtaken</InlineMark>}
+      <InlineMark kind="clean">{count(counts.clean)} clean</InlineMark>
+    </span>
+  );
+}
+
+function Deciding({ page, digest }: { page: RevisionPage; digest: string }) {
+  const { cleanSet, may, counts } = page;
+  return (
+    <>
+      {cleanSet.count > 0 && (
+        <ActForm intent="accept-clean" fields={[["digest", digest]]}>
+          {({ pending }) => (
+            <Button kind="main" type="submit" pending={pending} pendingLabel="Accepting…">
+              {cleanSet.count === 1 ? "Accept the clean line" : `Accept the ${count(cleanSet.count)} clean lines`}
+            </Button>
+          )}
+        </ActForm>
+      )}
+      {may.close && (
+        <ActForm intent="close">
+          {({ pending }) => (
+            <Button kind="main" type="submit" pending={pending} pendingLabel="Closing…">
+              {counts.accepted === 0
+                ? "Close the review: nothing accepted"
+                : `Close the review: ${count(counts.accepted)} accepted, ${count(counts.declined)} declined`}
+            </Button>
+          )}
+        </ActForm>
+      )}
+      <OpenLink form="return" anchor="decide" className="button">
+        Return with comments
+      </OpenLink>
+    </>
+  );
+}
+
+function Writing({ page: { may, counts } }: { page: RevisionPage }) {
+  return (
+    <>
+      {may.restate && (
+        <ActForm intent="restate">
+          {({ pending }) => (
+            <Button type="submit" pending={pending} pendingLabel="Writing…">
+              {counts.overtaken === 1
+                ? "Write the overtaken line anew"
+                : `Write the ${count(counts.overtaken)} overtaken lines anew`}
+            </Button>
+          )}
+        </ActForm>
+      )}
+      {may.send && (
+        <OpenLink form="send" anchor="decide" className="button button-main">
+          Send to review
+        </OpenLink>
+      )}
+    </>
+  );
+}
+
+/** The form of the bar that is open. */
+function Panel({ page, open }: { page: RevisionPage; open: string | null }) {
+  const { started } = useDesk();
+  const { may, counts } = page;
+  const panel = (): React.ReactNode => {
+    if (open === "return" && may.decide) {
+      return (
+        <ReasonForm
+          key={started}
+          intent="return"
+          name="remark"
+          label="What should be mended"
+          hint="The steward gets it by letter. Decisions made so far stay; a line that is edited is decided anew."
+          act="Return with comments"
+          pendingLabel="Returning…"
+          anchor="decide"
+        />
+      );
+    }
+    if (open === "comment" && may.comment) {
+      return (
+        <ReasonForm
+          intent="comment"
+          name="body"
+          label="Comment on the revision"
+          act="Write the comment"
+          pendingLabel="Writing…"
+          anchor="decide"
+        />
+      );
+    }
+    if (open === "send" && may.send) {
+      return (
+        <ReasonForm
+          intent="send"
+          name="remark"
+          label="Remark for the reviewers"
+          hint="What to look at first; what was answered."
+          optional
+          act="Send to review"
+          pendingLabel="Sending…"
+          kind="main"
+          anchor="decide"
+        >
+          {counts.blocks > 0 && (
+            <p className="mb-2 text-fine text-soft">
+              {counts.blocks === 1 ? "One finding blocks" : `${counts.blocks} findings block`}: a reviewer can only
+              accept those lines after setting the finding aside.
+            </p>
+          )}
+        </ReasonForm>
+      );
+    }
+    if (open === "withdraw" && may.withdraw) {
+      return (
+        <ReasonForm
+          intent="withdraw"
+          name="reason"
+          label="Why it is withdrawn"
+          act={`Withdraw revision ${page.revision.id}`}
+          pendingLabel="Withdrawing…"
+          anchor="decide"
+        >
+          <p className="mb-2 max-w-[60ch]">
+            {counts.lines === 1 ? "Its one line falls" : `Its ${count(counts.lines)} lines fall`} with it, and decisions
+            on them count no more. Nothing is erased: the revision stays to be read. A withdrawn revision is not taken
+            up again.
+          </p>
+        </ReasonForm>
+      );
+    }
+    return null;
+  };
+  const shown = panel();
+  return shown && <div className="basis-full">{shown}</div>;
+}
