@@ -33,6 +33,23 @@ export function pageError(error: unknown): unknown {
   return data(problem, { status: error.status, headers });
 }
 
+/**
+ * Makes a page's loader or action: named errors leave it as answers with their status, redirects and the unexpected as
+ * they are.
+ *
+ * @example
+ * export const loader = forPage(async ({ request }: Route.LoaderArgs) => { await requireActing(request, "table:read"); … });
+ */
+export function forPage<Args, Answer>(work: (args: Args) => Promise<Answer>): (args: Args) => Promise<Answer> {
+  return async (args) => {
+    try {
+      return await work(args);
+    } catch (error) {
+      throw pageError(error);
+    }
+  };
+}
+
 /** An answer that carries a problem document and is not kept by any cache. */
 export function problemResponse(problem: Problem, headers: Record<string, string> = {}): Response {
   return new Response(JSON.stringify(problem), {

@@ -3,10 +3,10 @@ import { readSheetTask } from "./tasks/readSheet.ts";
 import { sendLetterTask } from "./tasks/sendLetter.ts";
 
 /** What does each task: one act of a room, handed the task's payload. */
-type Tasks = { [Name in TaskName]?: (payload: TaskPayloads[Name]) => Promise<void> };
+type Tasks = { [Name in TaskName]: (payload: TaskPayloads[Name]) => Promise<void> };
 
-/** The worker's list of tasks. A task without a line here waits in the queue until a worker knows it. */
+/** The worker's list of tasks. */
 export const tasks: Tasks = {
-  sendLetter: sendLetterTask,
   readSheet: readSheetTask,
+  sendLetter: sendLetterTask,
 };
