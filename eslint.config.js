@@ -88,6 +88,8 @@ const importPolicies = [
   { from: from("routes"), allow: { to: to("routes"), dependency: { kind: "type" } } },
   { from: file("top"), allow: { to: to("http", "ui", "styles", ...everyRoom) } },
   { from: file("top", "settings", "test"), allow: { to: file("top", "paths", "settings") } },
+  // A test beside its file may use the helpers and the published tables of tests/.
+  { from: file("test"), allow: { to: to("tests") } },
 ];
 
 /** Packages and Node.js are open to everybody, with the exceptions after the first two lines. */

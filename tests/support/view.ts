@@ -65,13 +65,6 @@ export function published(rows: readonly PublishedRow[], sourceKind: SourceKind 
   }));
 }
 
-/** The species of a view by its key; throws when the view has none. */
-export function speciesIn(of: TableView, key: string): ViewedSpecies {
-  const species = of.withKey(key);
-  if (species === undefined) throw new Error(`${key} is not in the view`);
-  return species;
-}
-
 type Values = Partial<Record<Property, ViewedValue>>;
 
 interface Draft extends ViewedSpecies {
