@@ -2,6 +2,7 @@ import { isRouteErrorResponse, Links, Meta, Outlet, Scripts, ScrollRestoration }
 import { config } from "#app/config.server.ts";
 import { findCurrentEdition } from "#app/editions/editions.server.ts";
 import { useNonce } from "#app/http/nonce.ts";
+import { requestContext } from "#app/http/requestContext.server.ts";
 import { may, type Permission } from "#app/people/permissions.ts";
 import { findVisitor } from "#app/people/visitor.server.ts";
 import type { Route } from "./+types/root";
@@ -44,6 +45,16 @@ export async function loader({ request }: Route.LoaderArgs): Promise<RootData> {
     demo,
   };
 }
+
+/** Names the reader in the log. The API answers keys only and names their owner itself. */
+export const middleware: Route.MiddlewareFunction[] = [
+  async ({ request, context }, next) => {
+    if (!new URL(request.url).pathname.startsWith("/api/")) {
+      context.get(requestContext).actor = (await findVisitor(request))?.id ?? null;
+    }
+    return next();
+  },
+];
 
 export const links: Route.LinksFunction = () => [{ rel: "icon", href: icon, type: "image/svg+xml" }];
 

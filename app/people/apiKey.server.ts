@@ -2,6 +2,7 @@ import { timingSafeEqual } from "node:crypto";
 import { act } from "#app/audit/act.server.ts";
 import { database } from "#app/db/database.server.ts";
 import { Forbidden, Invalid, NotFound, Refused, Unauthenticated } from "#app/http/errors.ts";
+import { readEmail } from "./email.ts";
 import {
   formatApiKey,
   LONGEST_KEY_DAYS,
@@ -21,8 +22,9 @@ import {
   updateLastUsed,
   updateWithdrawn,
 } from "./keys.queries.server.ts";
+import { asPerson, findAccountByEmail } from "./people.queries.server.ts";
 import { demand, may, permissions } from "./permissions.ts";
-import type { Acting } from "./person.ts";
+import type { Acting, Person } from "./person.ts";
 import { hashSecret, makeKeyId, makeSecret } from "./secrets.server.ts";
 
 const DAY = 24 * 60 * 60 * 1000;
@@ -69,17 +71,40 @@ export interface NewKey {
   days: number;
 }
 
+/** A key as it is handed over, this once: only its hash is stored. */
+export interface MadeKey {
+  id: string;
+  key: string;
+  endsAt: Date;
+}
+
 /**
  * Makes an API key of one's own.
- * @returns the key, to be shown once: only its hash is stored
  * @throws Invalid, Refused (too many keys), Forbidden (a scope for which one lacks the role)
  */
-export async function makeKey(
-  acting: Acting,
-  { name, scopes, days }: NewKey,
-  now: Date = new Date(),
-): Promise<{ id: string; key: string; endsAt: Date }> {
+export async function makeKey(acting: Acting, wanted: NewKey, now: Date = new Date()): Promise<MadeKey> {
   demand(acting, "key:own");
+  return putKey(acting.person, wanted, acting, now);
+}
+
+/**
+ * Makes an API key for somebody, from the command line of the machine the service runs on.
+ * @param email as it was typed
+ * @throws NotFound when nobody has this address; else as `makeKey`
+ */
+export async function makeKeyFor(email: string, wanted: NewKey, now: Date = new Date()): Promise<MadeKey> {
+  const address = readEmail(email);
+  const owner = address === undefined ? undefined : await findAccountByEmail(address, database());
+  if (!owner || owner.switchedOffAt) throw new NotFound("There is no account in use with this address.");
+  return putKey(asPerson(owner), wanted, null, now);
+}
+
+async function putKey(
+  owner: Person,
+  { name, scopes, days }: NewKey,
+  acting: Acting | null,
+  now: Date,
+): Promise<MadeKey> {
   const title = name.trim();
   if (title === "" || title.length > 80 || /\p{Cc}/u.test(title)) {
     const detail = "Give the key a name of 1 to 80 characters that says which program uses it.";
@@ -90,7 +115,9 @@ export async function makeKey(
     const detail = "Choose at least one thing the key may do.";
     throw new Invalid(detail, [{ pointer: "/scopes", detail }]);
   }
-  for (const scope of chosen) demand(acting, scopeInfo[scope].permission);
+  for (const scope of chosen) {
+    demand({ person: owner, apiKeyId: null, requestId: null }, scopeInfo[scope].permission);
+  }
   if (!Number.isInteger(days) || days < 1 || days > LONGEST_KEY_DAYS) {
     const detail = `Give a whole number of days from 1 to ${LONGEST_KEY_DAYS}.`;
     throw new Invalid(detail, [{ pointer: "/days", detail }]);
@@ -99,14 +126,20 @@ export async function makeKey(
   const id = makeKeyId();
   const endsAt = new Date(now.getTime() + days * DAY);
   await act(acting, async ({ trx, record }) => {
-    if ((await countKeys(acting.person.id, now, trx)) >= MOST_KEYS) {
-      throw new Refused(`You hold ${MOST_KEYS} keys already, which is the most. Withdraw one that is no longer used.`);
+    if ((await countKeys(owner.id, now, trx)) >= MOST_KEYS) {
+      throw new Refused(
+        `${MOST_KEYS} keys are in use already, which is the most. Withdraw one that is no longer needed.`,
+      );
     }
     await insertKey(
-      { id, personId: acting.person.id, name: title, scopes: chosen, secretHash: secret.hash, madeAt: now, endsAt },
+      { id, personId: owner.id, name: title, scopes: chosen, secretHash: secret.hash, madeAt: now, endsAt },
       trx,
     );
-    record({ act: "key.made", objectId: id, detail: { name: title, scopes: chosen, endsAt: endsAt.toISOString() } });
+    record({
+      act: "key.made",
+      objectId: id,
+      detail: { owner: owner.id, name: title, scopes: chosen, endsAt: endsAt.toISOString() },
+    });
   });
   return { id, key: formatApiKey({ id, secret: secret.text }), endsAt };
 }
