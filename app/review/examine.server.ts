@@ -72,7 +72,8 @@ export async function loadView(
     .map((element) => referenceStateOf(element))
     .filter((state) => state !== undefined)
     .map((state) => (state.atoms === 1 ? state.element : `${state.element}${state.atoms}`));
-  const hills = unique([...touched.map((one) => one.hill), ...referenceFormulas]);
+  // Water too: H3O+(aq) carries its values.
+  const hills = unique([...touched.map((one) => one.hill), ...referenceFormulas, "H2O"]);
   const cas = unique(
     proposed.map((line) => (line.content.kind === "detail" ? line.content.cas : null)).filter((one) => one !== null),
   );
