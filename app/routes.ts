@@ -8,6 +8,11 @@ export default [
   // The table, as of an edition
 
   // Sheets
+  route("sheets", "routes/sheets.tsx"),
+  route("sheets/new", "routes/sheets.new.tsx"),
+  route("sheets/:sheet", "routes/sheet.tsx"),
+  route("sheets/:sheet/original", "routes/sheet.original.ts"),
+  route("sheets/:sheet/refused.csv", "routes/sheet.findings.ts"),
 
   // Review
   route("revisions", "routes/revisions.tsx"),
@@ -16,6 +21,8 @@ export default [
   route("record", "routes/record.tsx"),
 
   // Sources and conventions
+  route("sources", "routes/sources.tsx"),
+  route("sources/:source", "routes/source.tsx"),
   route("conventions", "routes/conventions.tsx"),
   route("conventions/checks/:check", "routes/conventions.check.tsx"),
 
@@ -31,8 +38,20 @@ export default [
   route("inbox", "routes/inbox.tsx"),
 
   // For programs: the API and its guide
+  route("api/v1/openapi.json", "routes/api.openapi.ts"),
+  route("api/v1/editions", "routes/api.editions.ts"),
+  route("api/v1/editions/:edition", "routes/api.edition.ts"),
+  route("api/v1/editions/:edition/species", "routes/api.edition.species.ts"),
+  route("api/v1/editions/:edition/species/:key", "routes/api.edition.species.key.ts"),
+  route("api/v1/editions/:edition/values", "routes/api.edition.values.ts"),
+  route("api/v1/editions/:edition/table.csv", "routes/api.edition.table.ts"),
+  route("api/v1/editions/:edition/table.csv-metadata.json", "routes/api.edition.table.description.ts"),
+  route("api/v1/editions/:a/compare/:b", "routes/api.edition.compare.ts"),
+  route("api/*", "routes/api.unknown.ts"),
 
   // Resources for pages (session only)
+  route("resources/sheets/:sheet/progress", "routes/resources.sheet.progress.ts"),
+  route("resources/sheets/:sheet/repair", "routes/resources.sheet.repair.ts"),
   route("resources/revisions/:revision/act", "routes/resources.revision.act.ts"),
 
   // Development and tests

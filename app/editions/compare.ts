@@ -157,6 +157,19 @@ export function countChanges(changes: readonly { what: What }[]): ChangeCounts {
   return counts;
 }
 
+/** The changes behind a place (key, property), at most `limit`, and whether there are more. */
+export function pageOfChanges<Change extends { key: string; property: Property }>(
+  changes: readonly Change[],
+  place: readonly string[] | null,
+  limit: number,
+): { page: Change[]; more: boolean } {
+  const [key = "", property = ""] = place ?? [];
+  const behind = place
+    ? changes.filter((one) => (compareBytes(one.key, key) || compareBytes(one.property, property)) > 0)
+    : changes;
+  return { page: behind.slice(0, limit), more: behind.length > limit };
+}
+
 // --- What things are called --------------------------------------------------
 
 /** A field of a species or a source that two editions have differently, as text. */

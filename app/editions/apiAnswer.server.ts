@@ -1,0 +1,48 @@
+import { BadRequest, Invalid } from "#app/http/errors.ts";
+import type { Keeping } from "#app/http/caching.server.ts";
+import { readCursor } from "./apiShape.ts";
+import type { ResolvedEdition } from "./resolve.server.ts";
+
+/**
+ * How an answer about an edition is kept: for good under its number; for moments under "current", with the numbered
+ * address named.
+ * @param numbered the same address with the edition's number, query included
+ */
+export function keepingOf(
+  { isCurrent }: ResolvedEdition,
+  numbered: string,
+): { keeping: Keeping; headers: Record<string, string> } {
+  return isCurrent
+    ? { keeping: "current", headers: { "Content-Location": numbered } }
+    : { keeping: "frozen", headers: {} };
+}
+
+/** The query of a request as it came, with its question mark, or nothing. */
+export function searchOf(request: Request): string {
+  return new URL(request.url).search;
+}
+
+/** The same page's address with another cursor: what a Link header's rel=next leads to. */
+export function nextLink(request: Request, path: string, cursor: string): string {
+  const query = new URL(request.url).searchParams;
+  query.set("cursor", cursor);
+  return `<${path}?${query.toString()}>; rel="next"`;
+}
+
+/**
+ * The place a cursor stands for.
+ * @throws Invalid when the cursor is none that a page gave out
+ */
+export function placeOf(cursor: string | undefined, parts: number): string[] | null {
+  if (cursor === undefined) return null;
+  const place = readCursor(cursor, parts);
+  if (place) return place;
+  const detail = "This is no cursor that a page gave out. Leave it out to begin at the first page.";
+  throw new Invalid(detail, [{ pointer: "/cursor", detail }]);
+}
+
+/** @throws BadRequest when a parameter is given together with others that it makes meaningless */
+export function alone(name: string, given: Readonly<Record<string, unknown>>, others: readonly string[]): void {
+  const clash = others.find((other) => given[other] !== undefined);
+  if (clash) throw new BadRequest(`The parameter "${name}" names one species by itself; leave "${clash}" out.`);
+}

@@ -1,0 +1,79 @@
+import { createHash } from "node:crypto";
+import { database } from "#app/db/database.server.ts";
+import { type BodyDigest, bodyDigest, type Keeping, keptAnswer } from "#app/http/caching.server.ts";
+import { type Edition, findDetailsAsOf, findValuesBehind } from "./editions.queries.server.ts";
+import { findSources } from "./read.server.ts";
+import { fileHead, fileLine, fileName } from "./tableFile.ts";
+
+/** Values read at a time. */
+const PORTION = 2_000;
+
+/** The lines of an edition's CSV in portions; an edition never stands in memory whole. */
+async function* portions(n: number): AsyncGenerator<Buffer> {
+  const details = new Map((await findDetailsAsOf(n, {}, database())).map((detail) => [detail.speciesId, detail]));
+  const sources = await findSources(n);
+  yield Buffer.from(fileHead(), "utf8");
+  let place: { key: string; property: string } | null = null;
+  for (;;) {
+    const values = await findValuesBehind(n, place, PORTION, database());
+    const last = values.at(-1);
+    if (!last) return;
+    place = { key: last.key, property: last.property };
+    const lines = values.flatMap((value) => {
+      const detail = details.get(value.speciesId);
+      return detail ? [fileLine({ edition: n, value, detail, sources })] : [];
+    });
+    yield Buffer.from(lines.join(""), "utf8");
+  }
+}
+
+// What was hashed once need not be hashed again: an edition's file is bound to its digest. A cache of a few bytes each.
+const known = new Map<string, BodyDigest>();
+const MOST_KNOWN = 1_000;
+
+/** SHA-256 and length of an edition's CSV. */
+async function tableFileDigest(edition: Edition): Promise<BodyDigest> {
+  const name = edition.digest.toString("hex");
+  const found = known.get(name);
+  if (found) return found;
+  const hash = createHash("sha256");
+  let length = 0;
+  for await (const portion of portions(edition.number)) {
+    hash.update(portion);
+    length += portion.length;
+  }
+  const digest = bodyDigest(hash.digest(), length);
+  if (known.size >= MOST_KNOWN) known.clear();
+  known.set(name, digest);
+  return digest;
+}
+
+/** The edition's CSV as a stream of bytes. */
+function tableFileStream(edition: Edition): ReadableStream<Uint8Array> {
+  const source = portions(edition.number);
+  return new ReadableStream<Uint8Array>({
+    async pull(controller) {
+      const { done, value } = await source.next();
+      if (done) controller.close();
+      else controller.enqueue(new Uint8Array(value));
+    },
+    async cancel() {
+      await source.return(undefined);
+    },
+  });
+}
+
+/** The answer that downloads an edition's CSV, for programs and for people alike. */
+export async function tableFileAnswer(
+  request: Request,
+  edition: Edition,
+  keeping: Keeping,
+  headers: Readonly<Record<string, string>>,
+): Promise<Response> {
+  const head = {
+    contentType: "text/csv; charset=utf-8; header=present",
+    keeping,
+    headers: { "Content-Disposition": `attachment; filename="${fileName(edition.number)}"`, ...headers },
+  };
+  return keptAnswer(request, head, await tableFileDigest(edition), () => tableFileStream(edition));
+}

@@ -1,0 +1,21 @@
+import { keepingOf } from "#app/editions/apiAnswer.server.ts";
+import { apiPaths } from "#app/editions/apiShape.ts";
+import { describeTable } from "#app/editions/contract.ts";
+import { resolveEdition } from "#app/editions/resolve.server.ts";
+import { fileDescription } from "#app/editions/tableFile.ts";
+import { answering, apiRoute } from "#app/http/api.server.ts";
+import { textAnswer } from "#app/http/caching.server.ts";
+import { requireKey } from "#app/people/apiKey.server.ts";
+
+export const { loader, action } = apiRoute(
+  answering(describeTable, async ({ request, params }) => {
+    await requireKey(request, "read");
+    const resolved = await resolveEdition(params["edition"]);
+    const { edition } = resolved;
+    const kept = keepingOf(resolved, apiPaths.tableDescription(edition.number));
+    return textAnswer(request, JSON.stringify(fileDescription(edition)), {
+      contentType: "application/csvm+json",
+      ...kept,
+    });
+  }),
+);

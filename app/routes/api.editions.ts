@@ -1,0 +1,18 @@
+import { apiEdition } from "#app/editions/apiShape.ts";
+import { listEditions } from "#app/editions/contract.ts";
+import { findAllEditions } from "#app/editions/editions.server.ts";
+import { answering, apiRoute } from "#app/http/api.server.ts";
+import { jsonAnswer } from "#app/http/caching.server.ts";
+import { requireKey } from "#app/people/apiKey.server.ts";
+
+export const { loader, action } = apiRoute(
+  answering(listEditions, async ({ request, publicUrl }) => {
+    await requireKey(request, "read");
+    const editions = await findAllEditions();
+    const body = {
+      edition: editions[0]?.number ?? null,
+      editions: editions.map((edition) => apiEdition(edition, publicUrl)),
+    };
+    return jsonAnswer(request, body, { keeping: "asked" });
+  }),
+);
