@@ -41,6 +41,7 @@ export const paths = {
   newSheet: () => "/sheets/new",
   sheet: (sheet: string | number) => `/sheets/${segment(sheet)}`,
   sheetOriginal: (sheet: string | number) => `/sheets/${segment(sheet)}/original`,
+  sheetFindings: (sheet: string | number) => `/sheets/${segment(sheet)}/refused.csv`,
 
   // Review
   revisions: () => "/revisions",

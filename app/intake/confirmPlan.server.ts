@@ -60,7 +60,7 @@ export async function confirmPlan(acting: Acting, sheetId: number, confirmed: Co
     await updateSheetConfirmed(
       sheetId,
       {
-        plan: { columns: confirmed.columns, notices: sheet.plan?.notices ?? [], headRow: sheet.plan?.headRow ?? 1 },
+        plan: { notices: [], headRow: 1, samples: [], ...sheet.plan, columns: confirmed.columns },
         settings: confirmed.settings,
         sourceChoice: confirmed.source,
         by: acting.person.id,

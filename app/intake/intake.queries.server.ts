@@ -50,6 +50,8 @@ export interface StoredPlan {
   columns: ColumnPlan;
   notices: readonly string[];
   headRow: number;
+  /** The first values of each column, for the page. */
+  samples: readonly (readonly string[])[];
 }
 
 /** A sheet without its bytes and rows. */

@@ -4,7 +4,8 @@ import type { Phase } from "#app/thermo/phase.ts";
 import { type Property, propertyInfo } from "#app/thermo/property.ts";
 import { referenceStateOf } from "#app/thermo/referenceStates.ts";
 import { formatKey } from "#app/thermo/speciesKey.ts";
-import { ANSWER, type CellProblem, type Repair, type RowReading, type SheetFrame } from "./readRows.ts";
+import { ANSWER } from "./meaning.ts";
+import { type CellProblem, type Repair, type RowReading, type SheetFrame } from "./readRows.ts";
 import { columnsOf } from "./plan.ts";
 
 /** A species a row could be: one that stands in the newest edition or is proposed in an open revision. */

@@ -119,6 +119,12 @@ export function hillsOf(sheet: DecodedSheet, plan: ColumnPlan): string[] {
   return [...hills];
 }
 
+/** The first values of each column, to be shown beside its head. */
+export function firstValues(sheet: DecodedSheet): string[][] {
+  const long = (cell: string): string => (cell.length > 24 ? `${cell.slice(0, 23)}…` : cell);
+  return sheet.heads.map((_, index) => sampleOf(sheet, index).slice(0, 3).map(long));
+}
+
 /** The columns with this meaning, by their index. */
 export function columnsOf(plan: ColumnPlan, means: ColumnMeans): number[] {
   return plan.flatMap((column, index) => (column.means === means ? [index] : []));

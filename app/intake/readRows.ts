@@ -40,9 +40,6 @@ export interface CellProblem {
   readonly amongRows?: readonly number[];
 }
 
-/** Stands in place of a column for the answer to "which species is this?"; kept as a repair like the cells' own. */
-export const ANSWER = 10_000;
-
 export interface ReadValue {
   readonly property: Property;
   /** In the unit of the property. */

@@ -17,6 +17,7 @@ import {
 } from "./intake.queries.server.ts";
 import {
   columnPlan,
+  firstValues,
   hillsOf,
   NO_CONTEXT,
   type PlanContext,
@@ -68,7 +69,12 @@ export async function receiveSheet(acting: Acting, upload: UploadedSheet): Promi
       {
         dialect: sheet.dialect,
         heads: sheet.heads,
-        plan: { columns: guess.plan, notices: guess.notices, headRow: sheet.headRow },
+        plan: {
+          columns: guess.plan,
+          notices: guess.notices,
+          headRow: sheet.headRow,
+          samples: firstValues(sheet),
+        },
         settings: guess.settings,
         rowsTotal: sheet.rows.length,
       },

@@ -11,7 +11,7 @@ import {
   type Sheet,
   updateRowsLeftOut,
 } from "./intake.queries.server.ts";
-import { ANSWER } from "./readRows.ts";
+import { ANSWER } from "./meaning.ts";
 import { repairsByRow, rereadRows } from "./rereadRows.server.ts";
 import { sheetStateWords } from "./states.ts";
 

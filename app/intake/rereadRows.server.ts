@@ -13,7 +13,8 @@ import {
   upsertRows,
 } from "./intake.queries.server.ts";
 import { matchSpecies, type RowToSettle, settleRows } from "./match.ts";
-import { ANSWER, readRows, type RowOutcome, type SheetFrame, type SheetRow } from "./readRows.ts";
+import { ANSWER } from "./meaning.ts";
+import { readRows, type RowOutcome, type SheetFrame, type SheetRow } from "./readRows.ts";
 
 /** The newest repair of each cell, by row and column. */
 export type RepairsByRow = ReadonlyMap<number, ReadonlyMap<number, string>>;

@@ -1,6 +1,8 @@
 import { sql } from "kysely";
 import type { Database } from "#app/db/database.server.ts";
-import type { SourceKind } from "#app/editions/editions.queries.server.ts";
+
+/** How it comes that a source gives a value. */
+export type SourceKind = "measurement" | "evaluation" | "calculation" | "estimate";
 
 /** A source that values may be put down to. */
 export interface ChoosableSource {

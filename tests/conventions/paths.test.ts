@@ -29,6 +29,7 @@ const samples: Record<keyof typeof paths, string> = {
   newSheet: paths.newSheet(),
   sheet: paths.sheet(21),
   sheetOriginal: paths.sheetOriginal(21),
+  sheetFindings: paths.sheetFindings(21),
   revisions: paths.revisions(),
   revision: paths.revision(14),
   publish: paths.publish(),

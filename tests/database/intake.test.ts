@@ -10,7 +10,7 @@ import {
   findSheet,
   findSheetBytes,
 } from "#app/intake/intake.queries.server.ts";
-import { ANSWER } from "#app/intake/readRows.ts";
+import { ANSWER } from "#app/intake/meaning.ts";
 import { readSheet } from "#app/intake/readSheet.server.ts";
 import { receiveSheet } from "#app/intake/receiveSheet.server.ts";
 import { leaveRowsOut, repairCell } from "#app/intake/repairCell.server.ts";

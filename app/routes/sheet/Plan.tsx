@@ -1,0 +1,354 @@
+import { useState } from "react";
+import { Form } from "react-router";
+import {
+  meaningValue,
+  meansField,
+  MEANING_OPTIONS,
+  NEW_SOURCE,
+  SETTING_OPTIONS,
+  SOURCE_FIELDS,
+  SOURCE_KIND_OPTIONS,
+  takesUnit,
+  UNIT_OPTIONS,
+  unitField,
+} from "#app/intake/planChoices.ts";
+import type { SheetPage } from "#app/intake/sheetPage.server.ts";
+import { meaningWords } from "#app/intake/meaning.ts";
+import { propertyInfo } from "#app/thermo/property.ts";
+import { Button, usePending } from "#app/ui/Button.tsx";
+import { DecisionBar } from "#app/ui/DecisionBar.tsx";
+import { Field, InlineSelect, Select, TextArea } from "#app/ui/Field.tsx";
+import { type FieldState, plainField } from "#app/ui/fieldState.ts";
+import { FormErrors } from "#app/ui/FormErrors.tsx";
+import { MarginHead, MarginMark } from "#app/ui/MarginMark.tsx";
+import { Prose } from "#app/ui/Prose.tsx";
+import { Columns, Fine, Section } from "#app/ui/Section.tsx";
+import { Symbol } from "#app/ui/Symbol.tsx";
+import { Table } from "#app/ui/Table.tsx";
+import { UnitText } from "#app/ui/UnitText.tsx";
+import type { SheetOutcome } from "./outcome.ts";
+
+type Column = SheetPage["columns"][number];
+
+/** What the columns hold, to be confirmed: one choice a column, what holds for the whole sheet, and the source. */
+export function PlanForm({ page, failed }: { page: SheetPage; failed: SheetOutcome | undefined }) {
+  const typed = failed?.typed;
+  const errorsAt = (pointer: string): string[] =>
+    (failed?.errors ?? []).filter((error) => error.pointer === pointer).map((error) => error.detail);
+  const columnErrors = page.columns.map((_, index) => errorsAt(`/columns/${index}`));
+  const settings = settingFields(page, typed, errorsAt);
+  const source = sourceFields(page, typed, errorsAt);
+  const pending = usePending("intent", "confirm");
+
+  return (
+    <Form method="post">
+      <FormErrors
+        errors={[...errorsAt("/columns"), ...(failed && failed.errors.length === 0 ? [failed.sentence] : [])]}
+        fields={[
+          ...page.columns.map(
+            (column, index) =>
+              [plainField(meansField(index), { errors: columnErrors[index] ?? [] }), column.name] as const,
+          ),
+          ...settings.map(({ field, label }) => [field, label] as const),
+          [source.choice, "Source"],
+          ...source.described.map(({ field, label }) => [field, label] as const),
+        ]}
+      />
+      <Table caption="What each column holds" marked even>
+        <thead>
+          <tr>
+            <MarginHead />
+            <th scope="col">Head in the sheet</th>
+            <th scope="col">First values</th>
+            <th scope="col">Means</th>
+            <th scope="col">In</th>
+            <th scope="col">Because</th>
+          </tr>
+        </thead>
+        <tbody>
+          {page.columns.map((column, index) => (
+            <PlanRow key={index} column={column} index={index} errors={columnErrors[index] ?? []} typed={typed} />
+          ))}
+        </tbody>
+      </Table>
+      {page.notices.map((notice) => (
+        <Fine key={notice}>
+          <Prose text={notice} />
+        </Fine>
+      ))}
+      <Columns>
+        <Section head="The whole sheet">
+          {settings.map(({ field, label, hint, options }) =>
+            options ? (
+              <Select key={field.name} field={field} label={label} options={options} hint={hint} />
+            ) : (
+              <Field key={field.name} field={field} label={label} hint={hint} />
+            ),
+          )}
+        </Section>
+        <Section head="Where the values come from">
+          <SourceFields {...source} />
+        </Section>
+      </Columns>
+      <DecisionBar label="Confirm" end="nothing enters the table before it was reviewed">
+        <Button kind="main" name="intent" value="confirm" pending={pending} pendingLabel="Confirming…">
+          Read the rows
+        </Button>
+      </DecisionBar>
+    </Form>
+  );
+}
+
+function PlanRow({
+  column,
+  index,
+  errors,
+  typed,
+}: {
+  column: Column;
+  index: number;
+  errors: readonly string[];
+  typed: SheetOutcome["typed"] | undefined;
+}) {
+  const [meaning, setMeaning] = useState(typed?.[meansField(index)] ?? meaningValue(column));
+  const wrong = errors.length > 0;
+  return (
+    <tr>
+      <MarginMark kind={wrong ? "block" : column.asks ? "look" : null} />
+      <th scope="row" className={column.head === "" ? "text-soft" : undefined}>
+        <Prose text={column.name} />
+      </th>
+      <td>
+        <Sample values={column.sample} />
+      </td>
+      <td>
+        <InlineSelect
+          id={meansField(index)}
+          name={meansField(index)}
+          label={`What ${column.name} holds`}
+          options={MEANING_OPTIONS}
+          defaultValue={meaning}
+          onChange={(event) => setMeaning(event.currentTarget.value)}
+          wrong={wrong}
+          aria-describedby={`because-${index}`}
+        />
+      </td>
+      <td>
+        {takesUnit(meaning) && (
+          <InlineSelect
+            name={unitField(index)}
+            label={`Unit of ${column.name}`}
+            options={UNIT_OPTIONS}
+            defaultValue={typed?.[unitField(index)] ?? column.unit ?? ""}
+            wrong={wrong}
+          />
+        )}
+      </td>
+      <td className="min-w-[16rem]" id={`because-${index}`}>
+        {wrong ? (
+          <span className="is-block">
+            <Prose text={errors.join(" ")} />
+          </span>
+        ) : (
+          <span className={column.asks ? "is-look" : "text-soft"}>
+            <Prose text={column.because} />
+          </span>
+        )}
+      </td>
+    </tr>
+  );
+}
+
+function Sample({ values }: { values: readonly string[] }) {
+  if (values.length === 0) return <span className="text-soft">empty</span>;
+  return values.map((value, index) => (
+    <span key={index}>
+      {index > 0 && " · "}
+      <Prose text={value} />
+    </span>
+  ));
+}
+
+interface LabelledField {
+  field: FieldState;
+  label: string;
+  hint?: string;
+  options?: readonly (readonly [string, string])[];
+}
+
+function settingFields(
+  page: SheetPage,
+  typed: SheetOutcome["typed"] | undefined,
+  errorsAt: (pointer: string) => string[],
+): LabelledField[] {
+  const { settings } = page;
+  const field = (name: keyof typeof settings, stored: string): FieldState =>
+    plainField(name, { initialValue: typed?.[name] ?? stored, errors: errorsAt(`/settings/${name}`) });
+  return [
+    {
+      field: field("temperature", settings.temperature ?? ""),
+      label: "Temperature of the values",
+      options: SETTING_OPTIONS.temperature,
+    },
+    {
+      field: field("standardPressure", settings.standardPressure ?? ""),
+      label: "Standard pressure",
+      options: SETTING_OPTIONS.standardPressure,
+      hint: "Tables from before 1982 mostly use 1 atm; those are not converted here yet.",
+    },
+    {
+      field: field("uncertaintyKind", settings.uncertaintyKind ?? ""),
+      label: "Kind of the uncertainties",
+      options: SETTING_OPTIONS.uncertaintyKind,
+      hint: "Of the uncertainty columns and of what stands behind ±. Brackets are always standard.",
+    },
+    {
+      field: field("basis", settings.basis ?? ""),
+      label: "Standard state of solutes",
+      options: SETTING_OPTIONS.basis,
+    },
+    {
+      field: field("decimalComma", settings.decimalComma ? "on" : ""),
+      label: "Decimal sign",
+      options: SETTING_OPTIONS.decimalComma,
+    },
+    {
+      field: field("solidIs", settings.solidIs),
+      label: "What s means as a phase",
+      options: SETTING_OPTIONS.solidIs,
+    },
+    {
+      field: field("method", settings.method ?? ""),
+      label: "How they were obtained (may stay empty)",
+      hint: "Such as flow calorimetry, or third-law integration.",
+    },
+  ];
+}
+
+interface SourceState {
+  choice: FieldState;
+  options: readonly (readonly [string, string])[];
+  described: LabelledField[];
+}
+
+const SOURCE_LABELS: Record<(typeof SOURCE_FIELDS)[number], { label: string; hint?: string }> = {
+  title: { label: "Title" },
+  authors: { label: "Authors (may stay empty)", hint: "One a line, family name first: Cox, J. D." },
+  year: { label: "Year (may stay empty)" },
+  container: { label: "Journal or series (may stay empty)" },
+  publisher: { label: "Publisher or laboratory (may stay empty)" },
+  doi: { label: "DOI (may stay empty)" },
+  sourceKind: { label: "How the values came about" },
+  note: { label: "Remark on the source (may stay empty)", hint: "Such as that numbers are provisional or invented." },
+};
+
+function sourceFields(
+  page: SheetPage,
+  typed: SheetOutcome["typed"] | undefined,
+  errorsAt: (pointer: string) => string[],
+): SourceState {
+  const { chosenSource } = page;
+  const before = chosenSource?.kind === "new" ? chosenSource.source : null;
+  const chosen = chosenSource?.kind === "known" ? chosenSource.sourceId : chosenSource ? NEW_SOURCE : "";
+  return {
+    choice: plainField("source", { initialValue: typed?.["source"] ?? chosen, errors: errorsAt("/source") }),
+    options: [
+      ["", "say where the values come from"],
+      [NEW_SOURCE, "a new source, described here"],
+      ...page.sources.map(
+        ({ id, name, proposed }) =>
+          [id, proposed === null ? name : `${name} (proposed in revision ${proposed})`] as const,
+      ),
+    ],
+    described: SOURCE_FIELDS.map((name) => ({
+      field: plainField(`source.${name}`, {
+        initialValue: typed?.[`source.${name}`] ?? before?.[name] ?? "",
+        errors: errorsAt(`/source/${name}`),
+      }),
+      ...SOURCE_LABELS[name],
+      ...(name === "sourceKind" ? { options: SOURCE_KIND_OPTIONS } : {}),
+    })),
+  };
+}
+
+/** The choice of a source. Its description is open from the start, so that it can be filled in without scripts. */
+function SourceFields({ choice, options, described }: SourceState) {
+  const [chosen, setChosen] = useState(typeof choice.initialValue === "string" ? choice.initialValue : "");
+  return (
+    <>
+      <Select
+        field={choice}
+        label="Source"
+        options={options}
+        onChange={(event) => setChosen(event.currentTarget.value)}
+      />
+      {(chosen === NEW_SOURCE || chosen === "") && (
+        <fieldset className="mt-4">
+          <legend className="field-label">A new source</legend>
+          {described.map(({ field, label, hint, options: choices }) => {
+            if (choices) return <Select key={field.name} field={field} label={label} options={choices} />;
+            if (field.name === "source.authors")
+              return <TextArea key={field.name} field={field} label={label} hint={hint} rows={3} />;
+            return <Field key={field.name} field={field} label={label} hint={hint} />;
+          })}
+        </fieldset>
+      )}
+    </>
+  );
+}
+
+/** The plan as it was confirmed, or as it was guessed to somebody who may only look. */
+export function PlanShown({ page }: { page: SheetPage }) {
+  const { sheet, settings } = page;
+  return (
+    <details className="disclosure" open={sheet.state === "planned"}>
+      <summary>
+        {page.columns.filter((column) => column.means !== "ignore").length} of {page.columns.length} columns are read
+        {page.sourceName && `, as values of ${page.sourceName}`}
+      </summary>
+      <Table caption="What each column holds" even className="mt-3">
+        <thead>
+          <tr>
+            <th scope="col">Head in the sheet</th>
+            <th scope="col">First values</th>
+            <th scope="col">Means</th>
+            <th scope="col">In</th>
+            <th scope="col">Because</th>
+          </tr>
+        </thead>
+        <tbody>
+          {page.columns.map((column, index) => (
+            <tr key={index}>
+              <th scope="row">
+                <Prose text={column.name} />
+              </th>
+              <td>
+                <Sample values={column.sample} />
+              </td>
+              <td>
+                <Meaning column={column} />
+              </td>
+              <td>{column.unit && <UnitText unit={column.unit} />}</td>
+              <td className="text-soft">
+                <Prose text={column.because} />
+              </td>
+            </tr>
+          ))}
+        </tbody>
+      </Table>
+      <Fine>
+        {settings.temperature ? `${settings.temperature} K` : "temperature not said"},{" "}
+        {settings.standardPressure === "100000" ? "100 kPa" : "pressure not said"}
+        {settings.uncertaintyKind &&
+          `, uncertainties ${settings.uncertaintyKind === "expanded" ? "expanded with k = 2" : settings.uncertaintyKind === "standard" ? "standard" : "of a kind not said"}`}
+        {sheet.confirmedBy && `, confirmed by ${sheet.confirmedBy}`}.
+      </Fine>
+    </details>
+  );
+}
+
+function Meaning({ column }: { column: Column }) {
+  if (column.property === null) return meaningWords[column.means];
+  const symbol = <Symbol of={propertyInfo[column.property].symbol} />;
+  return column.means === "uncertainty" ? <>uncertainty of {symbol}</> : symbol;
+}

@@ -1,0 +1,346 @@
+import { Form, Link, useFetcher } from "react-router";
+import type { SheetPage } from "#app/intake/sheetPage.server.ts";
+import type { ReadRowLine, RefusedRow } from "#app/intake/sheetPage.ts";
+import { ANSWER } from "#app/intake/meaning.ts";
+import type { Repair } from "#app/intake/readRows.ts";
+import { paths } from "#app/paths.ts";
+import { isProperty, propertyInfo } from "#app/thermo/property.ts";
+import { Button, usePending } from "#app/ui/Button.tsx";
+import { DecisionBar } from "#app/ui/DecisionBar.tsx";
+import { Field, InlineField, TextArea } from "#app/ui/Field.tsx";
+import { plainField } from "#app/ui/fieldState.ts";
+import { count } from "#app/ui/figure.ts";
+import { Formula } from "#app/ui/Formula.tsx";
+import { FormErrors } from "#app/ui/FormErrors.tsx";
+import { MarginHead, MarginMark } from "#app/ui/MarginMark.tsx";
+import { Prose } from "#app/ui/Prose.tsx";
+import { Fine, Section } from "#app/ui/Section.tsx";
+import { SpeciesName } from "#app/ui/SpeciesName.tsx";
+import { Symbol } from "#app/ui/Symbol.tsx";
+import { Table } from "#app/ui/Table.tsx";
+import type { RepairOutcome, SheetOutcome } from "./outcome.ts";
+
+type PageRows = NonNullable<SheetPage["rows"]>;
+
+/** What became of the rows: counts, the refused ones with the cell that is wrong, what was read, and the way on. */
+export function Rows({ page, rows, failed }: { page: SheetPage; rows: PageRows; failed: SheetOutcome | undefined }) {
+  const { counts } = rows;
+  const open = page.sheet.state === "read" && page.mayWork;
+  return (
+    <>
+      <Section head="Rows" id="rows">
+        <p role="status">
+          {count(counts.read)} of {count(page.sheet.rowsTotal)} read to {count(counts.values)} values of{" "}
+          {count(rows.species.known + rows.species.new)} species, {count(rows.species.new)} of them new ·{" "}
+          {count(counts.refused)} refused
+          {counts.leftOut > 0 && ` · ${count(counts.leftOut)} left out`}
+          {counts.skipped > 0 && ` · ${count(counts.skipped)} skipped`}
+        </p>
+        <Asides rows={rows} page={page} />
+        {rows.refused.length > 0 && <RefusedTable page={page} rows={rows} open={open} />}
+      </Section>
+      {rows.read.length > 0 && <ReadTable rows={rows} />}
+      {open && <Build page={page} rows={rows} failed={failed} />}
+    </>
+  );
+}
+
+/** Why rows were skipped and what was taken for granted, for whoever wants to know. */
+function Asides({ rows, page }: { rows: PageRows; page: SheetPage }) {
+  return (
+    <div className="flex flex-wrap gap-x-6 gap-y-1 my-2">
+      {rows.skipped.length > 0 && (
+        <details className="disclosure">
+          <summary>why rows were skipped</summary>
+          <ul className="list-disc pl-5 my-2">
+            {rows.skipped.map(({ reason, n, first }) => (
+              <li key={reason}>
+                {reason}: {n === 1 ? `row ${first}` : `${count(n)} rows, the first is row ${first}`}
+              </li>
+            ))}
+          </ul>
+        </details>
+      )}
+      {rows.notes.length > 0 && (
+        <details className="disclosure">
+          <summary>what was taken for granted</summary>
+          <ul className="list-disc pl-5 my-2 max-w-[74ch]">
+            {rows.notes.map(({ note, rows: numbers }) => (
+              <li key={note}>
+                {numbers.length === 1 ? "Row" : "Rows"} {numbers.slice(0, 8).join(", ")}
+                {numbers.length > 8 && ` and ${count(numbers.length - 8)} more`}: <Prose text={note} />
+              </li>
+            ))}
+          </ul>
+        </details>
+      )}
+      {rows.refused.length > 0 && (
+        <Link to={paths.sheetFindings(page.sheet.id)} reloadDocument download>
+          refused rows as a file
+        </Link>
+      )}
+    </div>
+  );
+}
+
+function RefusedTable({ page, rows, open }: { page: SheetPage; rows: PageRows; open: boolean }) {
+  const shown = page.columns.flatMap((column, index) => (column.means === "ignore" ? [] : [{ ...column, index }]));
+  return (
+    <>
+      <Table caption="Refused rows" marked>
+        <thead>
+          <tr>
+            <MarginHead />
+            <th scope="col" className="figure">
+              Row
+            </th>
+            {shown.map((column) => (
+              <th key={column.index} scope="col" className={isFigure(column.means) ? "figure" : undefined}>
+                <Prose text={column.name} />
+              </th>
+            ))}
+            <th scope="col">What is wrong</th>
+          </tr>
+        </thead>
+        <tbody>
+          {rows.refused.map((row) => (
+            <Refused key={row.number} row={row} shown={shown} page={page} open={open} />
+          ))}
+        </tbody>
+      </Table>
+      {(rows.after !== null || rows.next !== null) && (
+        <Fine>
+          {rows.after !== null && <Link to={`${paths.sheet(page.sheet.id)}#rows`}>from the first refused row</Link>}
+          {rows.after !== null && rows.next !== null && " · "}
+          {rows.next !== null && (
+            <Link to={`${paths.sheet(page.sheet.id)}?after=${rows.next}#rows`}>further refused rows</Link>
+          )}
+        </Fine>
+      )}
+    </>
+  );
+}
+
+type ShownColumn = SheetPage["columns"][number] & { index: number };
+
+const isFigure = (means: ShownColumn["means"]): boolean =>
+  ["value", "uncertainty", "anyValue", "anyUncertainty", "molarMass"].includes(means);
+
+function Refused({
+  row,
+  shown,
+  page,
+  open,
+}: {
+  row: RefusedRow;
+  shown: readonly ShownColumn[];
+  page: SheetPage;
+  open: boolean;
+}) {
+  return (
+    <tr id={`row-${row.number}`} className={row.leftOut ? "text-soft" : undefined}>
+      <MarginMark kind={row.leftOut ? "remark" : "block"} word={row.leftOut ? "left out" : undefined} />
+      <th scope="row" className="figure">
+        {row.number}
+      </th>
+      {shown.map((column) => {
+        const cell = row.cells.find((one) => one.column === column.index);
+        const text = cell?.text ?? "";
+        return (
+          <td key={column.index} className={isFigure(column.means) ? "figure" : undefined}>
+            {open && cell?.wrong ? (
+              <CellForm page={page} row={row.number} column={column} text={text} />
+            ) : column.means === "formula" ? (
+              <Formula printed={text} />
+            ) : (
+              <Prose text={text} />
+            )}
+            {cell?.original !== null && cell?.original !== undefined && (
+              <span className="block fine">
+                was <Prose text={cell.original === "" ? "empty" : cell.original} />
+              </span>
+            )}
+          </td>
+        );
+      })}
+      <td className="min-w-[18rem]">
+        {row.problems.map((problem, index) => (
+          <div key={index}>
+            <Prose text={problem.sentence} />{" "}
+            {open &&
+              problem.repairs.map((repair) => (
+                <RepairButton
+                  key={`${repair.column} ${repair.text}`}
+                  page={page}
+                  row={row}
+                  repair={repair}
+                  isFormula={shown.some((one) => one.index === repair.column && one.means === "formula")}
+                />
+              ))}
+          </div>
+        ))}
+        {open && !row.leftOut && (
+          <Form method="post" className="inline">
+            <input type="hidden" name="row" value={row.number} />
+            <Button kind="text" name="intent" value="leave-out" aria-label={`Leave row ${row.number} out`}>
+              Leave the row out
+            </Button>
+          </Form>
+        )}
+      </td>
+    </tr>
+  );
+}
+
+/** The wrong cell itself, to be written over: Enter mends it. */
+function CellForm({ page, row, column, text }: { page: SheetPage; row: number; column: ShownColumn; text: string }) {
+  const fetcher = useFetcher<RepairOutcome>();
+  const problem = fetcher.data && !fetcher.data.ok ? fetcher.data.sentence : null;
+  return (
+    <fetcher.Form method="post" action={paths.resource(`sheets/${page.sheet.id}/repair`)} className="whitespace-nowrap">
+      <input type="hidden" name="row" value={row} />
+      <input type="hidden" name="column" value={column.index} />
+      <input type="hidden" name="was" value={text} />
+      <InlineField
+        key={text}
+        name="becomes"
+        label={`Row ${row}, ${column.name}`}
+        defaultValue={text}
+        figure={isFigure(column.means)}
+        autoComplete="off"
+        wrong
+      />
+      <Button kind="text" pending={fetcher.state !== "idle"} aria-label={`Mend row ${row}, ${column.name}`}>
+        mend
+      </Button>
+      {problem && (
+        <span className="block whitespace-normal is-block" role="alert">
+          {problem}
+        </span>
+      )}
+    </fetcher.Form>
+  );
+}
+
+/** A repair that is one press away. */
+function RepairButton({
+  page,
+  row,
+  repair,
+  isFormula,
+}: {
+  page: SheetPage;
+  row: RefusedRow;
+  repair: Repair;
+  isFormula: boolean;
+}) {
+  const fetcher = useFetcher<RepairOutcome>();
+  const was = repair.column === ANSWER ? (row.answer ?? "") : (row.cells[repair.column]?.text ?? "");
+  return (
+    <fetcher.Form method="post" action={paths.resource(`sheets/${page.sheet.id}/repair`)} className="inline mr-3">
+      <input type="hidden" name="row" value={row.number} />
+      <input type="hidden" name="column" value={repair.column} />
+      <input type="hidden" name="was" value={was} />
+      <input type="hidden" name="becomes" value={repair.text} />
+      <Button kind="text" pending={fetcher.state !== "idle"}>
+        {isFormula ? (
+          <>
+            Take <Formula printed={repair.text} />
+          </>
+        ) : (
+          <Prose text={repair.label} />
+        )}
+      </Button>
+    </fetcher.Form>
+  );
+}
+
+function ReadTable({ rows }: { rows: PageRows }) {
+  const more = rows.counts.read - rows.read.length;
+  return (
+    <Section head="What was read">
+      <Table caption="The first rows that were read" className="max-w-[60rem]">
+        <thead>
+          <tr>
+            <th scope="col" className="figure">
+              Row
+            </th>
+            <th scope="col">Species</th>
+            <th scope="col">In the table</th>
+            <th scope="col">Values, in the table’s units</th>
+          </tr>
+        </thead>
+        <tbody>
+          {rows.read.map((row) => (
+            <tr key={row.number}>
+              <td className="figure">{row.number}</td>
+              <th scope="row">
+                <SpeciesName speciesKey={row.key} />
+              </th>
+              <td className="text-soft">{row.isNew ? "new" : "known"}</td>
+              <td>
+                {row.values.map((value, index) => (
+                  <ShownValue key={value.property} value={value} first={index === 0} />
+                ))}
+              </td>
+            </tr>
+          ))}
+        </tbody>
+      </Table>
+      {more > 0 && <Fine>and {count(more)} more rows.</Fine>}
+    </Section>
+  );
+}
+
+function ShownValue({ value, first }: { value: ReadRowLine["values"][number]; first: boolean }) {
+  if (!isProperty(value.property)) return null;
+  return (
+    <span className="whitespace-nowrap">
+      {!first && <span className="mr-2">,</span>}
+      <Symbol of={propertyInfo[value.property].symbol} /> {value.digits.replace("-", "−")}
+    </span>
+  );
+}
+
+/** The revision that comes of it: a title, and the act at the foot of the window. */
+function Build({ page, rows, failed }: { page: SheetPage; rows: PageRows; failed: SheetOutcome | undefined }) {
+  const { counts } = rows;
+  const building = usePending("intent", "build");
+  const leaving = usePending("intent", "leave-all-out");
+  const title = plainField("title", {
+    initialValue: failed?.typed["title"] ?? page.sheet.name.replace(/\.\w{1,4}$/, ""),
+    errors: (failed?.errors ?? []).map((error) => error.detail),
+    maxLength: 200,
+  });
+  const summary = plainField("summary", { initialValue: failed?.typed["summary"] ?? "", maxLength: 5000 });
+  const settled = counts.refused === 0;
+  return (
+    <>
+      <Section head="The revision">
+        {failed && (
+          <FormErrors errors={failed.errors.length > 0 ? [] : [failed.sentence]} fields={[[title, "Title"]]} />
+        )}
+        <Form method="post" id="build" className="max-w-[40rem]">
+          <Field field={title} label="Title" />
+          <TextArea field={summary} label="What it is about (may stay empty)" rows={2} />
+        </Form>
+      </Section>
+      <DecisionBar label="Build" end="repairs are kept beside the original, with your name">
+        {settled && counts.read > 0 && (
+          <Button kind="main" form="build" name="intent" value="build" pending={building} pendingLabel="Building…">
+            Build the revision from {count(counts.read)} {counts.read === 1 ? "row" : "rows"}
+          </Button>
+        )}
+        {!settled && (
+          <Form method="post">
+            <Button name="intent" value="leave-all-out" pending={leaving}>
+              Leave the {count(counts.refused)} refused {counts.refused === 1 ? "row" : "rows"} out
+            </Button>
+          </Form>
+        )}
+        {!settled && <span>then the revision is built from {count(counts.read)} rows</span>}
+        {settled && counts.read === 0 && <span>No row was read, so there is nothing to build.</span>}
+      </DecisionBar>
+    </>
+  );
+}
