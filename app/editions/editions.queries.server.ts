@@ -378,3 +378,6 @@ function sourcesAsOf(n: number, db: Database) {
 
 /** A source as it is cited in an edition. */
 export type SourceAsOf = Awaited<ReturnType<typeof findSourceDetailsAsOf>>[number];
+
+/** Citations by source id, as of one edition. */
+export type Sources = ReadonlyMap<string, SourceAsOf>;

@@ -1,7 +1,6 @@
 import { database } from "#app/db/database.server.ts";
 import type { Property } from "#app/thermo/property.ts";
 import { compareBytes } from "./digest.ts";
-import type { Sources } from "./apiShape.ts";
 import { pairRecords, pairValues, type RecordChange, turnRound, type ValueChange } from "./compare.ts";
 import {
   type DetailAsOf,
@@ -15,6 +14,7 @@ import {
   findValuesThatCame,
   findValuesThatWent,
   type SourceAsOf,
+  type Sources,
   type ValueAsOf,
 } from "./editions.queries.server.ts";
 import { detailFields, sourceFields } from "./recordFields.ts";

@@ -1,9 +1,15 @@
 import { createHash } from "node:crypto";
 import { database } from "#app/db/database.server.ts";
-import { type BodyDigest, bodyDigest, type Keeping, keptAnswer } from "#app/http/caching.server.ts";
 import { type Edition, findDetailsAsOf, findValuesBehind } from "./editions.queries.server.ts";
 import { findSources } from "./read.server.ts";
-import { fileHead, fileLine, fileName } from "./tableFile.ts";
+import { fileHead, fileLine } from "./tableFile.ts";
+
+/** What is known of a file before its bytes are sent. */
+export interface FileDigest {
+  sha256: Buffer;
+  /** In bytes. */
+  length: number;
+}
 
 /** Values read at a time. */
 const PORTION = 2_000;
@@ -28,11 +34,11 @@ async function* portions(n: number): AsyncGenerator<Buffer> {
 }
 
 // What was hashed once need not be hashed again: an edition's file is bound to its digest. A cache of a few bytes each.
-const known = new Map<string, BodyDigest>();
+const known = new Map<string, FileDigest>();
 const MOST_KNOWN = 1_000;
 
 /** SHA-256 and length of an edition's CSV. */
-async function tableFileDigest(edition: Edition): Promise<BodyDigest> {
+export async function digestTableFile(edition: Edition): Promise<FileDigest> {
   const name = edition.digest.toString("hex");
   const found = known.get(name);
   if (found) return found;
@@ -42,14 +48,14 @@ async function tableFileDigest(edition: Edition): Promise<BodyDigest> {
     hash.update(portion);
     length += portion.length;
   }
-  const digest = bodyDigest(hash.digest(), length);
+  const digest = { sha256: hash.digest(), length };
   if (known.size >= MOST_KNOWN) known.clear();
   known.set(name, digest);
   return digest;
 }
 
 /** The edition's CSV as a stream of bytes. */
-function tableFileStream(edition: Edition): ReadableStream<Uint8Array> {
+export function streamTableFile(edition: Edition): ReadableStream<Uint8Array> {
   const source = portions(edition.number);
   return new ReadableStream<Uint8Array>({
     async pull(controller) {
@@ -61,19 +67,4 @@ function tableFileStream(edition: Edition): ReadableStream<Uint8Array> {
       await source.return(undefined);
     },
   });
-}
-
-/** The answer that downloads an edition's CSV, for programs and for people alike. */
-export async function tableFileAnswer(
-  request: Request,
-  edition: Edition,
-  keeping: Keeping,
-  headers: Readonly<Record<string, string>>,
-): Promise<Response> {
-  const head = {
-    contentType: "text/csv; charset=utf-8; header=present",
-    keeping,
-    headers: { "Content-Disposition": `attachment; filename="${fileName(edition.number)}"`, ...headers },
-  };
-  return keptAnswer(request, head, await tableFileDigest(edition), () => tableFileStream(edition));
 }

@@ -1,7 +1,6 @@
 import { fullCitation } from "#app/sources/citation.ts";
 import { propertyInfo } from "#app/thermo/property.ts";
-import type { Sources } from "./apiShape.ts";
-import type { DetailAsOf, ValueAsOf } from "./editions.queries.server.ts";
+import type { DetailAsOf, Sources, ValueAsOf } from "./editions.queries.server.ts";
 
 /** A line of the file before it is written: a value with its species and what they are read from. */
 export interface FileRow {

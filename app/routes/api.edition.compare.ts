@@ -1,7 +1,7 @@
-import { nextLink, placeOf } from "#app/editions/apiAnswer.server.ts";
-import { apiPaths, apiValueChange, writeCursor } from "#app/editions/apiShape.ts";
+import { nextLink, placeOf } from "./api/answer.server.ts";
+import { apiPaths, apiValueChange, writeCursor } from "./api/shape.ts";
 import { countChanges, pageOfChanges } from "#app/editions/compare.ts";
-import { compareEditions } from "#app/editions/contract.ts";
+import { compareEditions } from "./api/contract.ts";
 import { compareEditionsNet } from "#app/editions/read.server.ts";
 import { resolveEdition } from "#app/editions/resolve.server.ts";
 import { answering, apiRoute } from "#app/http/api.server.ts";

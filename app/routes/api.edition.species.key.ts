@@ -1,6 +1,6 @@
-import { keepingOf } from "#app/editions/apiAnswer.server.ts";
-import { apiPaths, apiSpecies } from "#app/editions/apiShape.ts";
-import { readSpecies } from "#app/editions/contract.ts";
+import { keepingOf } from "./api/answer.server.ts";
+import { apiPaths, apiSpecies } from "./api/shape.ts";
+import { readSpecies } from "./api/contract.ts";
 import { findSpeciesWithValues } from "#app/editions/read.server.ts";
 import { resolveEdition, resolveSpecies } from "#app/editions/resolve.server.ts";
 import { answering, apiRoute, movedTo } from "#app/http/api.server.ts";

@@ -1,6 +1,6 @@
-import { alone, keepingOf, nextLink, placeOf, searchOf } from "#app/editions/apiAnswer.server.ts";
-import { apiPaths, apiSpecies, writeCursor } from "#app/editions/apiShape.ts";
-import { listSpecies } from "#app/editions/contract.ts";
+import { alone, keepingOf, nextLink, placeOf, searchOf } from "./api/answer.server.ts";
+import { apiPaths, apiSpecies, writeCursor } from "./api/shape.ts";
+import { listSpecies } from "./api/contract.ts";
 import { browseSpecies } from "#app/editions/browse.server.ts";
 import { findSpeciesWithValues } from "#app/editions/read.server.ts";
 import { resolveEdition, resolveSpecies } from "#app/editions/resolve.server.ts";

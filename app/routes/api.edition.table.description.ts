@@ -1,6 +1,6 @@
-import { keepingOf } from "#app/editions/apiAnswer.server.ts";
-import { apiPaths } from "#app/editions/apiShape.ts";
-import { describeTable } from "#app/editions/contract.ts";
+import { keepingOf } from "./api/answer.server.ts";
+import { apiPaths } from "./api/shape.ts";
+import { describeTable } from "./api/contract.ts";
 import { resolveEdition } from "#app/editions/resolve.server.ts";
 import { fileDescription } from "#app/editions/tableFile.ts";
 import { answering, apiRoute } from "#app/http/api.server.ts";

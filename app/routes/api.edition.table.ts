@@ -1,8 +1,7 @@
-import { keepingOf } from "#app/editions/apiAnswer.server.ts";
-import { apiPaths } from "#app/editions/apiShape.ts";
-import { downloadTable } from "#app/editions/contract.ts";
+import { keepingOf, tableFileAnswer } from "./api/answer.server.ts";
+import { apiPaths } from "./api/shape.ts";
+import { downloadTable } from "./api/contract.ts";
 import { resolveEdition } from "#app/editions/resolve.server.ts";
-import { tableFileAnswer } from "#app/editions/tableFile.server.ts";
 import { answering, apiRoute } from "#app/http/api.server.ts";
 import { requireKey } from "#app/people/apiKey.server.ts";
 

@@ -1,5 +1,5 @@
-import { apiEdition, apiPaths } from "#app/editions/apiShape.ts";
-import { readEdition } from "#app/editions/contract.ts";
+import { apiEdition, apiPaths } from "./api/shape.ts";
+import { readEdition } from "./api/contract.ts";
 import { findCurrentEdition } from "#app/editions/editions.server.ts";
 import { resolveEdition } from "#app/editions/resolve.server.ts";
 import { answering, apiRoute } from "#app/http/api.server.ts";

@@ -1,6 +1,6 @@
-import { keepingOf, searchOf } from "#app/editions/apiAnswer.server.ts";
-import { apiPaths, apiValue } from "#app/editions/apiShape.ts";
-import { listValues } from "#app/editions/contract.ts";
+import { keepingOf, searchOf } from "./api/answer.server.ts";
+import { apiPaths, apiValue } from "./api/shape.ts";
+import { listValues } from "./api/contract.ts";
 import { findValuesWithSources } from "#app/editions/read.server.ts";
 import { resolveEdition, resolveMany } from "#app/editions/resolve.server.ts";
 import { answering, apiRoute } from "#app/http/api.server.ts";

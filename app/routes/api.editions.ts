@@ -1,5 +1,5 @@
-import { apiEdition } from "#app/editions/apiShape.ts";
-import { listEditions } from "#app/editions/contract.ts";
+import { apiEdition } from "./api/shape.ts";
+import { listEditions } from "./api/contract.ts";
 import { findAllEditions } from "#app/editions/editions.server.ts";
 import { answering, apiRoute } from "#app/http/api.server.ts";
 import { jsonAnswer } from "#app/http/caching.server.ts";

@@ -173,7 +173,7 @@ export async function publishEditionOf(rows: EditionRows, db: Database): Promise
   }
 
   const accepted = await acceptedRevision(lines, steward, reviewer, db);
-  const sealed = (await db.isTransaction)
+  const sealed = db.isTransaction
     ? await publish(accepted.lines, rows, previous, reviewer, db)
     : await db.transaction().execute((trx) => publish(accepted.lines, rows, previous, reviewer, trx));
   return { ...sealed, revisionId: accepted.revisionId, speciesIds: ids, steward, reviewer };

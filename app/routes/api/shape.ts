@@ -1,15 +1,12 @@
+import type { ValueChange } from "#app/editions/compare.ts";
+import type { DetailAsOf, Edition, Sources, ValueAsOf } from "#app/editions/editions.queries.server.ts";
 import { API_BASE } from "#app/http/apiContract.ts";
 import { paths } from "#app/paths.ts";
 import { fullCitation } from "#app/sources/citation.ts";
 import { toNumber } from "#app/thermo/digits.ts";
 import { readNumber } from "#app/thermo/number.ts";
 import { propertyInfo } from "#app/thermo/property.ts";
-import type { ValueChange } from "./compare.ts";
 import type { ApiEdition, ApiSpecies, ApiValue, ApiValueChange } from "./contract.ts";
-import type { DetailAsOf, Edition, SourceAsOf, ValueAsOf } from "./editions.queries.server.ts";
-
-/** Citations by source id, as of the edition that is answered. */
-export type Sources = ReadonlyMap<string, SourceAsOf>;
 
 /** An address inside an edition, as a path. Keys are encoded so that a slash in one does not end the segment. */
 export const apiPaths = {

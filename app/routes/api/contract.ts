@@ -4,7 +4,7 @@ import { elementOf } from "#app/thermo/elements.ts";
 import { PHASES, type Phase } from "#app/thermo/phase.ts";
 import { isProperty, PROPERTIES, type Property } from "#app/thermo/property.ts";
 import { readCas } from "#app/thermo/cas.ts";
-import { splitKeys } from "./search.ts";
+import { splitKeys } from "#app/editions/search.ts";
 
 /*
  * The reading half of the API, version 1, as zod schemas. Requests are read by them, answers are typed by them, and the

@@ -1,6 +1,6 @@
 import { z } from "zod";
 import { createDocument, type ZodOpenApiPathsObject, type ZodOpenApiResponsesObject } from "zod-openapi";
-import { readingOperations } from "#app/editions/contract.ts";
+import { readingOperations } from "./contract.ts";
 import { API_BASE, type ApiOperation } from "#app/http/apiContract.ts";
 import { PROBLEM_TYPE } from "#app/http/problem.ts";
 

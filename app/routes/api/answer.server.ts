@@ -1,7 +1,10 @@
+import type { Edition } from "#app/editions/editions.queries.server.ts";
+import type { ResolvedEdition } from "#app/editions/resolve.server.ts";
+import { fileName } from "#app/editions/tableFile.ts";
+import { digestTableFile, streamTableFile } from "#app/editions/tableFile.server.ts";
+import { bodyDigest, type Keeping, keptAnswer } from "#app/http/caching.server.ts";
 import { BadRequest, Invalid } from "#app/http/errors.ts";
-import type { Keeping } from "#app/http/caching.server.ts";
-import { readCursor } from "./apiShape.ts";
-import type { ResolvedEdition } from "./resolve.server.ts";
+import { readCursor } from "./shape.ts";
 
 /**
  * How an answer about an edition is kept: for good under its number; for moments under "current", with the numbered
@@ -45,4 +48,20 @@ export function placeOf(cursor: string | undefined, parts: number): string[] | n
 export function alone(name: string, given: Readonly<Record<string, unknown>>, others: readonly string[]): void {
   const clash = others.find((other) => given[other] !== undefined);
   if (clash) throw new BadRequest(`The parameter "${name}" names one species by itself; leave "${clash}" out.`);
+}
+
+/** The answer that downloads an edition's CSV, for programs and for people alike. */
+export async function tableFileAnswer(
+  request: Request,
+  edition: Edition,
+  keeping: Keeping,
+  headers: Readonly<Record<string, string>>,
+): Promise<Response> {
+  const { sha256, length } = await digestTableFile(edition);
+  const head = {
+    contentType: "text/csv; charset=utf-8; header=present",
+    keeping,
+    headers: { "Content-Disposition": `attachment; filename="${fileName(edition.number)}"`, ...headers },
+  };
+  return keptAnswer(request, head, bodyDigest(sha256, length), () => streamTableFile(edition));
 }
