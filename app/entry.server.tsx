@@ -2,7 +2,13 @@ import { PassThrough } from "node:stream";
 import { createReadableStreamFromReadable } from "@react-router/node";
 import { isbot } from "isbot";
 import { renderToPipeableStream } from "react-dom/server";
-import { type EntryContext, type HandleErrorFunction, type RouterContextProvider, ServerRouter } from "react-router";
+import {
+  type EntryContext,
+  type HandleErrorFunction,
+  isRouteErrorResponse,
+  type RouterContextProvider,
+  ServerRouter,
+} from "react-router";
 import { NonceContext } from "#app/http/nonce.ts";
 import { requestContext } from "#app/http/requestContext.server.ts";
 import { log } from "#app/log.server.ts";
@@ -65,7 +71,11 @@ function logUnexpected(error: unknown, request: Request, context: RouterContextP
   );
 }
 
-/** Called by the framework for every error that no route answered. A request that was given up is not an error. */
+/**
+ * Called by the framework for every error that no route answered. A request that was given up is no error of ours, nor is
+ * one that the framework itself refused (a form sent to a page that takes none).
+ */
 export const handleError: HandleErrorFunction = (error, { request, context }) => {
+  if (isRouteErrorResponse(error) && error.status < 500) return;
   if (!request.signal.aborted) logUnexpected(error, request, context as RouterContextProvider);
 };
