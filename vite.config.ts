@@ -17,6 +17,8 @@ function serverPrograms(): Record<string, string> {
 
 export default defineConfig(({ isSsrBuild }) => ({
   plugins: [tailwindcss(), reactRouter()],
+  // Named, so that the first page under `npm run dev` does not find them late and reload.
+  optimizeDeps: { include: ["@conform-to/react", "@conform-to/zod/v4", "@tanstack/react-table", "zod"] },
   build: {
     target: isSsrBuild ? "node20" : "baseline-widely-available",
     chunkSizeWarningLimit: 1_000,

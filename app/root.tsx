@@ -67,7 +67,8 @@ export function Layout({ children }: { children: React.ReactNode }) {
         <meta name="viewport" content="width=device-width, initial-scale=1" />
         <meta name="color-scheme" content="light dark" />
         <Meta />
-        <Links nonce={nonce} />
+        {/* Files of our own need no nonce; an empty one keeps the framework from adding it, which hydration would miss. */}
+        <Links nonce="" />
       </head>
       <body>
         {children}

@@ -81,7 +81,8 @@ function runningPort(folder) {
   return existsSync(name) && readFileSync(name, "utf8").trim() === "postgres" && port ? port : undefined;
 }
 
-async function freePort(wanted = 0) {
+/** A port of loopback that is free just now: the wanted one if it is. */
+export async function freePort(wanted = 0) {
   return new Promise((resolve) => {
     const server = createServer();
     server.once("error", () => resolve(wanted === 0 ? undefined : freePort(0)));

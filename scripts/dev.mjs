@@ -1,6 +1,7 @@
 // npm run dev: the demo from its sources, reloaded as they change; the worker runs in the same process.
 import { createServer as createViteServer } from "vite";
 import { announce, claim, release } from "./claim.mjs";
+import { freePort } from "./cluster.mjs";
 import { isEmpty, migrate, seed } from "./database.mjs";
 import { openEnvironment, publicUrlOf } from "./environment.mjs";
 import { startInbox } from "./inbox.mjs";
@@ -23,13 +24,16 @@ await main(async () => {
     }
     Object.assign(process.env, env, { NODE_ENV: "development", PUBLIC_URL: await publicUrlOf(env) });
 
+    const ours = process.listeners("SIGTERM");
     const vite = await createViteServer({
       root,
       appType: "custom",
-      // Hot reload speaks over a web socket of its own on loopback.
-      server: { middlewareMode: true },
+      // Hot reload speaks over a web socket on a port of its own, so that two clones do not meet.
+      server: { middlewareMode: true, hmr: { port: await freePort() } },
     });
     undo.push(() => vite.close());
+    // The framework's plug-in starts a server inside that would end this process before the database is stopped.
+    for (const other of process.listeners("SIGTERM")) if (!ours.includes(other)) process.off("SIGTERM", other);
     const { config } = await vite.ssrLoadModule("/app/config.server.ts");
     const { serve } = await vite.ssrLoadModule("/server/serve.ts");
     const { openPool } = await vite.ssrLoadModule("/app/db/connection.server.ts");
