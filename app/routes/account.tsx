@@ -24,6 +24,9 @@ import type { Route } from "./+types/account";
 
 export const meta: Route.MetaFunction = () => [{ title: "Account · Tablewright" }];
 
+/** How long to wait after too many tries. */
+export const headers: Route.HeadersFunction = ({ actionHeaders }) => actionHeaders;
+
 const NOTICES: Readonly<Record<string, string>> = {
   password: "Your password is changed; your other sessions are ended.",
   sessions: "Ended.",

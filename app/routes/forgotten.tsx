@@ -20,6 +20,9 @@ import type { Route } from "./+types/forgotten";
 
 export const meta: Route.MetaFunction = () => [{ title: "Forgotten password · Tablewright" }];
 
+/** How long to wait after too many tries. */
+export const headers: Route.HeadersFunction = ({ actionHeaders }) => actionHeaders;
+
 export const loader = forPage(async ({ request }: Route.LoaderArgs) => {
   return { asked: new URL(request.url).searchParams.has("asked") };
 });

@@ -26,6 +26,9 @@ import type { Route } from "./+types/sign-in";
 
 export const meta: Route.MetaFunction = () => [{ title: "Sign in · Tablewright" }];
 
+/** How long to wait after too many tries. */
+export const headers: Route.HeadersFunction = ({ actionHeaders }) => actionHeaders;
+
 /** What the page says to somebody who was sent here by another one. */
 const NOTICES: Readonly<Record<string, string>> = {
   "password-set": "Your password is set. Sign in with it.",
