@@ -1,6 +1,6 @@
 import { database } from "#app/db/database.server.ts";
 import { NotFound } from "#app/http/errors.ts";
-import { quote } from "#app/thermo/reading.ts";
+import { quote, type Reading } from "#app/thermo/reading.ts";
 import { formatKey, isSameSpecies, readKey, type SpeciesIdentity } from "#app/thermo/speciesKey.ts";
 import {
   type DetailAsOf,
@@ -53,12 +53,10 @@ export async function resolveSpecies(n: number, asked: string): Promise<DetailAs
   const db = database();
   const [exact] = await findDetailsAsOf(n, { keys: [asked] }, db);
   if (exact) return exact;
-  const text = plusKept(asked);
-  const reading = readKey(text);
-  const identities =
-    reading.outcome === "read" ? [reading.value] : reading.outcome === "ambiguous" ? reading.candidates : [];
+  const spellings = [...new Set([asked, plusKept(asked)])];
+  const identities = spellings.flatMap((spelling) => candidatesOf(readKey(spelling)));
   const canonical = identities.map(formatKey);
-  const byKey = await findDetailsAsOf(n, { keys: [text, ...canonical] }, db);
+  const byKey = await findDetailsAsOf(n, { keys: [...spellings, ...canonical] }, db);
   if (byKey.length === 1 && byKey[0]) return byKey[0];
 
   const former = await findSpeciesOnceCalled(n, asked, db);
@@ -73,23 +71,19 @@ export async function resolveSpecies(n: number, asked: string): Promise<DetailAs
       n,
       asked,
       alike.map((detail) => detail.key),
-      identities,
-      reading,
     ),
   );
 }
 
-function missing(
-  n: number,
-  asked: string,
-  near: readonly string[],
-  identities: readonly SpeciesIdentity[],
-  reading: ReturnType<typeof readKey>,
-): string {
+function candidatesOf(reading: Reading<SpeciesIdentity>): readonly SpeciesIdentity[] {
+  return reading.outcome === "read" ? [reading.value] : reading.outcome === "ambiguous" ? reading.candidates : [];
+}
+
+function missing(n: number, asked: string, near: readonly string[]): string {
   const head = `Edition ${n} has no species ${quote(asked)}.`;
   if (near.length > 0) return `${head} It has ${near.slice(0, 5).join(", ")}.`;
-  if (identities.length === 0 && reading.outcome === "refused") return `${head} ${reading.sentence}`;
-  return `${head} Search the edition by formula or name.`;
+  const reading = readKey(asked);
+  return reading.outcome === "refused" ? `${head} ${reading.sentence}` : `${head} Search it by formula or name.`;
 }
 
 /**

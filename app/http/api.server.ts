@@ -60,7 +60,7 @@ export function answering<Query extends z.ZodObject>(
 /**
  * Makes the loader and action of an API address from its operations. Whatever happens inside, the caller gets the
  * operation's answer or a problem document: never HTML, never the framework's own JSON. HEAD is answered as GET without a
- * body, OPTIONS with the methods, every other method with 405.
+ * body, OPTIONS with the methods, every other method with 405. The server puts the request's id on every answer.
  */
 export function apiRoute(...handlers: readonly ApiHandler[]) {
   const byMethod = new Map(handlers.map((handler) => [handler.operation.method.toUpperCase(), handler]));
@@ -70,7 +70,6 @@ export function apiRoute(...handlers: readonly ApiHandler[]) {
     const { request, context } = args;
     const { id } = context.get(requestContext);
     const response = await attempt(args, id);
-    response.headers.set("X-Request-Id", id);
     if (request.method !== "HEAD" || response.body === null) return response;
     await response.body.cancel();
     return new Response(null, { status: response.status, headers: response.headers });
@@ -100,7 +99,6 @@ export function unknownApiRoute() {
       new NotFound(`There is nothing at ${pathname}. The addresses of the API stand in /api/v1/openapi.json.`),
       id,
     );
-    response.headers.set("X-Request-Id", id);
     return request.method === "HEAD"
       ? new Response(null, { status: response.status, headers: response.headers })
       : response;

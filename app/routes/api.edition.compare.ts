@@ -8,7 +8,7 @@ import { answering, apiRoute } from "#app/http/api.server.ts";
 import { jsonAnswer } from "#app/http/caching.server.ts";
 import { requireKey } from "#app/people/apiKey.server.ts";
 
-export const { loader, action } = apiRoute(
+const api = apiRoute(
   answering(compareEditions, async ({ request, params, query }) => {
     await requireKey(request, "read");
     const a = await resolveEdition(params["a"]);
@@ -48,3 +48,6 @@ export const { loader, action } = apiRoute(
     });
   }),
 );
+
+export const loader = api.loader;
+export const action = api.action;

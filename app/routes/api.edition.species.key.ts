@@ -8,7 +8,7 @@ import { jsonAnswer } from "#app/http/caching.server.ts";
 import { NotFound } from "#app/http/errors.ts";
 import { requireKey } from "#app/people/apiKey.server.ts";
 
-export const { loader, action } = apiRoute(
+const api = apiRoute(
   answering(readSpecies, async ({ request, params }) => {
     await requireKey(request, "read");
     const resolved = await resolveEdition(params["edition"]);
@@ -23,3 +23,6 @@ export const { loader, action } = apiRoute(
     return jsonAnswer(request, body, keepingOf(resolved, apiPaths.oneSpecies(number, detail.key)));
   }),
 );
+
+export const loader = api.loader;
+export const action = api.action;

@@ -9,7 +9,7 @@ import { answering, apiRoute } from "#app/http/api.server.ts";
 import { jsonAnswer } from "#app/http/caching.server.ts";
 import { requireKey } from "#app/people/apiKey.server.ts";
 
-export const { loader, action } = apiRoute(
+const api = apiRoute(
   answering(listSpecies, async ({ request, params, query }) => {
     await requireKey(request, "read");
     const resolved = await resolveEdition(params["edition"]);
@@ -46,3 +46,6 @@ export const { loader, action } = apiRoute(
     return jsonAnswer(request, body, { keeping, headers: { ...headers, ...link } });
   }),
 );
+
+export const loader = api.loader;
+export const action = api.action;

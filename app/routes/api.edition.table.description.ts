@@ -7,7 +7,7 @@ import { answering, apiRoute } from "#app/http/api.server.ts";
 import { textAnswer } from "#app/http/caching.server.ts";
 import { requireKey } from "#app/people/apiKey.server.ts";
 
-export const { loader, action } = apiRoute(
+const api = apiRoute(
   answering(describeTable, async ({ request, params }) => {
     await requireKey(request, "read");
     const resolved = await resolveEdition(params["edition"]);
@@ -19,3 +19,6 @@ export const { loader, action } = apiRoute(
     });
   }),
 );
+
+export const loader = api.loader;
+export const action = api.action;

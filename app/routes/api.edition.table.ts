@@ -5,7 +5,7 @@ import { resolveEdition } from "#app/editions/resolve.server.ts";
 import { answering, apiRoute } from "#app/http/api.server.ts";
 import { requireKey } from "#app/people/apiKey.server.ts";
 
-export const { loader, action } = apiRoute(
+const api = apiRoute(
   answering(downloadTable, async ({ request, params }) => {
     await requireKey(request, "read");
     const resolved = await resolveEdition(params["edition"]);
@@ -17,3 +17,6 @@ export const { loader, action } = apiRoute(
     });
   }),
 );
+
+export const loader = api.loader;
+export const action = api.action;

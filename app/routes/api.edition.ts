@@ -6,7 +6,7 @@ import { answering, apiRoute } from "#app/http/api.server.ts";
 import { jsonAnswer } from "#app/http/caching.server.ts";
 import { requireKey } from "#app/people/apiKey.server.ts";
 
-export const { loader, action } = apiRoute(
+const api = apiRoute(
   answering(readEdition, async ({ request, params, publicUrl }) => {
     await requireKey(request, "read");
     const { edition, isCurrent } = await resolveEdition(params["edition"]);
@@ -31,3 +31,6 @@ export const { loader, action } = apiRoute(
     });
   }),
 );
+
+export const loader = api.loader;
+export const action = api.action;

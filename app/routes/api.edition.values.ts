@@ -7,7 +7,7 @@ import { answering, apiRoute } from "#app/http/api.server.ts";
 import { jsonAnswer } from "#app/http/caching.server.ts";
 import { requireKey } from "#app/people/apiKey.server.ts";
 
-export const { loader, action } = apiRoute(
+const api = apiRoute(
   answering(listValues, async ({ request, params, query }) => {
     await requireKey(request, "read");
     const resolved = await resolveEdition(params["edition"]);
@@ -21,3 +21,6 @@ export const { loader, action } = apiRoute(
     return jsonAnswer(request, body, keepingOf(resolved, apiPaths.values(number) + searchOf(request)));
   }),
 );
+
+export const loader = api.loader;
+export const action = api.action;

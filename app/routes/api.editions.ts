@@ -5,7 +5,7 @@ import { answering, apiRoute } from "#app/http/api.server.ts";
 import { jsonAnswer } from "#app/http/caching.server.ts";
 import { requireKey } from "#app/people/apiKey.server.ts";
 
-export const { loader, action } = apiRoute(
+const api = apiRoute(
   answering(listEditions, async ({ request, publicUrl }) => {
     await requireKey(request, "read");
     const editions = await findAllEditions();
@@ -16,3 +16,6 @@ export const { loader, action } = apiRoute(
     return jsonAnswer(request, body, { keeping: "asked" });
   }),
 );
+
+export const loader = api.loader;
+export const action = api.action;

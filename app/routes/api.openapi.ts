@@ -3,8 +3,11 @@ import { answering, apiRoute } from "#app/http/api.server.ts";
 import { jsonAnswer } from "#app/http/caching.server.ts";
 import { openApiDocument } from "./api/document.server.ts";
 
-export const { loader, action } = apiRoute(
+const api = apiRoute(
   answering(readContract, async ({ request, publicUrl }) =>
     jsonAnswer(request, openApiDocument(publicUrl), { keeping: "asked" }),
   ),
 );
+
+export const loader = api.loader;
+export const action = api.action;

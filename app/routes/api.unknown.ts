@@ -1,3 +1,6 @@
 import { unknownApiRoute } from "#app/http/api.server.ts";
 
-export const { loader, action } = unknownApiRoute();
+const api = unknownApiRoute();
+
+export const loader = api.loader;
+export const action = api.action;
