@@ -194,7 +194,8 @@ function pageLine(line: LineRow & { overtaken: boolean }): PageLine {
     versionId: line.versionId,
     version: line.version,
     content: line.content,
-    overtaken: line.overtaken,
+    // A line that was decided has its answer; what comes into its place later is no concern of it.
+    overtaken: line.overtaken && line.state === "open",
   };
 }
 

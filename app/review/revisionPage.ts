@@ -695,7 +695,10 @@ export function textChanges(
     return [];
   };
   const stood = new Map(before && before.kind === after.kind ? fields(before) : []);
+  // The row's own head says the key of a species that is new.
+  const told = after.kind === "detail" && stood.size === 0 ? after.key : null;
   return fields(after)
     .map(([label, said]) => ({ label, before: stood.get(label) || null, after: said || null }))
-    .filter((change) => change.before !== change.after);
+    .filter((change) => change.before !== change.after)
+    .filter((change) => told === null || change.after === null || !told.startsWith(change.after));
 }

@@ -17,6 +17,9 @@ import type {
 /** Lines named one by one in an entry; beyond it, their number is enough. */
 const NAMED_LINES = 6;
 
+/** Decisions of one person further apart than this, in milliseconds, are told apart. */
+const ONE_GO = 10 * 60 * 1000;
+
 export interface HistoryEntry {
   at: Date;
   by: string;
@@ -76,6 +79,8 @@ export function historyOf(input: HistoryInput, aboutOf: (line: PageLine) => stri
     }),
     more: Math.max(0, ids.length - NAMED_LINES),
   });
+  const roundAt = (at: Date): number =>
+    input.moves.filter((move) => move.to === "in_review" && move.at.getTime() <= at.getTime()).length;
   const timed: Timed[] = [];
   const tell = (at: Date, by: string, did: string, rest: Partial<HistoryEntry> = {}, opens = 0): void => {
     timed.push({
@@ -104,7 +109,12 @@ export function historyOf(input: HistoryInput, aboutOf: (line: PageLine) => stri
   }
   for (const run of runs(
     input.decisions,
-    (a, b) => a.by === b.by && a.decision === b.decision && a.reason === b.reason,
+    (a, b) =>
+      a.by === b.by &&
+      a.decision === b.decision &&
+      a.reason === b.reason &&
+      near(a, b) &&
+      roundAt(a.at) === roundAt(b.at),
   )) {
     const [first] = run;
     if (!first) continue;
@@ -146,7 +156,7 @@ function tellEdits(versions: readonly PageVersion[], named: Named, tell: Tell): 
     before.set(version.lineId, version.content);
     return earlier ? [{ ...version, earlier }] : [];
   });
-  for (const run of runs(edits, (a, b) => a.by === b.by && a.reason === b.reason && same(a) && same(b))) {
+  for (const run of runs(edits, (a, b) => a.by === b.by && a.reason === b.reason && same(a) && same(b) && near(a, b))) {
     const [first] = run;
     if (!first) continue;
     const words = first.reason.trim() || null;
@@ -161,6 +171,11 @@ function tellEdits(versions: readonly PageVersion[], named: Named, tell: Tell): 
         after: figure(first.content),
       });
   }
+}
+
+/** Done in one go, or nearly. */
+function near(a: { at: Date }, b: { at: Date }): boolean {
+  return Math.abs(a.at.getTime() - b.at.getTime()) < ONE_GO;
 }
 
 function same(edit: { earlier: LineContent; content: LineContent }): boolean {

@@ -28,6 +28,11 @@ import { NextLines } from "./publish/NextLines.tsx";
 
 export const meta: Route.MetaFunction = () => [{ title: "Next edition · Tablewright" }];
 
+/** What waits is read anew after a refusal too: it is why it was refused. */
+export function shouldRevalidate() {
+  return true;
+}
+
 export async function loader({ request }: Route.LoaderArgs) {
   try {
     return await findPublishPage(await requireActing(request, "edition:publish"));
@@ -103,7 +108,7 @@ export default function PublishPage({ loaderData: page, actionData }: Route.Comp
       section="editions"
       bookmark={draftBookmark(page.previous || null)}
       lede={
-        nothing
+        nothing || confirming
           ? undefined
           : `${countsInWords(page.counts)}, from ${page.revisions.length === 1 ? "one revision" : `${page.revisions.length} revisions`}.`
       }
@@ -120,16 +125,21 @@ export default function PublishPage({ loaderData: page, actionData }: Route.Comp
         </Ribbon>
       }
     >
-      {answer?.made && (
-        <Note kind="look" word="published meanwhile">
-          <p>
-            <Link to={paths.edition(answer.made.number)}>Edition {answer.made.number}</Link> was published by{" "}
-            {answer.made.publisher} on <Time at={answer.made.publishedAt} withTime />. What you wrote still stands
-            below.
-          </p>
-        </Note>
+      {answer?.made ? (
+        <div role="alert" className="mb-5">
+          <Note kind="block" word="not published">
+            <p>
+              <Link to={paths.edition(answer.made.number)}>Edition {answer.made.number}</Link> was published by{" "}
+              {answer.made.publisher} on <Time at={answer.made.publishedAt} withTime />, before this came in.{" "}
+              {nothing
+                ? "Nothing is left to publish. What you wrote stands below."
+                : "Look at what is left, and publish again. What you wrote still stands below."}
+            </p>
+          </Note>
+        </div>
+      ) : (
+        answer?.sentence && <FormErrors errors={[answer.sentence]} />
       )}
-      {answer?.sentence && <FormErrors errors={[answer.sentence]} />}
       {nothing ? (
         <Nothing page={page} answer={answer} />
       ) : (

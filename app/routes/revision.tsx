@@ -73,7 +73,9 @@ export default function RevisionPage({ loaderData: page, actionData }: Route.Com
       >
         {failed?.sentence && <FormErrors errors={[failed.sentence]} />}
         {page.may.write && <Describe page={page} />}
-        <Standing page={page} />
+        <div className="mb-4 empty:hidden">
+          <Standing page={page} />
+        </div>
         {page.groups.length > 0 ? (
           <>
             <Lines page={page} />
@@ -84,7 +86,7 @@ export default function RevisionPage({ loaderData: page, actionData }: Route.Com
             This revision has no lines. They come from a sheet, or are begun on the page of a species.
           </EmptyPage>
         )}
-        <History rounds={page.history} />
+        <History rounds={page.history} comments={page.may.comment} />
         <Caution />
         <Bar page={page} digest={page.cleanDigest} />
       </Leaf>
@@ -101,12 +103,14 @@ function bookmarkOf(page: Page): BookmarkProps {
 
 function RevisionRibbon({ page }: { page: Page }) {
   const { revision, counts, sent, newest } = page;
+  const decided = counts.lines - counts.open;
   return (
     <Ribbon
       end={
         <>
           <span>
             {counts.lines === 1 ? "1 line" : `${count(counts.lines)} lines`}
+            {revision.state === "in_review" && decided > 0 && `, ${count(decided)} decided`}
             {revision.sheetId !== null && (
               <>
                 {" "}
@@ -182,10 +186,10 @@ function Standing({ page }: { page: Page }) {
     );
   }
   if (revision.state !== "in_review") return null;
-  if (!may.decide) return <p className="mb-4 max-w-[68ch]">It is with the reviewers: they decide each line.</p>;
+  if (!may.decide) return <p className="max-w-[68ch]">It is with the reviewers: they decide each line.</p>;
   if (own === 0) return null;
   return (
-    <p className="mb-4 max-w-[68ch]">
+    <p className="max-w-[68ch]">
       {own === counts.lines
         ? "You had a hand in every line of this revision, so somebody else decides it and closes its review."
         : `You had a hand in ${own === 1 ? "one line" : `${count(own)} lines`} of this revision: somebody else decides ${own === 1 ? "it" : "them"} and closes the review.`}
@@ -198,7 +202,7 @@ function Describe({ page: { revision } }: { page: Page }) {
   const { open } = useDesk();
   if (open !== "describe") {
     return (
-      <p className="-mt-4 mb-4 text-fine">
+      <p className={`mb-4 text-fine ${revision.summary ? "-mt-4" : ""}`}>
         <OpenLink form="describe" anchor="text">
           Change title and summary
         </OpenLink>

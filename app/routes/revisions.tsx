@@ -5,12 +5,12 @@ import { requireActing } from "#app/people/visitor.server.ts";
 import { findRevisionsPage } from "#app/review/revisionsPage.server.ts";
 import type { ListName, RevisionItem } from "#app/review/revisionsPage.ts";
 import { ButtonLink } from "#app/ui/Button.tsx";
-import { type Column, DataTable } from "#app/ui/DataTable.tsx";
 import { EmptyPage } from "#app/ui/EmptyPage.tsx";
 import { count } from "#app/ui/figure.ts";
 import { Leaf } from "#app/ui/Leaf.tsx";
 import { InlineMark } from "#app/ui/MarginMark.tsx";
 import { Lede, Section } from "#app/ui/Section.tsx";
+import { Table } from "#app/ui/Table.tsx";
 import { Time } from "#app/ui/Time.tsx";
 import { useRootData } from "#app/ui/useRootData.ts";
 import type { Route } from "./+types/revisions";
@@ -45,55 +45,74 @@ function since(item: RevisionItem): Date {
 function Findings({ item }: { item: RevisionItem }) {
   if (item.blocks === 0 && item.looks === 0) return <span className="text-soft">all clean</span>;
   return (
-    <span className="inline-flex gap-x-3">
+    <span className="inline-flex flex-wrap gap-x-3">
       {item.blocks > 0 && <InlineMark kind="block">{count(item.blocks)} block</InlineMark>}
       {item.looks > 0 && <InlineMark kind="look">{count(item.looks)} to look at</InlineMark>}
     </span>
   );
 }
 
-const columnsOf = (name: ListName): Column<RevisionItem>[] => [
-  {
-    id: "revision",
-    head: "Revision",
-    rowHead: true,
-    wraps: true,
-    cell: (item) => (
-      <Link to={paths.revision(item.id)}>
-        {item.id} · {item.title}
-      </Link>
-    ),
-  },
-  { id: "from", head: "From", cell: (item) => item.madeByName },
-  {
-    id: "lines",
-    head: "Lines",
-    figure: true,
-    cell: (item) => (name === "withdrawn" ? "" : count(item.lines)),
-  },
-  {
-    id: "findings",
-    head: name === "published" ? "Edition" : name === "waiting" ? "Accepted" : "Findings",
-    cell: (item) => {
-      if (name === "published" && item.publishedIn !== null) {
-        return <Link to={paths.edition(item.publishedIn)}>edition {item.publishedIn}</Link>;
-      }
-      if (name === "waiting") return count(item.waiting);
-      return name === "withdrawn" || name === "declined" ? "" : <Findings item={item} />;
-    },
-  },
-  { id: "since", head: SINCE[name], cell: (item) => <Time at={since(item)} /> },
-];
+/** One list. All lists have the same columns in the same places, so that the page reads as one table. */
+function List({ name, head, items }: { name: ListName; head: string; items: readonly RevisionItem[] }) {
+  const fell = name === "withdrawn";
+  return (
+    <Table caption={`Revisions: ${head.toLowerCase()}`} even className="max-w-[60rem] sm:min-w-[40rem] sm:table-fixed">
+      <colgroup>
+        <col className="sm:w-[45%]" />
+        <col className="sm:w-[15%]" />
+        <col className="sm:w-[6%]" />
+        <col className="sm:w-[19%]" />
+        <col className="sm:w-[15%]" />
+      </colgroup>
+      <thead>
+        <tr>
+          <th scope="col">Revision</th>
+          <th scope="col" className="max-sm:hidden">
+            From
+          </th>
+          <th scope="col" className="figure max-sm:hidden">
+            {!fell && "Lines"}
+          </th>
+          <th scope="col">{fell ? "" : (THIRD[name] ?? "Findings")}</th>
+          <th scope="col">{SINCE[name]}</th>
+        </tr>
+      </thead>
+      <tbody>
+        {items.map((item) => (
+          <tr key={item.id}>
+            <th scope="row">
+              <Link to={paths.revision(item.id)}>
+                {item.id} · {item.title}
+              </Link>
+              <span className="block text-fine text-soft sm:hidden">
+                {item.madeByName}
+                {!fell && `, ${item.lines === 1 ? "1 line" : `${count(item.lines)} lines`}`}
+              </span>
+            </th>
+            <td className="max-sm:hidden">{item.madeByName}</td>
+            <td className="figure max-sm:hidden">{!fell && count(item.lines)}</td>
+            <td className="sm:whitespace-nowrap">{!fell && <Outcome name={name} item={item} />}</td>
+            <td className="sm:whitespace-nowrap">
+              <Time at={since(item)} />
+            </td>
+          </tr>
+        ))}
+      </tbody>
+    </Table>
+  );
+}
 
-const columns: Record<ListName, Column<RevisionItem>[]> = {
-  inReview: columnsOf("inReview"),
-  returned: columnsOf("returned"),
-  drafts: columnsOf("drafts"),
-  waiting: columnsOf("waiting"),
-  published: columnsOf("published"),
-  declined: columnsOf("declined"),
-  withdrawn: columnsOf("withdrawn"),
-};
+/** The head of the column that says how far a revision has come. */
+const THIRD: Partial<Record<ListName, string>> = { published: "Edition", waiting: "Accepted", declined: "Accepted" };
+
+function Outcome({ name, item }: { name: ListName; item: RevisionItem }) {
+  if (name === "published" && item.publishedIn !== null) {
+    return <Link to={paths.edition(item.publishedIn)}>edition {item.publishedIn}</Link>;
+  }
+  if (name === "waiting") return item.waiting === item.lines ? "all" : count(item.waiting);
+  if (name === "declined") return "none";
+  return <Findings item={item} />;
+}
 
 export default function RevisionsPage({ loaderData: { lists, may, waiting } }: Route.ComponentProps) {
   const { currentEdition } = useRootData();
@@ -119,14 +138,7 @@ export default function RevisionsPage({ loaderData: { lists, may, waiting } }: R
               </>
             )}
           </Lede>
-          <DataTable
-            caption={`Revisions: ${head.toLowerCase()}`}
-            rows={items}
-            columns={columns[name]}
-            rowKey={(item) => String(item.id)}
-            className="max-w-[60rem]"
-            even
-          />
+          <List name={name} head={head} items={items} />
         </Section>
       ))}
       {may.publish && waiting === 0 && lists.length > 0 && (

@@ -17,26 +17,34 @@ interface FiguresProps extends ShownValue {
   tail?: number | undefined;
   /** "plus" prints the sign of a positive difference. */
   sign?: "plus" | undefined;
+  /** A proof mark: what stood ("del"), what shall stand ("ins"). The mark covers the figure and not the room after it. */
+  proof?: "del" | "ins" | undefined;
 }
 
 /**
  * A value as it is printed: true minus, thin spaces in long numbers, the standard uncertainty of the last digits in
  * brackets. Its title says the same in words; it carries no unit (the column head does).
  */
-export function Figures({ digits, uncertainty, derived, tail, sign }: FiguresProps) {
+export function Figures({ digits, uncertainty, derived, tail, sign, proof }: FiguresProps) {
   const printed = concise(digits, uncertainty);
   const { whole, fraction, bracket } = cutFigure(printed.text);
   const shown = sign === "plus" && !whole.startsWith("−") && /[1-9]/.test(printed.text) ? `+${whole}` : whole;
-  return (
+  const on = proof && "proof-on";
+  const figure = (
     <span className={derived ? "value value-derived" : "value"} title={printed.words + (derived ? "; derived" : "")}>
-      {shown}
+      {proof ? <span className={on}>{shown}</span> : shown}
       <span className={tail === undefined ? undefined : `value-tail tail-${tail}`}>
-        {fraction}
-        {bracket && <span className="value-uncertainty">{bracket}</span>}
+        <span className={on}>
+          {fraction}
+          {bracket && <span className="value-uncertainty">{bracket}</span>}
+        </span>
       </span>
       {derived && <span className="said"> derived</span>}
     </span>
   );
+  if (proof === "del") return <del className="proof">{figure}</del>;
+  if (proof === "ins") return <ins className="proof">{figure}</ins>;
+  return figure;
 }
 
 /** A table cell holding a value, or a softly printed word where there is none. */

@@ -89,25 +89,21 @@ function ValueCells({ line, property, tails }: ValueCellsProps) {
     <>
       <td className="tight">
         <Symbol of={symbol} />
-        <span className="text-fine text-soft">
+        <span className="text-fine text-soft max-sm:hidden">
           {" "}
           / <UnitText unit={unit} />
         </span>
       </td>
       <td className="figure">
         {line.stood ? (
-          <del>
-            <Figures {...line.stood} tail={tails.stood} />
-          </del>
+          <Figures {...line.stood} tail={tails.stood} proof="del" />
         ) : (
           <span className="text-soft">new</span>
         )}
       </td>
       <td className="figure">
         {line.proposed ? (
-          <ins>
-            <Figures {...line.proposed} tail={tails.proposed} />
-          </ins>
+          <Figures {...line.proposed} tail={tails.proposed} proof="ins" />
         ) : (
           <span className="text-soft" title={line.reason ?? undefined}>
             taken out

@@ -24,10 +24,11 @@ const WRITING_KEYS = [
 
 /** What can be done with the whole revision, always within reach; what was refused and what was done is said here. */
 export function Bar({ page, digest }: { page: RevisionPage; digest: string }) {
-  const { said, refusal, dismiss, open } = useDesk();
+  const { said, refusal, dismiss, open, started } = useDesk();
   const keys = useLineKeys();
-  const { may, revision } = page;
-  const acts = may.decide || may.send || may.withdraw || may.comment;
+  const { may } = page;
+  const panel = panelOf(page, open, started);
+  const acts = may.decide || may.send || may.withdraw;
   if (!acts) return <StatusLine shown={false}>{said}</StatusLine>;
   return (
     <div id="decide" className="contents">
@@ -36,7 +37,7 @@ export function Bar({ page, digest }: { page: RevisionPage; digest: string }) {
           <>
             <Counts page={page} />
             {page.groups.length > 0 && (
-              <span className="keys-hint ml-2">
+              <span className="keys-hint ml-3 text-fine">
                 {keys.on && <KeysHint keys={may.decide ? DECIDING_KEYS : WRITING_KEYS} />}
                 <Button kind="text" type="button" onClick={keys.toggle}>
                   <span className="text-fine">{keys.on ? "keys off" : "keys on"}</span>
@@ -58,28 +59,21 @@ export function Bar({ page, digest }: { page: RevisionPage; digest: string }) {
             </Button>
           </div>
         )}
-        <Panel page={page} open={open} />
-        {may.decide && <Deciding page={page} digest={digest} />}
-        {!may.decide && may.write && <Writing page={page} />}
-        {may.withdraw && (
-          <OpenLink form="withdraw" anchor="decide" className="button button-quiet">
-            Withdraw
-          </OpenLink>
+        {panel ?? (
+          <>
+            {may.decide && <Deciding page={page} digest={digest} />}
+            {!may.decide && may.write && <Writing page={page} />}
+            {may.withdraw && (
+              <OpenLink form="withdraw" anchor="decide" className="button button-quiet">
+                Withdraw
+              </OpenLink>
+            )}
+          </>
         )}
-        {may.comment && (
-          <OpenLink form="comment" anchor="decide" className="button button-quiet">
-            Comment
-          </OpenLink>
-        )}
-        <StatusLine>{said || (revision.state === "in_review" ? progress(page) : "")}</StatusLine>
+        <StatusLine>{said}</StatusLine>
       </DecisionBar>
     </div>
   );
-}
-
-function progress({ counts }: RevisionPage): string {
-  const decided = counts.lines - counts.open;
-  return decided === 0 ? "" : `${count(decided)} of ${count(counts.lines)} decided`;
 }
 
 function Counts({ page: { counts } }: { page: RevisionPage }) {
@@ -118,7 +112,7 @@ function Deciding({ page, digest }: { page: RevisionPage; digest: string }) {
         </ActForm>
       )}
       <OpenLink form="return" anchor="decide" className="button">
-        Return with comments
+        Return<span className="max-sm:sr-only"> with comments</span>
       </OpenLink>
     </>
   );
@@ -148,78 +142,61 @@ function Writing({ page: { may, counts } }: { page: RevisionPage }) {
 }
 
 /** The form of the bar that is open. */
-function Panel({ page, open }: { page: RevisionPage; open: string | null }) {
-  const { started } = useDesk();
+function panelOf(page: RevisionPage, open: string | null, started: string): React.ReactNode {
   const { may, counts } = page;
-  const panel = (): React.ReactNode => {
-    if (open === "return" && may.decide) {
-      return (
-        <ReasonForm
-          key={started}
-          intent="return"
-          name="remark"
-          label="What should be mended"
-          hint="The steward gets it by letter. Decisions made so far stay; a line that is edited is decided anew."
-          act="Return with comments"
-          pendingLabel="Returning…"
-          anchor="decide"
-        />
-      );
-    }
-    if (open === "comment" && may.comment) {
-      return (
-        <ReasonForm
-          intent="comment"
-          name="body"
-          label="Comment on the revision"
-          act="Write the comment"
-          pendingLabel="Writing…"
-          anchor="decide"
-        />
-      );
-    }
-    if (open === "send" && may.send) {
-      return (
-        <ReasonForm
-          intent="send"
-          name="remark"
-          label="Remark for the reviewers"
-          hint="What to look at first; what was answered."
-          optional
-          act="Send to review"
-          pendingLabel="Sending…"
-          kind="main"
-          anchor="decide"
-        >
-          {counts.blocks > 0 && (
-            <p className="mb-2 text-fine text-soft">
-              {counts.blocks === 1 ? "One finding blocks" : `${counts.blocks} findings block`}: a reviewer can only
-              accept those lines after setting the finding aside.
-            </p>
-          )}
-        </ReasonForm>
-      );
-    }
-    if (open === "withdraw" && may.withdraw) {
-      return (
-        <ReasonForm
-          intent="withdraw"
-          name="reason"
-          label="Why it is withdrawn"
-          act={`Withdraw revision ${page.revision.id}`}
-          pendingLabel="Withdrawing…"
-          anchor="decide"
-        >
-          <p className="mb-2 max-w-[60ch]">
-            {counts.lines === 1 ? "Its one line falls" : `Its ${count(counts.lines)} lines fall`} with it, and decisions
-            on them count no more. Nothing is erased: the revision stays to be read. A withdrawn revision is not taken
-            up again.
+  if (open === "return" && may.decide) {
+    return (
+      <ReasonForm
+        key={started}
+        intent="return"
+        name="remark"
+        label="What should be mended"
+        hint="The steward gets it by letter. Decisions made so far stay; a line that is edited is decided anew."
+        act="Return with comments"
+        pendingLabel="Returning…"
+        anchor="decide"
+      />
+    );
+  }
+  if (open === "send" && may.send) {
+    return (
+      <ReasonForm
+        intent="send"
+        name="remark"
+        label="Remark for the reviewers"
+        hint="What to look at first; what was answered."
+        optional
+        act="Send to review"
+        pendingLabel="Sending…"
+        kind="main"
+        anchor="decide"
+      >
+        {counts.blocks > 0 && (
+          <p className="mb-2 text-fine text-soft">
+            {counts.blocks === 1 ? "One finding blocks" : `${counts.blocks} findings block`}: a reviewer can only accept
+            those lines after setting the finding aside.
           </p>
-        </ReasonForm>
-      );
-    }
-    return null;
-  };
-  const shown = panel();
-  return shown && <div className="basis-full">{shown}</div>;
+        )}
+      </ReasonForm>
+    );
+  }
+  if (open === "withdraw" && may.withdraw) {
+    return (
+      <ReasonForm
+        intent="withdraw"
+        name="reason"
+        label="Why it is withdrawn"
+        act={`Withdraw revision ${page.revision.id}`}
+        pendingLabel="Withdrawing…"
+        anchor="decide"
+      >
+        <p className="mb-2 max-w-[60ch]">
+          {counts.lines === 1 ? "Its one line falls" : `Its ${count(counts.lines)} lines fall`} with it, and decisions
+          on them count no more. Nothing is erased: the revision stays to be read. A withdrawn revision is not taken up
+          again.
+        </p>
+      </ReasonForm>
+    );
+  }
+  return null;
 }

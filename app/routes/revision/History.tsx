@@ -3,6 +3,8 @@ import { Prose } from "#app/ui/Prose.tsx";
 import { Section } from "#app/ui/Section.tsx";
 import { Time } from "#app/ui/Time.tsx";
 import { Figures } from "#app/ui/ValueCell.tsx";
+import { OpenLink, useDesk } from "./desk.tsx";
+import { ReasonForm } from "./Reason.tsx";
 
 const ORDINALS = ["Draft", "First round", "Second round", "Third round", "Fourth round", "Fifth round", "Sixth round"];
 
@@ -11,8 +13,9 @@ export function roundInWords(round: number): string {
   return ORDINALS[round] ?? `Round ${round}`;
 }
 
-/** Everything that happened to the revision, round by round. */
-export function History({ rounds }: { rounds: readonly HistoryRound[] }) {
+/** Everything that happened to the revision, round by round, and the place to write to each other. */
+export function History({ rounds, comments }: { rounds: readonly HistoryRound[]; comments: boolean }) {
+  const { open } = useDesk();
   return (
     <Section head="How it went" id="history">
       <div className="max-w-[60rem] border-b-2 border-ink pb-2">
@@ -29,6 +32,23 @@ export function History({ rounds }: { rounds: readonly HistoryRound[] }) {
           </div>
         ))}
       </div>
+      {comments &&
+        (open === "comment" ? (
+          <ReasonForm
+            intent="comment"
+            name="body"
+            label="Comment on the revision"
+            act="Write the comment"
+            pendingLabel="Writing…"
+            anchor="history"
+          />
+        ) : (
+          <p className="mt-2">
+            <OpenLink form="comment" anchor="history">
+              Comment on the revision
+            </OpenLink>
+          </p>
+        ))}
     </Section>
   );
 }
@@ -55,16 +75,8 @@ function Entry({ entry }: { entry: HistoryEntry }) {
         {(entry.before ?? entry.after) && (
           <>
             {" "}
-            {entry.before && (
-              <del>
-                <Figures {...entry.before} />
-              </del>
-            )}{" "}
-            {entry.after && (
-              <ins>
-                <Figures {...entry.after} />
-              </ins>
-            )}
+            {entry.before && <Figures {...entry.before} proof="del" />}{" "}
+            {entry.after && <Figures {...entry.after} proof="ins" />}
           </>
         )}
         {entry.voided > 0 && (

@@ -40,8 +40,8 @@ export function LineUnder({ line, group, last, page }: LineUnderProps) {
           <span className="text-soft">Why it is taken out:</span> {line.withdrawalReason}
         </p>
       )}
-      {line.findings.map((finding) => (
-        <LineFinding key={finding.id} finding={finding} line={line} page={page} />
+      {line.findings.map((finding, index) => (
+        <LineFinding key={finding.id} finding={finding} first={index === 0} line={line} page={page} />
       ))}
       {line.versions.length > 0 && <Versions line={line} />}
       <Decisions line={line} />
@@ -112,8 +112,17 @@ export function LineUnder({ line, group, last, page }: LineUnderProps) {
   );
 }
 
-function LineFinding({ finding, line, page }: { finding: FindingView; line: LineView; page: RevisionPage }) {
+interface LineFindingProps {
+  finding: FindingView;
+  /** The line's first finding: the comment is offered once. */
+  first: boolean;
+  line: LineView;
+  page: RevisionPage;
+}
+
+function LineFinding({ finding, first, line, page }: LineFindingProps) {
   const { open } = useDesk();
+  const comments = first && page.may.comment;
   const anchor = `line-${line.id}`;
   const setAside = finding.setAside;
   return (
@@ -125,14 +134,14 @@ function LineFinding({ finding, line, page }: { finding: FindingView; line: Line
         <SuggestionAction suggestion={suggestion} finding={finding} line={line} page={page} />
       )}
     >
-      {(finding.maySetAside || page.may.comment) && (
+      {(finding.maySetAside || comments) && (
         <>
           {finding.maySetAside && (
             <OpenLink form={formKey("set-aside", finding.id)} anchor={anchor}>
               Set the finding aside, with a reason
             </OpenLink>
           )}
-          {page.may.comment && (
+          {comments && (
             <OpenLink form={formKey("comment", line.id)} anchor={anchor}>
               Comment
             </OpenLink>
@@ -203,14 +212,11 @@ function Versions({ line }: { line: LineView }) {
     <ol className="my-2 border-l-2 border-rule pl-3.5 text-fine">
       {line.versions.map((version, index) => {
         const isLast = index === line.versions.length - 1;
-        const Hand = isLast ? "ins" : "del";
         return (
           <li key={version.version} className="my-0.5">
             {version.figure && (
               <>
-                <Hand>
-                  <Figures {...version.figure} />
-                </Hand>{" "}
+                <Figures {...version.figure} proof={isLast ? "ins" : "del"} />{" "}
               </>
             )}
             <span className="text-soft">

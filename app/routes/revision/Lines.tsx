@@ -19,6 +19,10 @@ import { formKey } from "./outcome.ts";
 /** Columns of the table with the one in the margin. */
 const COLUMNS = 8;
 
+/** What is read as text stays in view while a wide table is scrolled sideways. */
+const WITHIN_PAGE =
+  "sticky left-[calc(var(--spacing-margin)+var(--spacing-gutter))] max-w-[min(46rem,calc(100vw-var(--spacing-margin)-var(--spacing-gutter)-1.75rem))]";
+
 /** Room after the decimal points, so that figures of a column stand under each other. */
 interface Tails {
   stood: number;
@@ -64,7 +68,9 @@ export function Lines({ page }: { page: RevisionPage }) {
           <th scope="col" className="figure">
             <Symbol of="E_n" />
           </th>
-          <th scope="col">{page.may.decide ? "Decision" : page.may.write ? "Work" : "State"}</th>
+          <th scope="col" className="max-sm:hidden">
+            {page.may.decide ? "Decision" : page.may.write ? "Work" : "State"}
+          </th>
         </tr>
       </thead>
       {page.groups.map((group, index) => {
@@ -155,7 +161,7 @@ function Line({ line, group, last, page, tails }: LineProps) {
           {info ? (
             <>
               <Symbol of={info.symbol} />
-              <span className="text-fine text-soft">
+              <span className="text-fine text-soft max-sm:hidden">
                 {" "}
                 / <UnitText unit={info.unit} />
               </span>
@@ -171,15 +177,24 @@ function Line({ line, group, last, page, tails }: LineProps) {
             <Changes changes={line.changes} />
           </td>
         )}
-        <td className="tight">
+        <td className="tight max-sm:hidden">
           <LineActions line={line} page={page} />
+        </td>
+      </tr>
+      {/* On a narrow page the last column would lie beyond its edge, so what can be done stands under the line. */}
+      <tr className="under sm:hidden" data-line={line.id}>
+        <td className="margin-cell" />
+        <td colSpan={COLUMNS - 2}>
+          <div className={WITHIN_PAGE}>
+            <LineActions line={line} page={page} />
+          </div>
         </td>
       </tr>
       {(speaks || isOpen) && (
         <tr className="under" data-line={line.id}>
           <td className="margin-cell" />
           <td colSpan={COLUMNS - 1}>
-            <div className="sticky left-[calc(var(--spacing-margin)+var(--spacing-gutter))] max-w-[min(46rem,calc(100vw-var(--spacing-margin)-var(--spacing-gutter)-1.75rem))]">
+            <div className={WITHIN_PAGE}>
               <LineUnder line={line} group={group} last={last} page={page} />
             </div>
           </td>
@@ -197,17 +212,13 @@ function Mark({ line }: { line: LineView }) {
 }
 
 function Figured({ line, tails }: { line: LineView; tails: Tails }) {
+  // What was declined or fell with the revision changes nothing: the proposal is struck out, and what stands stays.
+  const off = line.state === "declined" || line.state === "dropped";
   return (
     <>
       <td className="figure">
         {line.stood ? (
-          line.state === "declined" || line.state === "dropped" ? (
-            <Figures {...line.stood} tail={tails.stood} />
-          ) : (
-            <del>
-              <Figures {...line.stood} tail={tails.stood} />
-            </del>
-          )
+          <Figures {...line.stood} tail={tails.stood} proof={off ? undefined : "del"} />
         ) : (
           <span className="text-soft">new</span>
         )}
@@ -219,15 +230,7 @@ function Figured({ line, tails }: { line: LineView; tails: Tails }) {
       </td>
       <td className="figure">
         {line.proposed ? (
-          line.state === "declined" || line.state === "dropped" ? (
-            <del>
-              <Figures {...line.proposed} tail={tails.proposed} />
-            </del>
-          ) : (
-            <ins>
-              <Figures {...line.proposed} tail={tails.proposed} />
-            </ins>
-          )
+          <Figures {...line.proposed} tail={tails.proposed} proof={off ? "del" : "ins"} />
         ) : (
           <span className="text-soft">taken out</span>
         )}

@@ -55,7 +55,7 @@ export function ValueForm({ line, property }: { line: LineView; property: Proper
                 [fields.reason, "Reason"],
               ]}
             />
-            <div className="grid gap-x-6 sm:grid-cols-2">
+            <div className="grid items-end gap-x-6 sm:grid-cols-2">
               <Field
                 ref={first}
                 field={fields.value}

@@ -113,18 +113,16 @@ function placeFocus(lineId: string, next: boolean): void {
   const active = document.activeElement;
   const left = active && active !== document.body && !isWithin(active, lineId) && !active.closest(".decision-bar");
   if (left) return;
+  const rows = lineRows();
+  const isOpen = (row: HTMLElement): boolean => row.dataset["open"] === "yes";
   if (!line) {
-    if (!active || active === document.body) document.querySelector<HTMLElement>("main h1")?.focus();
+    if (active && active !== document.body) return;
+    const there = rows.find(isOpen) ?? document.querySelector<HTMLElement>(".decision-bar :is(button, a)");
+    (there ?? document.querySelector<HTMLElement>("main h1"))?.focus();
     return;
   }
-  const rows = lineRows();
   const from = rows.indexOf(line);
-  const open = next
-    ? rows
-        .slice(from + 1)
-        .concat(rows.slice(0, from))
-        .find((row) => row.dataset["open"] === "yes")
-    : undefined;
+  const open = next ? [...rows.slice(from + 1), ...rows.slice(0, from)].find(isOpen) : undefined;
   (open ?? line).focus();
 }
 
