@@ -1,4 +1,3 @@
-import type { RouteConfigEntry } from "@react-router/dev/routes";
 import { beforeAll, describe, expect, test } from "vitest";
 import { useDatabase as makeApplicationUse } from "#app/db/database.server.ts";
 import { makeKey } from "#app/people/apiKey.server.ts";
@@ -6,7 +5,7 @@ import { type Scope, scopeInfo, SCOPES } from "#app/people/key.ts";
 import { may, type Permission } from "#app/people/permissions.ts";
 import { type Acting, type Role, ROLES } from "#app/people/person.ts";
 import { type Door, routePermissions } from "#app/people/routePermissions.ts";
-import routes from "#app/routes.ts";
+import { addressOf, dataAddressOf, isApiPattern as isApi, routePatterns } from "#tests/support/manifest.ts";
 import { makePerson, signedIn } from "#tests/support/people.ts";
 import { useServer } from "#tests/support/server.ts";
 
@@ -16,46 +15,11 @@ import { useServer } from "#tests/support/server.ts";
  * service does is looked at from outside.
  */
 
-async function patterns(): Promise<string[]> {
-  const collect = (entries: readonly RouteConfigEntry[], base: string): string[] =>
-    entries.flatMap((entry) => {
-      const here = entry.path === undefined ? base : `${base}/${entry.path}`;
-      const own = entry.index === true || entry.path !== undefined ? [here === "" ? "/" : here] : [];
-      return [...own, ...collect(entry.children ?? [], here)];
-    });
-  return [...new Set(collect(await routes, ""))];
-}
-
-const all = await patterns();
+const all = await routePatterns();
 
 test("every route has its line in app/people/routePermissions.ts, and every line its route", () => {
   expect(Object.keys(routePermissions).sort()).toEqual([...all].sort());
 });
-
-/** What stands in the place of a parameter. Nothing is there: who may come in finds nothing, and nothing is changed. */
-const samples: Readonly<Record<string, string>> = {
-  check: "gibbs-closure",
-  edition: "999999",
-  a: "999998",
-  b: "999999",
-  other: "999998",
-  key: "H2O(l)",
-  revision: "999999",
-  sheet: "999999",
-  source: "nothing",
-  token: "A".repeat(43),
-};
-
-function addressOf(pattern: string): string {
-  return pattern
-    .replace(/:(\w+)\??/g, (_whole, name: string) => {
-      const sample = samples[name];
-      if (sample === undefined)
-        throw new Error(`Give the parameter ":${name}" a sample in tests/routes/access.test.ts.`);
-      return encodeURIComponent(sample);
-    })
-    .replace("*", "nothing/here");
-}
 
 /** Fields that make each form of a revision's page complete, so that nothing but the permission can refuse it. */
 const fields: Readonly<Record<string, Record<string, string>>> = {
@@ -130,7 +94,6 @@ async function outcomeOf(response: Response): Promise<Outcome> {
   return "let in";
 }
 
-const isApi = (pattern: string): boolean => pattern.startsWith("/api/");
 const isOpenTo = (door: Door, roles: readonly Role[]): boolean =>
   door === "public" || (typeof door === "string" && may(roles, door));
 
@@ -157,7 +120,7 @@ describe.each(all.filter((pattern) => !isApi(pattern)).map((pattern) => [pattern
       const shut = acting ? "refused" : "sent to sign in";
       const expected = doors.read === null ? "no such door" : isOpenTo(doors.read, roles) ? "let in" : shut;
       expect(await outcomeOf(await get(address, cookie)), `${name} reading ${address}`).toBe(expected);
-      const data = `${address === "/" ? "/_root" : address}.data`;
+      const data = dataAddressOf(address);
       expect(await outcomeOf(await get(data, cookie)), `${name} reading ${data}`).toBe(expected);
     }
   });
@@ -167,7 +130,7 @@ describe.each(all.filter((pattern) => !isApi(pattern)).map((pattern) => [pattern
       const { name, roles, acting } = visitor;
       const shut = acting ? "refused" : "nobody";
       const expected = doors.change === null ? "no such door" : isOpenTo(doors.change, roles) ? "let in" : shut;
-      for (const where of [address, `${address === "/" ? "/_root" : address}.data`]) {
+      for (const where of [address, dataAddressOf(address)]) {
         const got = await outcomeOf(await post(where, await cookieFor(visitor, pattern)));
         expect(got, `${name} posting to ${where}`).toBe(expected);
       }
