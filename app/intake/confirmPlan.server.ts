@@ -60,7 +60,7 @@ export async function confirmPlan(acting: Acting, sheetId: number, confirmed: Co
     await updateSheetConfirmed(
       sheetId,
       {
-        plan: { notices: [], headRow: 1, samples: [], ...sheet.plan, columns: confirmed.columns },
+        plan: { notices: [], headRow: 1, samples: [], bareSolid: false, ...sheet.plan, columns: confirmed.columns },
         settings: confirmed.settings,
         sourceChoice: confirmed.source,
         by: acting.person.id,

@@ -52,6 +52,8 @@ export interface StoredPlan {
   headRow: number;
   /** The first values of each column, for the page. */
   samples: readonly (readonly string[])[];
+  /** Whether a cell says only that something is solid, so that the page asks what that means. */
+  bareSolid: boolean;
 }
 
 /** A sheet without its bytes and rows. */

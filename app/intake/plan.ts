@@ -125,6 +125,11 @@ export function firstValues(sheet: DecodedSheet): string[][] {
   return sheet.heads.map((_, index) => sampleOf(sheet, index).slice(0, 3).map(long));
 }
 
+/** Whether a cell says only that a species is solid (`s`, `NaCl(s)`), which may mean a crystal. */
+export function hasBareSolid(sheet: DecodedSheet): boolean {
+  return sheet.rows.some((row) => row.cells.some((cell) => /^(?:.*\()?(?:s|solid)\)?$/.test(cell.trim())));
+}
+
 /** The columns with this meaning, by their index. */
 export function columnsOf(plan: ColumnPlan, means: ColumnMeans): number[] {
   return plan.flatMap((column, index) => (column.means === means ? [index] : []));

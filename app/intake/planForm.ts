@@ -3,14 +3,14 @@ import { isProperty } from "#app/thermo/property.ts";
 import { UNITS } from "#app/thermo/unit.ts";
 import { COLUMN_MEANS, type ColumnMeans } from "./meaning.ts";
 import { meaningValue, meansField, NEW_SOURCE, SOURCE_FIELDS, takesUnit, unitField } from "./planChoices.ts";
-import { type ColumnPlan, type PlannedColumn, type SheetSettings, sheetSettings } from "./plan.ts";
+import { checkPlan, type ColumnPlan, type PlannedColumn, type SheetSettings, sheetSettings } from "./plan.ts";
 import { newSource, type NewSource, type SourceChoice } from "./sourceChoice.ts";
 
 export type PlanForm =
   | { readonly ok: true; readonly columns: ColumnPlan; readonly settings: SheetSettings; readonly source: SourceChoice }
   | { readonly ok: false; readonly errors: FieldError[] };
 
-/** Reads the form back. What is not among the choices is an error at its field; completeness is `checkPlan`'s. */
+/** Reads the form back, with everything that is missing or wrong in it at once, each at its field. */
 export function readPlanForm(form: FormData, planned: ColumnPlan): PlanForm {
   const errors: FieldError[] = [];
   const text = (name: string): string => {
@@ -47,7 +47,7 @@ export function readPlanForm(form: FormData, planned: ColumnPlan): PlanForm {
       const detail = name === "method" ? "Say it in at most 500 characters." : "Choose one of the list.";
       errors.push({ pointer: `/settings/${name}`, detail });
     }
-  }
+  } else errors.push(...checkPlan(columns, settings.data));
   const source = readSource(text, errors);
   if (errors.length > 0 || !settings.success || !source) return { ok: false, errors };
   return { ok: true, columns, settings: settings.data, source };

@@ -18,6 +18,7 @@ import {
 import {
   columnPlan,
   firstValues,
+  hasBareSolid,
   hillsOf,
   NO_CONTEXT,
   type PlanContext,
@@ -74,6 +75,7 @@ export async function receiveSheet(acting: Acting, upload: UploadedSheet): Promi
           notices: guess.notices,
           headRow: sheet.headRow,
           samples: firstValues(sheet),
+          bareSolid: hasBareSolid(sheet),
         },
         settings: guess.settings,
         rowsTotal: sheet.rows.length,

@@ -90,6 +90,7 @@ export async function findSheetPage(acting: Acting, id: number, after: number) {
       sample: sheet.plan?.samples[index] ?? [],
     })),
     notices: sheet.plan?.notices ?? [],
+    bareSolid: sheet.plan?.bareSolid ?? false,
     settings: sheet.settings,
     sources,
     chosenSource: choice,

@@ -136,7 +136,7 @@ function Reopen() {
   const pending = usePending("intent", "reopen");
   return (
     <Form method="post" className="mt-3">
-      <Button name="intent" value="reopen" pending={pending}>
+      <Button kind="text" name="intent" value="reopen" pending={pending}>
         Change the columns and read again
       </Button>
     </Form>

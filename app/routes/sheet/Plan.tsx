@@ -212,11 +212,15 @@ function settingFields(
       label: "Decimal sign",
       options: SETTING_OPTIONS.decimalComma,
     },
-    {
-      field: field("solidIs", settings.solidIs),
-      label: "What s means as a phase",
-      options: SETTING_OPTIONS.solidIs,
-    },
+    ...(page.bareSolid
+      ? [
+          {
+            field: field("solidIs", settings.solidIs),
+            label: "What s means as a phase",
+            options: SETTING_OPTIONS.solidIs,
+          },
+        ]
+      : []),
     {
       field: field("method", settings.method ?? ""),
       label: "How they were obtained (may stay empty)",
@@ -284,7 +288,7 @@ function SourceFields({ choice, options, described }: SourceState) {
       />
       {(chosen === NEW_SOURCE || chosen === "") && (
         <fieldset className="mt-4">
-          <legend className="field-label">A new source</legend>
+          <legend className="mb-3 font-semibold">A new source</legend>
           {described.map(({ field, label, hint, options: choices }) => {
             if (choices) return <Select key={field.name} field={field} label={label} options={choices} />;
             if (field.name === "source.authors")

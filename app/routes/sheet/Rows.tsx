@@ -1,3 +1,4 @@
+import { useEffect, useRef } from "react";
 import { Form, Link, useFetcher } from "react-router";
 import type { SheetPage } from "#app/intake/sheetPage.server.ts";
 import type { ReadRowLine, RefusedRow } from "#app/intake/sheetPage.ts";
@@ -17,7 +18,7 @@ import { Prose } from "#app/ui/Prose.tsx";
 import { Fine, Section } from "#app/ui/Section.tsx";
 import { SpeciesName } from "#app/ui/SpeciesName.tsx";
 import { Symbol } from "#app/ui/Symbol.tsx";
-import { Table } from "#app/ui/Table.tsx";
+import { RowUnder, Table } from "#app/ui/Table.tsx";
 import type { RepairOutcome, SheetOutcome } from "./outcome.ts";
 
 type PageRows = NonNullable<SheetPage["rows"]>;
@@ -25,11 +26,12 @@ type PageRows = NonNullable<SheetPage["rows"]>;
 /** What became of the rows: counts, the refused ones with the cell that is wrong, what was read, and the way on. */
 export function Rows({ page, rows, failed }: { page: SheetPage; rows: PageRows; failed: SheetOutcome | undefined }) {
   const { counts } = rows;
+  useFocusOnNext(counts);
   const open = page.sheet.state === "read" && page.mayWork;
   return (
     <>
       <Section head="Rows" id="rows">
-        <p role="status">
+        <p role="status" id="rows-status" tabIndex={-1}>
           {count(counts.read)} of {count(page.sheet.rowsTotal)} read to {count(counts.values)} values of{" "}
           {count(rows.species.known + rows.species.new)} species, {count(rows.species.new)} of them new ·{" "}
           {count(counts.refused)} refused
@@ -99,7 +101,6 @@ function RefusedTable({ page, rows, open }: { page: SheetPage; rows: PageRows; o
                 <Prose text={column.name} />
               </th>
             ))}
-            <th scope="col">What is wrong</th>
           </tr>
         </thead>
         <tbody>
@@ -138,32 +139,34 @@ function Refused({
   open: boolean;
 }) {
   return (
-    <tr id={`row-${row.number}`} className={row.leftOut ? "text-soft" : undefined}>
-      <MarginMark kind={row.leftOut ? "remark" : "block"} word={row.leftOut ? "left out" : undefined} />
-      <th scope="row" className="figure">
-        {row.number}
-      </th>
-      {shown.map((column) => {
-        const cell = row.cells.find((one) => one.column === column.index);
-        const text = cell?.text ?? "";
-        return (
-          <td key={column.index} className={isFigure(column.means) ? "figure" : undefined}>
-            {open && cell?.wrong ? (
-              <CellForm page={page} row={row.number} column={column} text={text} />
-            ) : column.means === "formula" ? (
-              <Formula printed={text} />
-            ) : (
-              <Prose text={text} />
-            )}
-            {cell?.original !== null && cell?.original !== undefined && (
-              <span className="block fine">
-                was <Prose text={cell.original === "" ? "empty" : cell.original} />
-              </span>
-            )}
-          </td>
-        );
-      })}
-      <td className="min-w-[18rem]">
+    <>
+      <tr id={`row-${row.number}`} className={row.leftOut ? "text-soft" : undefined}>
+        <MarginMark kind={row.leftOut ? "remark" : "block"} word={row.leftOut ? "left out" : undefined} />
+        <th scope="row" className="figure">
+          {row.number}
+        </th>
+        {shown.map((column) => {
+          const cell = row.cells.find((one) => one.column === column.index);
+          const text = cell?.text ?? "";
+          return (
+            <td key={column.index} className={isFigure(column.means) ? "figure" : undefined}>
+              {open && cell?.wrong ? (
+                <CellForm page={page} row={row.number} column={column} text={text} />
+              ) : column.means === "formula" ? (
+                <Formula printed={text} />
+              ) : (
+                <Prose text={text} />
+              )}
+              {cell?.original !== null && cell?.original !== undefined && (
+                <span className="block fine">
+                  was <Prose text={cell.original === "" ? "empty" : cell.original} />
+                </span>
+              )}
+            </td>
+          );
+        })}
+      </tr>
+      <RowUnder columns={shown.length + 2} marked>
         {row.problems.map((problem, index) => (
           <div key={index}>
             <Prose text={problem.sentence} />{" "}
@@ -180,45 +183,91 @@ function Refused({
           </div>
         ))}
         {open && !row.leftOut && (
-          <Form method="post" className="inline">
+          <Form method="post">
             <input type="hidden" name="row" value={row.number} />
             <Button kind="text" name="intent" value="leave-out" aria-label={`Leave row ${row.number} out`}>
               Leave the row out
             </Button>
           </Form>
         )}
-      </td>
-    </tr>
+      </RowUnder>
+    </>
   );
 }
 
-/** The wrong cell itself, to be written over: Enter mends it. */
-function CellForm({ page, row, column, text }: { page: SheetPage; row: number; column: ShownColumn; text: string }) {
+/** What a form that mends a cell sends. */
+interface Mend {
+  sheetId: number;
+  row: number;
+  column: number;
+  was: string;
+}
+
+/**
+ * A form that mends a cell: in the background where there are scripts, by the page's own action where there are none.
+ * `children` is given whether it is on the way.
+ */
+function MendForm({
+  mend,
+  className,
+  children,
+}: {
+  mend: Mend;
+  className: string;
+  children: (pending: boolean) => React.ReactNode;
+}) {
   const fetcher = useFetcher<RepairOutcome>();
   const problem = fetcher.data && !fetcher.data.ok ? fetcher.data.sentence : null;
   return (
-    <fetcher.Form method="post" action={paths.resource(`sheets/${page.sheet.id}/repair`)} className="whitespace-nowrap">
-      <input type="hidden" name="row" value={row} />
-      <input type="hidden" name="column" value={column.index} />
-      <input type="hidden" name="was" value={text} />
-      <InlineField
-        key={text}
-        name="becomes"
-        label={`Row ${row}, ${column.name}`}
-        defaultValue={text}
-        figure={isFigure(column.means)}
-        autoComplete="off"
-        wrong
-      />
-      <Button kind="text" pending={fetcher.state !== "idle"} aria-label={`Mend row ${row}, ${column.name}`}>
-        mend
-      </Button>
+    <Form
+      method="post"
+      className={className}
+      onSubmit={(event) => {
+        event.preventDefault();
+        void fetcher.submit(event.currentTarget, {
+          method: "post",
+          action: paths.resource(`sheets/${mend.sheetId}/repair`),
+        });
+      }}
+    >
+      <input type="hidden" name="intent" value="repair" />
+      <input type="hidden" name="row" value={mend.row} />
+      <input type="hidden" name="column" value={mend.column} />
+      <input type="hidden" name="was" value={mend.was} />
+      {children(fetcher.state !== "idle")}
       {problem && (
         <span className="block whitespace-normal is-block" role="alert">
           {problem}
         </span>
       )}
-    </fetcher.Form>
+    </Form>
+  );
+}
+
+/** The wrong cell itself, to be written over: Enter mends it. */
+function CellForm({ page, row, column, text }: { page: SheetPage; row: number; column: ShownColumn; text: string }) {
+  return (
+    <MendForm mend={{ sheetId: page.sheet.id, row, column: column.index, was: text }} className="whitespace-nowrap">
+      {(pending) => (
+        <>
+          <InlineField
+            key={text}
+            name="becomes"
+            label={`Row ${row}, ${column.name}`}
+            defaultValue={text}
+            figure={isFigure(column.means)}
+            size={Math.min(Math.max(text.length + 2, 8), 32)}
+            autoComplete="off"
+            data-wrong-cell
+            wrong
+          />
+          <span className="ml-1.5" />
+          <Button kind="text" pending={pending} aria-label={`Mend row ${row}, ${column.name}`}>
+            mend
+          </Button>
+        </>
+      )}
+    </MendForm>
   );
 }
 
@@ -234,25 +283,40 @@ function RepairButton({
   repair: Repair;
   isFormula: boolean;
 }) {
-  const fetcher = useFetcher<RepairOutcome>();
   const was = repair.column === ANSWER ? (row.answer ?? "") : (row.cells[repair.column]?.text ?? "");
   return (
-    <fetcher.Form method="post" action={paths.resource(`sheets/${page.sheet.id}/repair`)} className="inline mr-3">
-      <input type="hidden" name="row" value={row.number} />
-      <input type="hidden" name="column" value={repair.column} />
-      <input type="hidden" name="was" value={was} />
-      <input type="hidden" name="becomes" value={repair.text} />
-      <Button kind="text" pending={fetcher.state !== "idle"}>
-        {isFormula ? (
-          <>
-            Take <Formula printed={repair.text} />
-          </>
-        ) : (
-          <Prose text={repair.label} />
-        )}
-      </Button>
-    </fetcher.Form>
+    <MendForm
+      mend={{ sheetId: page.sheet.id, row: row.number, column: repair.column, was }}
+      className="mr-3 inline-block"
+    >
+      {(pending) => (
+        <>
+          <input type="hidden" name="becomes" value={repair.text} />
+          <Button kind="text" pending={pending}>
+            {isFormula ? (
+              <>
+                Take <Formula printed={repair.text} />
+              </>
+            ) : (
+              <Prose text={repair.label} />
+            )}
+          </Button>
+        </>
+      )}
+    </MendForm>
   );
+}
+
+/** A row that was settled leaves the page and takes the focus with it: it goes on to the next wrong cell. */
+function useFocusOnNext(counts: PageRows["counts"]): void {
+  const before = useRef(counts);
+  useEffect(() => {
+    if (before.current.refused === counts.refused && before.current.leftOut === counts.leftOut) return;
+    before.current = counts;
+    if (document.activeElement !== null && document.activeElement !== document.body) return;
+    const next = document.querySelector<HTMLElement>("[data-wrong-cell]") ?? document.getElementById("rows-status");
+    next?.focus();
+  }, [counts]);
 }
 
 function ReadTable({ rows }: { rows: PageRows }) {

@@ -38,6 +38,7 @@ export function UploadForm({ wrong }: { wrong?: string | undefined }) {
             id={field.id}
             name={field.name}
             type="file"
+            className="max-w-full file:mr-3 file:border file:border-solid file:border-ink file:bg-transparent file:px-3 file:py-1 file:font-medium file:text-ink"
             accept=".csv,.tsv,.txt,text/csv,text/tab-separated-values,text/plain"
             required
             aria-describedby={wrong ? `${field.descriptionId} ${field.errorId}` : field.descriptionId}
