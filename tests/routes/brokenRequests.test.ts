@@ -26,7 +26,7 @@ beforeAll(() => {
   makeApplicationUse(server.database.app);
 });
 
-const all = await routePatterns();
+const all = routePatterns();
 const BOUNDARY = "multipart/form-data; boundary=b";
 
 const bodies: readonly [what: string, type: string | null, body: string][] = [
@@ -42,13 +42,18 @@ const bodies: readonly [what: string, type: string | null, body: string][] = [
   ["NUL in a field", "application/x-www-form-urlencoded", "intent=a%00b&email=a%00b&name=%00&password=%00"],
 ];
 
+/** Programs come with their key, people with their cookie. */
+function asking(address: string): Record<string, string> {
+  return isApiPattern(address) ? { Authorization: `Bearer ${key}` } : { Cookie: cookie };
+}
+
 async function statusOf(address: string, type: string | null, body: string, more: Record<string, string> = {}) {
-  const asking = address.startsWith("/api/") ? { Authorization: `Bearer ${key}` } : { Cookie: cookie };
+  const headers = { ...asking(address), ...(type ? { "Content-Type": type } : {}), ...more };
   const answer = await server.fetch(address, {
     method: "POST",
     // Bytes, so that fetch adds no type of its own.
     body: new TextEncoder().encode(body),
-    headers: { ...asking, ...(type ? { "Content-Type": type } : {}), ...more },
+    headers,
   });
   await answer.arrayBuffer();
   return answer.status;
@@ -76,8 +81,7 @@ describe.each(all.filter((pattern) => pattern !== "/sign-out").map((pattern) => 
   });
 
   test.each(["PUT", "PATCH", "DELETE", "OPTIONS", "HEAD"])("answers %s without a fault", async (method) => {
-    const asking = isApiPattern(pattern) ? { Authorization: `Bearer ${key}` } : { Cookie: cookie };
-    const answer = await server.fetch(address, { method, headers: asking });
+    const answer = await server.fetch(address, { method, headers: asking(address) });
     await answer.arrayBuffer();
     expect(answer.status).toBeLessThan(500);
   });

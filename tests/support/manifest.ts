@@ -2,14 +2,14 @@ import type { RouteConfigEntry } from "@react-router/dev/routes";
 import routes from "#app/routes.ts";
 
 /** The address patterns of every route in the manifest, for tests that walk all of them. */
-export async function routePatterns(): Promise<string[]> {
+export function routePatterns(): string[] {
   const collect = (entries: readonly RouteConfigEntry[], base: string): string[] =>
     entries.flatMap((entry) => {
       const here = entry.path === undefined ? base : `${base}/${entry.path}`;
       const own = entry.index === true || entry.path !== undefined ? [here === "" ? "/" : here] : [];
       return [...own, ...collect(entry.children ?? [], here)];
     });
-  return [...new Set(collect(await routes, ""))];
+  return [...new Set(collect(routes, ""))];
 }
 
 /** What stands in the place of a parameter. Nothing is there: who may come in finds nothing, and nothing is changed. */
