@@ -6,6 +6,7 @@ import { route, type RouteConfig } from "@react-router/dev/routes";
  */
 export default [
   // The table, as of an edition
+  route("editions/:edition/table", "routes/table.tsx"),
 
   // Sheets
   route("sheets", "routes/sheets.tsx"),

@@ -43,6 +43,9 @@ const revisionForms: RouteDoors = {
  * `tests/routes/access.test.ts` holds them against, as nobody, as each role and with keys.
  */
 export const routePermissions: Readonly<Record<string, RouteDoors>> = {
+  // The table, as of an edition
+  "/editions/:edition/table": reads("table:read"),
+
   // Sheets
   "/sheets": reads("sheet:read"),
   "/sheets/new": both("sheet:work"),
