@@ -109,6 +109,9 @@ await main(async () => {
       say(`\nTablewright is running at ${env.PUBLIC_URL} (started in ${seconds} s). Ctrl-C stops it.`);
       if (demo) {
         say("This is the demo: DATABASE_URL is not set, so it keeps its own database on this machine.");
+        if (!["127.0.0.1", "::1", "localhost"].includes(host)) {
+          say("HOST lets other machines in, and the passwords below are known to everybody who has this program.");
+        }
         say(`Sign in as one of these people of the fictional Calder Point Laboratory:\n${await demoAccounts()}`);
         if (!process.env.SMTP_URL) say(`Letters are not sent; read them at ${env.PUBLIC_URL}/inbox`);
       } else {
