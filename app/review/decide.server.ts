@@ -8,6 +8,7 @@ import { findAccount } from "#app/people/people.queries.server.ts";
 import { findingsOf } from "./examine.server.ts";
 import {
   findFinding,
+  findGroundless,
   findLineBases,
   findLines,
   findLinesWithHandOf,
@@ -221,6 +222,7 @@ export async function closeReview(acting: Acting, id: number): Promise<{ accepte
       );
     const own = await findLinesWithHandOf(id, acting.person.id, trx);
     if (own.size > 0) throw new Forbidden("You had a hand in this revision, so somebody else closes its review.");
+    await demandGround(id, trx);
     const accepted = lines.filter((line) => line.state === "accepted").length;
     const declined = lines.length - accepted;
     await updateRevisionState(
@@ -242,4 +244,24 @@ export async function closeReview(acting: Acting, id: number): Promise<{ accepte
     record({ act: "revision.decided", objectId: id, detail: { accepted, declined } });
     return { accepted, declined };
   });
+}
+
+/**
+ * A decided revision is final, so an accepted value whose species or source was declined could never be published, and
+ * would hold up every edition after it.
+ */
+async function demandGround(id: number, trx: ActScope["trx"]): Promise<void> {
+  const groundless = await findGroundless(id, trx);
+  const species = groundless.filter((one) => one.lacksSpecies).length;
+  const sources = groundless.filter((one) => one.lacksSource).length;
+  if (species > 0) {
+    throw new Refused(
+      `${species === 1 ? "One accepted value belongs" : `${species} accepted values belong`} to a species that is not accepted. Accept the line that names the species, or decline its values.`,
+    );
+  }
+  if (sources > 0) {
+    throw new Refused(
+      `${sources === 1 ? "One accepted value rests" : `${sources} accepted values rest`} on a source that is not accepted. Accept the line of the source, or decline the values that rest on it.`,
+    );
+  }
 }

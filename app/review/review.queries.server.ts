@@ -672,6 +672,38 @@ export async function insertSetAside(
     .execute();
 }
 
+/**
+ * Accepted values of a revision that would stand on nothing: whose species or source neither stands, nor is accepted
+ * beside them, nor waits in a revision that is decided.
+ */
+export async function findGroundless(
+  revisionId: number,
+  db: Database,
+): Promise<{ speciesId: string; lacksSpecies: boolean; lacksSource: boolean }[]> {
+  const result = await sql<{ speciesId: string; lacksSpecies: boolean; lacksSource: boolean }>`
+    with accepted as (
+      select l.species_id, v.content->>'sourceId' as source_id
+        from revision_line l
+        join lateral (select content from line_version where line_id = l.id order by version desc limit 1) v on true
+       where l.revision_id = ${revisionId} and l.state = 'accepted' and l.kind = 'value'
+    ), sure as (
+      select l.kind, l.species_id, l.source_id
+        from revision_line l
+        join revision r on r.id = l.revision_id
+       where l.state = 'accepted' and l.kind in ('detail', 'source') and (l.revision_id = ${revisionId} or r.state = 'decided')
+    ), judged as (
+      select a.species_id as "speciesId",
+             not exists (select from species_detail d where d.species_id = a.species_id and d.until is null)
+               and not exists (select from sure where sure.kind = 'detail' and sure.species_id = a.species_id) as "lacksSpecies",
+             not exists (select from source_detail s where s.source_id = a.source_id and s.until is null)
+               and not exists (select from sure where sure.kind = 'source' and sure.source_id = a.source_id) as "lacksSource"
+        from accepted a
+    )
+    select * from judged where "lacksSpecies" or "lacksSource"
+  `.execute(db);
+  return result.rows;
+}
+
 /** Opens the next edition; the database refuses when the expected number has moved. */
 export async function openEdition(
   edition: {

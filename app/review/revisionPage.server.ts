@@ -15,6 +15,7 @@ import {
   findNewestExamination,
   findRevision,
   findVersions,
+  type LineBase,
   type LineRow,
 } from "./review.queries.server.ts";
 import { findLinesWithBases } from "./revise.server.ts";
@@ -180,7 +181,7 @@ export async function findPageFindings(revisionId: number): Promise<PageFinding[
   }));
 }
 
-function pageLine(line: LineRow & { overtaken: boolean }): PageLine {
+function pageLine(line: LineRow & { overtaken: boolean; base?: LineBase | undefined }): PageLine {
   return {
     id: line.id,
     position: line.position,
@@ -196,6 +197,7 @@ function pageLine(line: LineRow & { overtaken: boolean }): PageLine {
     content: line.content,
     // A line that was decided has its answer; what comes into its place later is no concern of it.
     overtaken: line.overtaken && line.state === "open",
+    behind: line.state === "open" && line.base?.waitingVersion ? line.base.waitingRevision : null,
   };
 }
 

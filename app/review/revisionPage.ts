@@ -59,6 +59,8 @@ export interface PageLine {
   version: number;
   content: LineContent;
   overtaken: boolean;
+  /** Revision whose accepted line for the same place must be published first; null where the place is free. */
+  behind: number | null;
 }
 
 export interface PageFinding {
@@ -246,6 +248,8 @@ export interface LineView {
   own: boolean;
   /** What happened to what the line was written against; null while it still stands. */
   overtaken: string | null;
+  /** Revision whose accepted line for the same place must be published before this one can be accepted. */
+  behind: number | null;
   decision: DecisionView | null;
   voided: readonly DecisionView[];
   /** All versions, oldest first, where there is more than one. */
@@ -352,8 +356,8 @@ function groupLines(lines: readonly PageLine[], findings: readonly PageFinding[]
 }
 
 /**
- * The lines that can be accepted together without a look at each: open, not overtaken, not the viewer's own, of a species
- * (or source) of which no line blocks, asks for a look or was declined.
+ * The lines that can be accepted together without a look at each: open, not overtaken, not behind another accepted line,
+ * not the viewer's own, of a species (or source) of which no line blocks, asks for a look or was declined.
  */
 export function cleanLines(input: Pick<RevisionPageInput, "lines" | "findings" | "hands">): readonly SeenPair[] {
   return cleanOf(groupLines(input.lines, input.findings), input.hands);
@@ -363,7 +367,7 @@ function cleanOf(groups: readonly Grouped[], hands: ReadonlySet<string>): SeenPa
   return groups
     .filter((group) => group.rank === "clean" && group.lines.every((line) => line.state !== "declined"))
     .flatMap((group) => group.lines)
-    .filter((line) => line.state === "open" && !line.overtaken && !hands.has(line.id))
+    .filter((line) => line.state === "open" && !line.overtaken && line.behind === null && !hands.has(line.id))
     .map((line) => ({ lineId: line.id, versionId: line.versionId }));
 }
 
@@ -548,6 +552,7 @@ function lineView(
     rowNumber: line.rowNumber,
     own,
     overtaken: line.overtaken ? overtakenSentence(input.now.get(line.id), line.property) : null,
+    behind: line.overtaken ? null : line.behind,
     decision: current ? decisionView(current) : null,
     voided: decisions.filter((one) => one.void).map(decisionView),
     versions:
@@ -562,7 +567,7 @@ function lineView(
         : [],
     comments: (context.comments.get(line.id) ?? []).map(({ id, body, by, at }) => ({ id, body, by, at })),
     findings: findings.map((finding) => findingView(finding, group, context, ownSpecies)),
-    mayAccept: mayDecide && !line.overtaken && line.state !== "accepted",
+    mayAccept: mayDecide && !line.overtaken && line.behind === null && line.state !== "accepted",
     mayDecline: mayDecide && line.state !== "declined",
     mayEdit: writable && line.kind === "value",
     mayTakeOut: writable,

@@ -1,3 +1,5 @@
+import { Link } from "react-router";
+import { paths } from "#app/paths.ts";
 import { showDigits } from "#app/thermo/notation.ts";
 import { readDigits } from "#app/thermo/digits.ts";
 import type { FindingView, LineGroup, LineView, RevisionPage, SuggestionView } from "#app/review/revisionPage.ts";
@@ -32,6 +34,15 @@ export function LineUnder({ line, group, last, page }: LineUnderProps) {
         <Note kind="look" word="overtaken">
           <p>
             <Prose text={line.overtaken} /> It cannot be accepted until the steward writes it anew.
+          </p>
+        </Note>
+      )}
+      {line.behind !== null && (
+        <Note kind="remark" word="waits">
+          <p>
+            Another line for this place is accepted and waits in{" "}
+            <Link to={paths.revision(line.behind)}>revision {line.behind}</Link>. This one can be accepted once that is
+            published.
           </p>
         </Note>
       )}

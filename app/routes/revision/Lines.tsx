@@ -132,6 +132,7 @@ function Line({ line, group, last, page, tails }: LineProps) {
     line.versions.length > 0 ||
     line.voided.length > 0 ||
     line.overtaken !== null ||
+    line.behind !== null ||
     line.withdrawalReason !== null ||
     line.decision?.decision === "decline" ||
     (last && group.together.length > 0 && group.rank !== "clean");
@@ -206,6 +207,7 @@ function Line({ line, group, last, page, tails }: LineProps) {
 
 function Mark({ line }: { line: LineView }) {
   if (line.overtaken !== null && line.state === "open") return <MarginMark kind="look" word="overtaken" />;
+  if (line.behind !== null) return <MarginMark kind="remark" word="waits" />;
   if (line.mark === "block" || line.mark === "look") return <MarginMark kind={line.mark} />;
   if (line.hasSetAside) return <MarginMark kind="remark" word="set aside" />;
   return <MarginMark kind={line.mark === "remark" ? "remark" : null} />;
