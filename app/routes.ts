@@ -1,10 +1,14 @@
-import { route, type RouteConfig } from "@react-router/dev/routes";
+import { index, route, type RouteConfig } from "@react-router/dev/routes";
 
 /**
  * The whole address space, grouped as the site is. Module names follow the address with dots. Every page here has its
  * link function in `app/paths.ts`.
  */
 export default [
+  // What waits for whom, and what the find box leads to
+  index("routes/home.tsx"),
+  route("find", "routes/find.tsx"),
+
   // The table, as of an edition
   route("editions/:edition/table", "routes/table.tsx"),
 
@@ -39,6 +43,8 @@ export default [
   route("inbox", "routes/inbox.tsx"),
 
   // For programs: the API and its guide
+  route("api", "routes/api.guide.tsx"),
+  route("problems/:slug", "routes/problem.tsx"),
   route("api/v1/openapi.json", "routes/api.openapi.ts"),
   route("api/v1/editions", "routes/api.editions.ts"),
   route("api/v1/editions/:edition", "routes/api.edition.ts"),

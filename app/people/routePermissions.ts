@@ -43,6 +43,10 @@ const revisionForms: RouteDoors = {
  * `tests/routes/access.test.ts` holds them against, as nobody, as each role and with keys.
  */
 export const routePermissions: Readonly<Record<string, RouteDoors>> = {
+  // What waits for whom, and what the find box leads to
+  "/": reads("public"),
+  "/find": reads("table:read"),
+
   // The table, as of an edition
   "/editions/:edition/table": reads("table:read"),
 
@@ -81,6 +85,8 @@ export const routePermissions: Readonly<Record<string, RouteDoors>> = {
   "/inbox": reads("public"),
 
   // For programs: the API and its guide
+  "/api": reads("public"),
+  "/problems/:slug": reads("public"),
   "/api/v1/openapi.json": reads("public"),
   "/api/v1/editions": reads({ scope: "read" }),
   "/api/v1/editions/:edition": reads({ scope: "read" }),

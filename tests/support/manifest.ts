@@ -22,6 +22,7 @@ const samples: Readonly<Record<string, string>> = {
   key: "H2O(l)",
   revision: "999999",
   sheet: "999999",
+  slug: "not-found",
   source: "nothing",
   token: "A".repeat(43),
 };
