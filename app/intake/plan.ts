@@ -10,6 +10,7 @@ import { readKey } from "#app/thermo/speciesKey.ts";
 import { isLikeUnit, readUnit, type Unit, UNITS } from "#app/thermo/unit.ts";
 import type { DecodedSheet } from "./decode.ts";
 import { type HeadReading, propertyOf, readHead } from "./head.ts";
+import { isAbsent } from "./cells.ts";
 import { COLUMN_MEANS, type ColumnMeans, meaningWords } from "./meaning.ts";
 
 const propertyCode = z.enum(PROPERTIES as [Property, ...Property[]]);
@@ -285,7 +286,8 @@ function guessColumn(head: HeadReading, sample: readonly string[], decimalComma:
   }
   switch (head.means) {
     case "value":
-      if (share(isNumber) < 0.5 && sample.length > 0) {
+      // A few footnotes and ranges are repaired row by row; a column of words is not what its head says.
+      if (sample.length > 2 && share((cell) => /\d/.test(cell) || isAbsent(cell)) < 0.5) {
         return guess(
           "ignore",
           `the head names ${head.property ? propertyInfo[head.property].symbol : "a value"}, but most cells are no numbers`,

@@ -10,6 +10,7 @@ import { isConventionalZero } from "#app/thermo/referenceStates.ts";
 import { formatKey, readKey, type SpeciesIdentity } from "#app/thermo/speciesKey.ts";
 import type { Uncertainty } from "#app/thermo/uncertainty.ts";
 import { convert, isLikeUnit, readUnit, type Unit } from "#app/thermo/unit.ts";
+import { isAbsent } from "./cells.ts";
 import { readDescription } from "./description.ts";
 import { propertyOf } from "./head.ts";
 import type { ColumnMeans } from "./meaning.ts";
@@ -145,11 +146,6 @@ function problem(column: number | null, sentence: string, repairs: readonly Repa
   return { column, sentence, repairs };
 }
 
-/** Cells that say that there is no value; an empty cell is never a zero. */
-export function isAbsent(cell: string): boolean {
-  return /^(?:|[-–—−]+|\.{2,}|…|n\.?\s?[ad]\.?)$/i.test(cell.trim());
-}
-
 /** The reason why a row holds no values: blank, a title, the heads again, a footnote. Null when it should be read. */
 function whyNoValues(row: SheetRow, frame: SheetFrame): string | null {
   const { plan, heads } = frame;
@@ -189,6 +185,7 @@ function readIdentity(cell: CellOf, problems: CellProblem[], frame: SheetFrame):
   let phase: Phase | null = null;
   let label: string | null = null;
   let furtherForm = false;
+  const phaseNotes: string[] = [];
 
   if (keyed) {
     const key = cell("key");
@@ -200,7 +197,7 @@ function readIdentity(cell: CellOf, problems: CellProblem[], frame: SheetFrame):
     const formulaCell = cell("formula");
     formula = take(readFormula(formulaCell.text), formulaCell.column, problems, notes, (one) => one.printed);
     const phaseCell = cell("phase");
-    const read = take(readPhase(phaseCell.text), phaseCell.column, problems, notes, (one) => one.phase);
+    const read = take(readPhase(phaseCell.text), phaseCell.column, problems, phaseNotes, (one) => one.phase);
     phase = read?.phase ?? null;
     label = read?.label ?? null;
     furtherForm = read?.handbookCode !== undefined && /^cr?\d$/.test(read.handbookCode);
@@ -240,6 +237,8 @@ function readIdentity(cell: CellOf, problems: CellProblem[], frame: SheetFrame):
       ),
     );
   }
+  // That a further form should be named is settled once it is.
+  if (!(furtherForm && named)) notes.push(...phaseNotes);
   if (!formula || !phase || problems.length > 0) return null;
 
   if (formula.charge !== 0 && phase !== "aq" && phase !== "g") {

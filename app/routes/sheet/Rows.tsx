@@ -89,7 +89,7 @@ function RefusedTable({ page, rows, open }: { page: SheetPage; rows: PageRows; o
   const shown = page.columns.flatMap((column, index) => (column.means === "ignore" ? [] : [{ ...column, index }]));
   return (
     <>
-      <Table caption="Refused rows" marked>
+      <Table caption="Refused rows" marked even>
         <thead>
           <tr>
             <MarginHead />
