@@ -1,6 +1,6 @@
-import type { Database } from "#app/db/database.server.ts";
+import { type Database, database } from "#app/db/database.server.ts";
 import { enqueueJob } from "#app/jobs/enqueue.server.ts";
-import { insertLetter } from "./letters.queries.server.ts";
+import { findWaiting, insertLetter } from "./letters.queries.server.ts";
 
 /** A letter as an act hands it in. */
 export interface NewLetter {
@@ -37,6 +37,23 @@ export async function enqueueLetter(letter: NewLetter, trx: Database): Promise<v
     trx,
   );
   await enqueueJob("sendLetter", { letterId }, trx, { jobKey: `letter:${letterId}` });
+}
+
+/** Most letters taken up at one start; far more than a laboratory writes while its mail server is away. */
+const MOST_WAITING = 10_000;
+
+/**
+ * Hands every letter that was not sent yet to the worker again. The queue gives a letter up after some days without a
+ * mail server; it goes out once there is one.
+ *
+ * @returns how many there were
+ */
+export async function enqueueWaitingLetters(): Promise<number> {
+  const waiting = await findWaiting(MOST_WAITING, database());
+  for (const letterId of waiting) {
+    await enqueueJob("sendLetter", { letterId }, database(), { jobKey: `letter:${letterId}` });
+  }
+  return waiting.length;
 }
 
 function oneLine(text: string): string {

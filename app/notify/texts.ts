@@ -7,7 +7,7 @@ export interface AccountLetter {
   body: string;
 }
 
-export type LetterKind = "invitation" | "password-reset" | "password-changed" | "roles-changed";
+type LetterKind = "invitation" | "password-reset" | "password-changed";
 
 /**
  * Stands on a line of its own where the secret link goes. The link is made when the letter is sent, so that neither the

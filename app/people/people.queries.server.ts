@@ -39,12 +39,6 @@ export async function findAccountByEmail(email: string, db: Database): Promise<A
   return accounts(db).where("person.email", "=", email).executeTakeFirst();
 }
 
-/** A person by id, switched off or not, as other rooms know one. */
-export async function findPersonById(id: string, db: Database): Promise<Person | undefined> {
-  const account = await findAccount(id, db);
-  return account && asPerson(account);
-}
-
 /** Everybody, those who may sign in first, by name; at most 1000. */
 export async function findAllAccounts(db: Database): Promise<Account[]> {
   return accounts(db)
@@ -130,10 +124,6 @@ export async function replaceRoles(
 
 export async function updatePassword(personId: string, passwordHash: string, trx: Database): Promise<void> {
   await trx.updateTable("person").set({ password_hash: passwordHash }).where("id", "=", personId).execute();
-}
-
-export async function updateName(personId: string, name: string, trx: Database): Promise<void> {
-  await trx.updateTable("person").set({ name }).where("id", "=", personId).execute();
 }
 
 /** @param at when the account is switched off, or null to switch it on again */

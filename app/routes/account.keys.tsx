@@ -90,7 +90,7 @@ export default function KeysPage({ loaderData, actionData }: Route.ComponentProp
               where the program finds it.
             </p>
             <p className="my-2 break-all">
-              <code className="select-all font-semibold">{made.key}</code>
+              <b className="select-all">{made.key}</b>
             </p>
           </Note>
         </div>

@@ -1,6 +1,7 @@
+import { sql } from "kysely";
 import nodemailer from "nodemailer";
 import { describe, expect, test } from "vitest";
-import { enqueueLetter, type NewLetter } from "#app/notify/letters.server.ts";
+import { enqueueLetter, enqueueWaitingLetters, type NewLetter } from "#app/notify/letters.server.ts";
 import { compose, sendLetter } from "#app/notify/sendLetter.server.ts";
 import { useMailTransport } from "#app/notify/transport.server.ts";
 import { LINK_LINE } from "#app/notify/texts.ts";
@@ -68,6 +69,24 @@ describe("a letter", () => {
     useMailTransport(works);
     await sendLetter(id, noLink);
     expect(await state()).toMatchObject({ attempts: 2, last_error: null, sent_at: expect.any(Date) as unknown });
+  });
+
+  test("that the queue gave up goes out once there is a mail server", async () => {
+    await runJobs(database);
+    await enqueue({ subject: "Given up" });
+    // What many failures in a row come to: the queue no longer tries.
+    await sql`
+      update graphile_worker._private_jobs set attempts = max_attempts, last_error = 'no mail server'
+    `.execute(database.owner);
+    await expect(runJobs(database)).rejects.toThrow("no mail server");
+    expect(outbox.sent).toHaveLength(0);
+    expect(await enqueueWaitingLetters()).toBe(1);
+    await enqueueWaitingLetters();
+    // The one given up stays in the queue as it is; there is a new one beside it.
+    await sql`delete from graphile_worker._private_jobs where last_error is not null`.execute(database.owner);
+    await runJobs(database);
+    expect(outbox.sent.map(({ subject }) => subject)).toEqual(["Given up"]);
+    expect(await enqueueWaitingLetters()).toBe(0);
   });
 
   test("with a secret link is not sent once the account is switched off", async () => {

@@ -1,6 +1,3 @@
-import { readdir, readFile } from "node:fs/promises";
-import path from "node:path";
-import { simpleParser } from "mailparser";
 import type { SendMailOptions } from "nodemailer";
 import { afterAll, beforeAll, beforeEach } from "vitest";
 import { useMailTransport } from "#app/notify/transport.server.ts";
@@ -38,9 +35,11 @@ export function useOutbox(): Outbox {
       SESSION_SECRET: "only for tests, only for tests, only",
       PUBLIC_URL: SITE,
     });
+  });
+  beforeEach(() => {
+    sent.length = 0;
     useMailTransport({ sendMail: async (mail) => sent.push(mail) });
   });
-  beforeEach(() => void (sent.length = 0));
   afterAll(() => useMailTransport(undefined));
   return {
     sent,
@@ -57,28 +56,4 @@ export function linkIn(letter: ReadLetter): string {
   const address = /^https?:\/\/\S+$/m.exec(letter.text)?.[0];
   if (!address) throw new Error(`The letter "${letter.subject}" holds no link.`);
   return new URL(address).pathname;
-}
-
-/**
- * Waits for a letter in the folder of the demo's inbox, for tests that run against the built server.
- * @param timeout in milliseconds
- */
-export async function waitForLetter(
-  folder: string,
-  { to, subject }: { to: string; subject?: RegExp },
-  timeout = 10_000,
-): Promise<ReadLetter> {
-  const deadline = Date.now() + timeout;
-  do {
-    const files = (await readdir(folder).catch(() => [])).filter((file) => file.endsWith(".eml")).sort();
-    for (const file of files.reverse()) {
-      const mail = await simpleParser(await readFile(path.join(folder, file)));
-      const recipients = [mail.to ?? []].flat().flatMap((list) => list.value.map(({ address }) => address));
-      if (recipients.includes(to) && (subject === undefined || subject.test(mail.subject ?? ""))) {
-        return { to, subject: mail.subject ?? "", text: mail.text ?? "" };
-      }
-    }
-    await new Promise((resolve) => setTimeout(resolve, 100));
-  } while (Date.now() < deadline);
-  throw new Error(`No letter to ${to} arrived within ${timeout / 1000} s.`);
 }
