@@ -72,6 +72,15 @@ export async function findSheetForUpdate(id: number, trx: Database) {
 
 /** The newest sheets first, with their counts of rows. */
 export async function findSheets(limit: number, db: Database) {
+  return listedSheets(db).limit(limit).execute();
+}
+
+/** The newest sheets of one person that no revision was built from yet. */
+export async function findUnfinishedSheetsOf(personId: string, limit: number, db: Database) {
+  return listedSheets(db).where("s.uploaded_by", "=", personId).where("s.state", "<>", "built").limit(limit).execute();
+}
+
+function listedSheets(db: Database) {
   return sheets(db)
     .select((eb) => [
       eb
@@ -82,9 +91,7 @@ export async function findSheets(limit: number, db: Database) {
         .where("r.left_out_at", "is", null)
         .as("refused"),
     ])
-    .orderBy("s.id", "desc")
-    .limit(limit)
-    .execute();
+    .orderBy("s.id", "desc");
 }
 
 /** The newest sheet of the same bytes that is still being worked on. */

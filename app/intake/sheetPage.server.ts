@@ -15,6 +15,7 @@ import {
   findSheetBytes,
   findSheets,
   findSkipReasons,
+  findUnfinishedSheetsOf,
   type Sheet,
 } from "./intake.queries.server.ts";
 import { columnName } from "./plan.ts";
@@ -28,12 +29,23 @@ const REFUSED_ON_A_PAGE = 50;
 /** As many of the rows that were read are shown. */
 const READ_SHOWN = 25;
 const SHEETS_SHOWN = 200;
+const UNFINISHED_SHOWN = 20;
 
 /** The list of sheets, the newest first. */
 export async function findSheetsPage(acting: Acting) {
   demand(acting, "sheet:read");
   const found = await findSheets(SHEETS_SHOWN, database());
-  const sheets = found.map((sheet): ListedSheet => ({
+  return { sheets: found.map(listed), mayWork: may(acting.person.roles, "sheet:work") };
+}
+
+/** One's own sheets that no revision was built from yet, the newest first: what waits for their steward. */
+export async function findOwnUnfinishedSheets(acting: Acting): Promise<ListedSheet[]> {
+  demand(acting, "sheet:work");
+  return (await findUnfinishedSheetsOf(acting.person.id, UNFINISHED_SHOWN, database())).map(listed);
+}
+
+function listed(sheet: Awaited<ReturnType<typeof findSheets>>[number]): ListedSheet {
+  return {
     id: sheet.id,
     name: sheet.name,
     state: sheet.state,
@@ -43,8 +55,7 @@ export async function findSheetsPage(acting: Acting) {
     rowsDone: sheet.rowsDone,
     refused: Number(sheet.refused ?? 0),
     revisionId: sheet.revisionId,
-  }));
-  return { sheets, mayWork: may(acting.person.roles, "sheet:work") };
+  };
 }
 
 async function sheetOf(acting: Acting, id: number): Promise<Sheet> {

@@ -33,7 +33,7 @@ export async function readUpload(request: Request): Promise<UploadedSheet> {
       { maxFileSize: SHEET_LIMITS.bytes, maxFiles: 1, maxParts: 10, maxTotalSize: SHEET_LIMITS.bytes + OVERHEAD },
       async (file) => {
         if (file.fieldName === "sheet" && file.name !== "") {
-          files.push({ name: file.name, bytes: new Uint8Array(await file.arrayBuffer()) });
+          files.push({ name: unescapedName(file.name), bytes: new Uint8Array(await file.arrayBuffer()) });
         }
       },
     );
@@ -55,4 +55,9 @@ export async function readUpload(request: Request): Promise<UploadedSheet> {
     throw new Invalid(sentence, [{ pointer: "/sheet", detail: sentence }]);
   }
   return sheet;
+}
+
+/** Browsers write a quotation mark in a file's name as %22 and line ends as %0D and %0A (HTML, multipart/form-data). */
+function unescapedName(name: string): string {
+  return name.replace(/%(?:22|0D|0A)/g, (escape) => decodeURIComponent(escape));
 }

@@ -13,7 +13,6 @@ export const loader = forPage(async ({ request, params }: Route.LoaderArgs) => {
     headers: {
       "Content-Type": "text/csv; charset=utf-8",
       "Content-Disposition": attachment(`refused rows of ${name.replace(/\.\w{1,4}$/, "")}.csv`),
-      "X-Content-Type-Options": "nosniff",
       "Cache-Control": "private, no-store",
     },
   });

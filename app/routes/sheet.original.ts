@@ -10,11 +10,10 @@ export const loader = forPage(async ({ request, params }: Route.LoaderArgs) => {
   const { name, bytes } = await findOriginal(acting, numberInPath(params.sheet));
   return new Response(new Uint8Array(bytes), {
     headers: {
-      // Never shown in the browser, whatever the bytes are.
+      // Never shown in the browser, whatever the bytes are; nosniff is on every answer of the server.
       "Content-Type": "application/octet-stream",
       "Content-Disposition": attachment(name),
       "Content-Length": String(bytes.length),
-      "X-Content-Type-Options": "nosniff",
       "Cache-Control": "private, no-store",
     },
   });
