@@ -4,11 +4,11 @@ import { Invalid, Refused, TooMany } from "#app/http/errors.ts";
 import { enqueueLetter } from "#app/notify/letters.server.ts";
 import { passwordChangedLetter, resetLetter } from "#app/notify/texts.ts";
 import { limits, sourceOf } from "./limits.ts";
-import { insertTry } from "./limits.queries.server.ts";
+import { deleteTries, insertTry } from "./limits.queries.server.ts";
 import { findLink, type LinkTable, updateAllUsed, updateUsed } from "./links.queries.server.ts";
 import { RESET_MINUTES } from "./links.server.ts";
 import { hashPassword, isPassword } from "./passwordHash.server.ts";
-import { passwordProblem } from "./passwordRules.ts";
+import { LONGEST_PASSWORD, passwordProblem } from "./passwordRules.ts";
 import { type Account, findAccount, findAccountByEmail, updatePassword } from "./people.queries.server.ts";
 import { demand } from "./permissions.ts";
 import type { Acting } from "./person.ts";
@@ -60,12 +60,16 @@ export async function changePassword(
   const account = await findAccount(acting.person.id, database());
   if (!account) throw new Refused("This account is no longer there.");
   // Whoever found an open session must not be able to try passwords without end.
-  const wait = await insertTry(limits.signInAccount, [account.email, sourceOf(address)], new Date(), database());
+  const now = new Date();
+  const tried = [account.email, sourceOf(address)];
+  const wait = await insertTry(limits.signInAccount, tried, now, database());
   if (wait > 0) throw new TooMany(`That was too many tries. Wait ${minutes(wait)}, then try again.`, wait);
-  if (!(await isPassword(account.passwordHash, passwords.current))) {
+  const tooLong = [...passwords.current].length > LONGEST_PASSWORD;
+  if (tooLong || !(await isPassword(account.passwordHash, passwords.current))) {
     const detail = "This is not your current password.";
     throw new Invalid(detail, [{ pointer: "/current", detail }]);
   }
+  await deleteTries(limits.signInAccount, tried, now, database());
   checkNewPassword(passwords.password, account);
   const passwordHash = await hashPassword(passwords.password);
   await act(acting, async (scope) => {

@@ -29,7 +29,11 @@ export async function beginSession(
 ): Promise<string> {
   const { text, hash } = makeSecret();
   await act({ person, apiKeyId: null, requestId: from.requestId }, async ({ trx, record }) => {
-    if (from.formerToken) await updateEnded(person.id, { only: hashSecret(from.formerToken) }, now, trx);
+    // Whosever it was: the browser no longer has its token, so nobody could sign out of it.
+    const former = from.formerToken ? await findSession(hashSecret(from.formerToken), trx) : undefined;
+    if (from.formerToken && former) {
+      await updateEnded(former.person.id, { only: hashSecret(from.formerToken) }, now, trx);
+    }
     const others = await findSessions(person.id, { seenAfter: new Date(now.getTime() - IDLE_LIMIT), now }, trx);
     for (const { id } of others.slice(MOST_SESSIONS - 1)) {
       await updateEnded(person.id, { only: Buffer.from(id, "hex") }, now, trx);

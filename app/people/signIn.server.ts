@@ -57,7 +57,8 @@ export async function checkCredentials(
   const account = address === "" ? undefined : await findAccountByEmail(address, database());
   const usable = account && !account.switchedOffAt ? account : undefined;
   // The hash is worked out in any case, so that the time does not tell whether there is an account.
-  const right = await isPassword(usable?.passwordHash ?? null, password.slice(0, LONGEST_PASSWORD * 2));
+  const tooLong = [...password].length > LONGEST_PASSWORD;
+  const right = tooLong ? await isPassword(null, "") : await isPassword(usable?.passwordHash ?? null, password);
   if (!usable || !right) {
     log.warn({ event: "sign-in-failed", requestId: from.requestId, address: from.address, personId: account?.id });
     await act(null, async ({ record }) => {

@@ -62,6 +62,13 @@ describe("a session", () => {
     expect(await findHolder(second)).not.toBeNull();
   });
 
+  test("of another person, left open in the same browser, ends when somebody signs in over it", async () => {
+    const [analyst, other] = [await makePerson("Before", "analyst"), await makePerson("After", "analyst")];
+    const left = await begin(analyst);
+    await beginSession(other.person, { ...from, formerToken: left });
+    expect(await findHolder(left)).toBeNull();
+  });
+
   test("beyond the allowed number ends the one unused for longest", async () => {
     const analyst = await makePerson("Everywhere", "analyst");
     const tokens: string[] = [];

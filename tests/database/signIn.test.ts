@@ -101,6 +101,15 @@ describe("signing in", () => {
     expect(median(unknown) / median(known)).toBeLessThan(1.4);
   });
 
+  test("with more than the longest password fails, also when it begins with the right one", async () => {
+    const longest = "seven 𝛥 grey kettles ".repeat(13).slice(0, 256);
+    const email = "longest@calderpoint.example";
+    const id = await insertPerson({ email, name: "Longest", passwordHash: await hashPassword(longest) }, database.app);
+    await expect(checkCredentials({ email, password: longest }, from("203.0.113.5"))).resolves.toMatchObject({ id });
+    const longer = `${longest}${"x".repeat(300)}`;
+    await expect(checkCredentials({ email, password: longer }, from("203.0.113.5"))).rejects.toThrow(SignInFailed);
+  });
+
   test("puts a failure on record without what was typed", async () => {
     const { person } = await makePerson("Recorded Failure", "analyst");
     await expect(
