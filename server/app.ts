@@ -1,4 +1,5 @@
 import { randomBytes, randomUUID } from "node:crypto";
+import type { ServerResponse } from "node:http";
 import path from "node:path";
 import { createRequestHandler } from "@react-router/express";
 import compression from "compression";
@@ -8,7 +9,7 @@ import * as build from "virtual:react-router/server-build";
 import { config } from "#app/config.server.ts";
 import { countPending } from "#app/db/schema.queries.server.ts";
 import { database } from "#app/db/database.server.ts";
-import { PROBLEM_TYPE, problemKinds, problemOf } from "#app/http/problem.ts";
+import { explained, PROBLEM_TYPE, problemKinds, problemOf } from "#app/http/problem.ts";
 import { type RequestFacts, requestContext } from "#app/http/requestContext.server.ts";
 import { stopping } from "#app/http/stopping.server.ts";
 import { log } from "#app/log.server.ts";
@@ -81,11 +82,19 @@ const seeFromOutside: RequestHandler = (request, _response, next) => {
   next();
 };
 
+/** Written without Express, which would add a charset that JSON does not have. */
+function sendProblem(response: ServerResponse, problem: Problem): void {
+  response.statusCode = problem.status;
+  response.setHeader("Content-Type", PROBLEM_TYPE).end(JSON.stringify(problem));
+}
+
 /** The framework's own way of fetching a page's data must not reach the API, which answers in its own form only. */
 const keepFrameworkFromApi: RequestHandler = (request, response, next) => {
   if (!request.path.startsWith("/api/") || !request.path.endsWith(".data")) return next();
-  const problem = problemOf("not-found", "There is nothing at this address.", config().publicUrl, facts(request).id);
-  response.status(404).type(PROBLEM_TYPE).send(JSON.stringify(problem));
+  sendProblem(
+    response,
+    problemOf("not-found", "There is nothing at this address.", config().publicUrl, facts(request).id),
+  );
 };
 
 /** Alive: answers without touching anything else. */
@@ -120,12 +129,13 @@ const answerError: ErrorRequestHandler = (error: unknown, request, response, _ne
   }
   const kind = status === 500 ? "unexpected" : status === 404 ? "not-found" : "bad-request";
   response.status(status).set("Cache-Control", "no-store");
-  const { title, explanation } = problemKinds[kind]!;
+  const { title } = problemKinds[kind]!;
+  const sentence = explained(problemKinds[kind]!);
   if (isApi(request.originalUrl)) {
-    const problem = problemOf(kind, explanation, config().publicUrl, requestId);
-    response.type(PROBLEM_TYPE).send(JSON.stringify({ ...problem, status }));
+    const problem = problemOf(kind, sentence, config().publicUrl, requestId);
+    sendProblem(response, { ...problem, status });
   } else {
-    response.type("text/plain").send(`${title}. ${explanation}\nRequest ${requestId ?? "unknown"}\n`);
+    response.type("text/plain").send(`${title}. ${sentence}\nRequest ${requestId ?? "unknown"}\n`);
   }
 };
 

@@ -102,6 +102,9 @@ describe("isForeign", () => {
   test.each([
     ["/api/v1/sheets", false],
     ["/apiary", true],
+    // The guide for programs is a page.
+    ["/api", true],
+    ["/api?to=x", true],
   ])("POST %s from another origin", (target, foreign) => {
     expect(isForeign(head({ method: "POST", target, origin: "https://elsewhere.example" }), HOME)).toBe(foreign);
   });

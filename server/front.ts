@@ -41,9 +41,9 @@ function decodes(text: string): boolean {
   }
 }
 
-/** Whether the address is one for programs, so that a refusal is a problem document. */
+/** Whether the address is one for programs, so that a refusal is a problem document. "/api" itself is their guide, a page. */
 export function isApi(target: string): boolean {
-  return /^\/api(?:\/|\?|$)/.test(target);
+  return /^\/api\/+[^/?]/.test(target);
 }
 
 const SAFE_METHODS = new Set(["GET", "HEAD", "OPTIONS"]);

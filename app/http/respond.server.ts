@@ -2,7 +2,7 @@ import { data } from "react-router";
 import { config } from "#app/config.server.ts";
 import { log } from "#app/log.server.ts";
 import { BadRequest, DomainError, NotFound, TooMany, Unauthenticated } from "./errors.ts";
-import { type Problem, PROBLEM_TYPE, problemFrom, problemKinds, problemOf } from "./problem.ts";
+import { explained, type Problem, PROBLEM_TYPE, problemFrom, problemKinds, problemOf } from "./problem.ts";
 
 /** What a page's error boundary gets: `error.data` of a route error response. */
 export interface PageProblem {
@@ -69,7 +69,7 @@ export function apiError(error: unknown, requestId?: string): Response {
     return problemResponse(problemFrom(error, publicUrl, requestId), headersFor(error));
   }
   log.error({ event: "unexpected-error", requestId, err: error }, "an API request ended in an unexpected error");
-  return problemResponse(problemOf("unexpected", problemKinds["unexpected"]!.explanation, publicUrl, requestId));
+  return problemResponse(problemOf("unexpected", explained(problemKinds["unexpected"]!), publicUrl, requestId));
 }
 
 /** For the API: 405 with the methods that the address does answer. */

@@ -80,8 +80,7 @@ export async function findRevisionForUpdate(id: number, trx: Database) {
   return findRevision(id, trx);
 }
 
-/** Revisions in the given states, newest first, with counts of lines and of the findings of the newest examination. */
-export function findRevisionsByState(states: readonly RevisionState[], limit: number, db: Database) {
+function listedRevisions(db: Database) {
   return db
     .selectFrom("revision as r")
     .innerJoin("person as p", "p.id", "r.made_by")
@@ -128,8 +127,28 @@ export function findRevisionsByState(states: readonly RevisionState[], limit: nu
         .as("publishedIn"),
     ])
     .$narrowType<{ state: RevisionState }>()
+    .orderBy("r.id", "desc");
+}
+
+/** Revisions in the given states, newest first, with counts of lines and of the findings of the newest examination. */
+export function findRevisionsByState(states: readonly RevisionState[], limit: number, db: Database) {
+  return listedRevisions(db)
     .where("r.state", "in", [...states])
-    .orderBy("r.id", "desc")
+    .limit(limit)
+    .execute();
+}
+
+/** The same of one person's own, in any state. */
+export function findRevisionsOf(personId: string, limit: number, db: Database) {
+  return listedRevisions(db).where("r.made_by", "=", personId).limit(limit).execute();
+}
+
+/** Revisions whose title holds a text, or which have this number; newest first. */
+export function findRevisionsLike(text: string, number: number | null, limit: number, db: Database) {
+  // The text is looked for as it is: % and _ stand for themselves.
+  const part = `%${text.replace(/[\\%_]/g, "\\$&")}%`;
+  return listedRevisions(db)
+    .where((eb) => eb.or([eb("r.title", "ilike", part), ...(number === null ? [] : [eb("r.id", "=", number)])]))
     .limit(limit)
     .execute();
 }
@@ -435,6 +454,52 @@ export function findMoves(revisionId: number, db: Database) {
     .where("m.revision_id", "=", revisionId)
     .orderBy("m.id")
     .execute();
+}
+
+/** The newest step of each of these revisions. */
+export async function findNewestMoves(revisionIds: readonly number[], db: Database) {
+  if (revisionIds.length === 0) return [];
+  return movesWithTitles(db)
+    .distinctOn("m.revision_id")
+    .where("m.revision_id", "in", [...revisionIds])
+    .orderBy("m.revision_id")
+    .orderBy("m.id", "desc")
+    .execute();
+}
+
+/** The newest steps of all revisions, newest first. */
+export function findLatestMoves(limit: number, db: Database) {
+  return movesWithTitles(db).orderBy("m.id", "desc").limit(limit).execute();
+}
+
+function movesWithTitles(db: Database) {
+  return db
+    .selectFrom("revision_move as m")
+    .innerJoin("revision as r", "r.id", "m.revision_id")
+    .innerJoin("person as p", "p.id", "m.moved_by")
+    .select([
+      "m.revision_id as revisionId",
+      "r.title",
+      "m.came_from as from",
+      "m.went_to as to",
+      "m.round",
+      "m.moved_at as at",
+      "m.remark",
+      "p.name as by",
+    ])
+    .$narrowType<{ from: RevisionState; to: RevisionState }>();
+}
+
+/** The lines of the next edition, counted by revision, kind and whether something stands in their place. */
+export async function countNextLines(db: Database) {
+  const { rows } = await sql<{ revisionId: number; kind: LineContent["kind"]; replaces: boolean; n: number }>`
+    select l.revision_id as "revisionId", l.kind,
+           (l.against_row is not null or l.against_version is not null) as replaces, count(*)::int as n
+      from revision_line l
+      join revision r on r.id = l.revision_id
+     where l.state = 'accepted' and r.state = 'decided'
+     group by 1, 2, 3 order by 1`.execute(db);
+  return rows;
 }
 
 /** Inserts decisions; the triggers hold four eyes and move the lines. */

@@ -23,19 +23,24 @@ export async function findRevisionsPage(acting: Acting): Promise<RevisionsPage> 
     findRevisionsByState(["draft", "in_review", "returned"], MOST_OPEN, database()),
     findRevisionsByState(["decided", "withdrawn"], MOST_PAST, database()),
   ]);
-  const items: RevisionItem[] = [...open, ...past].map((row) => ({
-    ...row,
-    blocks: row.blocks ?? 0,
-    looks: row.looks ?? 0,
-    lines: Number(row.lines),
-    waiting: Number(row.waiting),
-    publishedIn: row.publishedIn === null ? null : Number(row.publishedIn),
-  }));
+  const items = [...open, ...past].map(asItem);
   const decides = may(roles, "revision:decide");
   const lists = revisionLists(items, decides);
   return {
     lists,
     may: { write: may(roles, "revision:write"), decide: decides, publish: may(roles, "edition:publish") },
     waiting: lists.find((list) => list.name === "waiting")?.items.length ?? 0,
+  };
+}
+
+/** A row of the list as pages show it. */
+export function asItem(row: Awaited<ReturnType<typeof findRevisionsByState>>[number]): RevisionItem {
+  return {
+    ...row,
+    blocks: row.blocks ?? 0,
+    looks: row.looks ?? 0,
+    lines: Number(row.lines),
+    waiting: Number(row.waiting),
+    publishedIn: row.publishedIn === null ? null : Number(row.publishedIn),
   };
 }

@@ -7,8 +7,8 @@ import type { ListName, RevisionItem } from "#app/review/revisionsPage.ts";
 import { ButtonLink } from "#app/ui/Button.tsx";
 import { EmptyPage } from "#app/ui/EmptyPage.tsx";
 import { count } from "#app/ui/figure.ts";
+import { FindingCounts } from "#app/ui/FindingCounts.tsx";
 import { Leaf } from "#app/ui/Leaf.tsx";
-import { InlineMark } from "#app/ui/MarginMark.tsx";
 import { Lede, Section } from "#app/ui/Section.tsx";
 import { Table } from "#app/ui/Table.tsx";
 import { Time } from "#app/ui/Time.tsx";
@@ -40,16 +40,6 @@ function since(item: RevisionItem): Date {
   if (item.state === "decided") return item.decidedAt ?? item.madeAt;
   if (item.state === "in_review" || item.state === "returned") return item.sentAt ?? item.madeAt;
   return item.madeAt;
-}
-
-function Findings({ item }: { item: RevisionItem }) {
-  if (item.blocks === 0 && item.looks === 0) return <span className="text-soft">all clean</span>;
-  return (
-    <span className="inline-flex flex-wrap gap-x-3">
-      {item.blocks > 0 && <InlineMark kind="block">{count(item.blocks)} block</InlineMark>}
-      {item.looks > 0 && <InlineMark kind="look">{count(item.looks)} to look at</InlineMark>}
-    </span>
-  );
 }
 
 /** One list. All lists have the same columns in the same places, so that the page reads as one table. */
@@ -111,7 +101,7 @@ function Outcome({ name, item }: { name: ListName; item: RevisionItem }) {
   }
   if (name === "waiting") return item.waiting === item.lines ? "all" : count(item.waiting);
   if (name === "declined") return "none";
-  return <Findings item={item} />;
+  return <FindingCounts blocks={item.blocks} looks={item.looks} />;
 }
 
 export default function RevisionsPage({ loaderData: { lists, may, waiting } }: Route.ComponentProps) {
