@@ -12,6 +12,10 @@ export default [
   // The table, as of an edition
   route("editions/:edition/table", "routes/table.tsx"),
 
+  // Editions
+  route("editions", "routes/editions.tsx"),
+  route("editions/:edition", "routes/edition.tsx"),
+
   // Sheets
   route("sheets", "routes/sheets.tsx"),
   route("sheets/new", "routes/sheets.new.tsx"),

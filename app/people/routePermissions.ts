@@ -50,6 +50,10 @@ export const routePermissions: Readonly<Record<string, RouteDoors>> = {
   // The table, as of an edition
   "/editions/:edition/table": reads("table:read"),
 
+  // Editions
+  "/editions": reads("table:read"),
+  "/editions/:edition": reads("table:read"),
+
   // Sheets
   "/sheets": reads("sheet:read"),
   "/sheets/new": both("sheet:work"),
