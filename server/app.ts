@@ -9,7 +9,7 @@ import * as build from "virtual:react-router/server-build";
 import { config } from "#app/config.server.ts";
 import { countPending } from "#app/db/schema.queries.server.ts";
 import { database } from "#app/db/database.server.ts";
-import { explained, PROBLEM_TYPE, problemKinds, problemOf } from "#app/http/problem.ts";
+import { explained, type Problem, PROBLEM_TYPE, problemKinds, problemOf } from "#app/http/problem.ts";
 import { type RequestFacts, requestContext } from "#app/http/requestContext.server.ts";
 import { stopping } from "#app/http/stopping.server.ts";
 import { log } from "#app/log.server.ts";

@@ -33,13 +33,13 @@ test("the application owns nothing, makes nothing and cannot touch what is appen
            (select count(*)::text from pg_class where relowner = r.oid) as owns
       from pg_roles r where rolname = 'tablewright_app'`.execute(database.owner);
   expect(rights.rows).toEqual([{ super: false, makes: false, owns: "0" }]);
-  const open = await sql<{ table: string; right: string }>`
-    select c.relname as table, p.right
-      from pg_class c, unnest(array['UPDATE', 'DELETE', 'TRUNCATE']) as p(right)
+  const open = await sql<{ table: string; change: string }>`
+    select c.relname as table, p.change
+      from pg_class c, unnest(array['UPDATE', 'DELETE', 'TRUNCATE']) as p(change)
      where c.relnamespace = 'public'::regnamespace and c.relkind = 'r'
        and c.relname in ('audit_entry', 'edition', 'species', 'source', 'line_version', 'line_decision', 'revision_move',
                          'comment', 'examination', 'finding', 'finding_set_aside', 'sheet_chunk', 'sheet_repair')
-       and has_table_privilege('tablewright_app', c.oid, p.right)
+       and has_table_privilege('tablewright_app', c.oid, p.change)
      order by 1, 2`.execute(database.owner);
   expect(open.rows).toEqual([]);
 });
