@@ -77,6 +77,13 @@ export function buildLines(rows: readonly SettledRow[], frame: BuildFrame): Buil
     if (base.version !== null || !bases.has(place)) bases.set(place, base);
   }
   const unnamed = new Map(frame.unnamed.map((one) => [one.speciesId, one]));
+  const rowsOf = new Map<string, SettledRow[]>();
+  for (const row of rows) {
+    if (row.reading.match.kind !== "new") continue;
+    const own = rowsOf.get(row.reading.match.key);
+    if (own) own.push(row);
+    else rowsOf.set(row.reading.match.key, [row]);
+  }
   const counts = { same: 0, newValues: 0, changedValues: 0 };
 
   if (frame.source.isNew) {
@@ -93,7 +100,9 @@ export function buildLines(rows: readonly SettledRow[], frame: BuildFrame): Buil
         charge: species.formula.charge,
         phase: species.phase,
       });
-      lines.push(line("detail", { speciesId }, detailOf(match.key, match.label, rows), row.number));
+      lines.push(
+        line("detail", { speciesId }, detailOf(match.key, match.label, rowsOf.get(match.key) ?? []), row.number),
+      );
     }
     const proposed = unnamed.get(speciesId);
     if (proposed) {
@@ -149,8 +158,7 @@ function line(
 }
 
 /** What a new species is called: the first name and CAS number that its rows give. */
-function detailOf(key: string, label: string | null, rows: readonly SettledRow[]): DetailContent {
-  const own = rows.filter((row) => row.reading.match.kind === "new" && row.reading.match.key === key);
+function detailOf(key: string, label: string | null, own: readonly SettledRow[]): DetailContent {
   const first = <T>(of: (species: MatchedReading["species"]) => T | null): T | null =>
     own.map((row) => of(row.reading.species)).find((one) => one !== null) ?? null;
   return {

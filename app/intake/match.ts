@@ -69,7 +69,7 @@ export function matchSpecies(
   const byComposition = new Map<string, Candidate[]>();
   for (const candidate of candidates) {
     const place = `${candidate.hill}|${candidate.charge}|${candidate.phase}`;
-    byComposition.set(place, [...(byComposition.get(place) ?? []), candidate]);
+    pushTo(byComposition, place, candidate);
   }
   return rows.map((row) => matchRow(row, byComposition.get(placeOf(row.reading)) ?? [], frame));
 }
@@ -165,7 +165,7 @@ export function settleRows(rows: readonly RowToSettle[], frame: SheetFrame): Mat
     outcomes.set(row.number, { outcome: "read", reading: row.reading });
     if (row.reading.match.kind === "new") {
       const place = placeOf(row.reading);
-      byPlace.set(place, [...(byPlace.get(place) ?? []), row]);
+      pushTo(byPlace, place, row);
     }
   }
   for (const group of byPlace.values()) settleNewSpecies(group, outcomes, frame);
@@ -244,7 +244,7 @@ function refuseDuplicates(rows: readonly RowToSettle[], outcomes: Map<number, Ma
     for (const value of values) {
       const place = `${match.kind === "known" ? match.speciesId : match.key}|${value.property}`;
       const entry = { number: row.number, property: value.property, key: match.key, column: value.column };
-      places.set(place, [...(places.get(place) ?? []), entry]);
+      pushTo(places, place, entry);
     }
   }
   for (const entries of places.values()) {
@@ -369,4 +369,10 @@ function speciesColumn(frame: SheetFrame): number {
 
 function listed(items: readonly string[]): string {
   return items.length < 2 ? items.join("") : `${items.slice(0, -1).join(", ")} and ${items.at(-1) ?? ""}`;
+}
+
+function pushTo<T>(lists: Map<string, T[]>, place: string, item: T): void {
+  const list = lists.get(place);
+  if (list) list.push(item);
+  else lists.set(place, [item]);
 }
