@@ -30,7 +30,7 @@ export interface OwnRevision extends RevisionItem {
 
 /** Something that happened in the review or to the table. */
 export type LatelyEntry =
-  | { kind: "revision"; at: Date; by: string; did: string; id: number; title: string }
+  | { kind: "revision"; at: Date; by: string; did: [before: string, after: string]; id: number; title: string }
   | { kind: "edition"; at: Date; by: string; number: number };
 
 export interface ReviewHome {

@@ -29,18 +29,18 @@ export function nextCounts(rows: readonly NextLineCount[]): NextCounts {
   };
 }
 
-/** What a step of a revision reads like after the name of who took it: "sent", "closed the review of". */
-export function moveInWords({ from, to }: { from: RevisionState; to: RevisionState }): string {
+/** A step of a revision in words around its number: "sent" revision 4 "to review". */
+export function moveInWords({ from, to }: { from: RevisionState; to: RevisionState }): [before: string, after: string] {
   switch (to) {
     case "in_review":
-      return from === "returned" ? "mended and sent again" : "sent to review";
+      return from === "returned" ? ["mended", "and sent it again"] : ["sent", "to review"];
     case "returned":
-      return "returned";
+      return ["returned", "with comments"];
     case "decided":
-      return "closed the review of";
+      return ["closed the review of", ""];
     case "withdrawn":
-      return "withdrew";
+      return ["withdrew", ""];
     case "draft":
-      return "began";
+      return ["began", ""];
   }
 }

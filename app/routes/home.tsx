@@ -85,16 +85,14 @@ export const loader = forPage(async ({ request }: Route.LoaderArgs) => {
     },
     record:
       record &&
-      record.entries
-        .slice(0, RECORD_SHOWN)
-        .map(({ number, at, act, person: who, objectKind, objectId }) => ({
-          number,
-          at,
-          act,
-          who,
-          objectKind,
-          objectId,
-        })),
+      record.entries.slice(0, RECORD_SHOWN).map(({ number, at, act, person: who, objectKind, objectId }) => ({
+        number,
+        at,
+        act,
+        who,
+        objectKind,
+        objectId,
+      })),
   };
 });
 
@@ -106,7 +104,7 @@ export default function HomePage({ loaderData: home }: Route.ComponentProps) {
   const { edition } = home;
   return (
     <Leaf
-      heading={home.works || home.people ? "What waits for you" : "The table today"}
+      heading={home.works ? "What waits for you" : "The table today"}
       lede={home.sentence || undefined}
       ribbon={edition ? <EditionRibbon edition={edition} /> : undefined}
     >
@@ -117,7 +115,7 @@ export default function HomePage({ loaderData: home }: Route.ComponentProps) {
         </EmptyPage>
       )}
       {home.toDecide && <ToDecide revisions={home.toDecide} />}
-      {home.sheets && <OwnSheets sheets={home.sheets} />}
+      {home.sheets && <OwnSheets sheets={home.sheets} alone={home.own?.length === 0} />}
       {home.own && <OwnRevisions revisions={home.own} next={home.next?.number ?? (edition?.number ?? 0) + 1} />}
       {home.next && home.works && <NextEdition next={home.next} />}
       {home.people && <PeopleSection people={home.people} />}

@@ -4,6 +4,7 @@ import { propertyInfo } from "#app/thermo/property.ts";
 import { ButtonLink } from "#app/ui/Button.tsx";
 import { signed } from "#app/ui/concise.ts";
 import { count } from "#app/ui/figure.ts";
+import { Prose } from "#app/ui/Prose.tsx";
 import { Section } from "#app/ui/Section.tsx";
 import { SpeciesName } from "#app/ui/SpeciesName.tsx";
 import { Symbol } from "#app/ui/Symbol.tsx";
@@ -26,10 +27,14 @@ export function EditionSection({ edition, keysInUse }: { edition: NonNullable<Ho
       {withdraws && (
         <p className="mb-3 max-w-[68ch]">
           It withdraws <Link to={paths.edition(withdraws.edition)}>edition {withdraws.edition}</Link>:{" "}
-          {withdraws.reason}
+          <Prose text={withdraws.reason} />
         </p>
       )}
-      {notes && <p className="mb-3 max-w-[68ch] whitespace-pre-line">{notes}</p>}
+      {notes && (
+        <p className="mb-3 max-w-[68ch] whitespace-pre-line">
+          <Prose text={notes} />
+        </p>
+      )}
       {changes.length > 0 && previous !== null && (
         <>
           <Table caption={`Values that edition ${number} changed`} even className="max-w-[56rem]">

@@ -28,7 +28,8 @@ export function Lately({ entries }: { entries: Home["lately"] }) {
                   </>
                 ) : (
                   <>
-                    {entry.by} {entry.did} <Link to={paths.revision(entry.id)}>revision {entry.id}</Link>
+                    {entry.by} {entry.did[0]} <Link to={paths.revision(entry.id)}>revision {entry.id}</Link>{" "}
+                    {entry.did[1]}
                     <span className="text-soft"> · {entry.title}</span>
                   </>
                 )}

@@ -14,11 +14,13 @@ import type { Home } from "../home.tsx";
 type Sheet = NonNullable<Home["sheets"]>[number];
 type Own = NonNullable<Home["own"]>[number];
 
-/** This steward's sheets that no revision was built from yet. */
-export function OwnSheets({ sheets }: { sheets: readonly Sheet[] }) {
+/** This steward's sheets that no revision was built from yet; `alone` when there are no revisions either. */
+export function OwnSheets({ sheets, alone }: { sheets: readonly Sheet[]; alone: boolean }) {
   if (sheets.length === 0) {
+    const bring = <ButtonLink to={paths.newSheet()}>Bring a sheet</ButtonLink>;
+    if (!alone) return <div className="actions">{bring}</div>;
     return (
-      <EmptyPage start={<ButtonLink to={paths.newSheet()}>Bring a sheet</ButtonLink>}>
+      <EmptyPage start={bring}>
         No sheet of yours is under way. One that you bring waits here until its revision is built.
       </EmptyPage>
     );
