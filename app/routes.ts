@@ -11,10 +11,15 @@ export default [
 
   // The table, as of an edition
   route("editions/:edition/table", "routes/table.tsx"),
+  route("editions/:edition/species/:key", "routes/species.tsx"),
 
   // Editions
   route("editions", "routes/editions.tsx"),
   route("editions/:edition", "routes/edition.tsx"),
+  route("editions/:edition/table.csv", "routes/table.download.ts"),
+  route("editions/:a/compare/:b", "routes/compare.tsx"),
+  route("editions/:edition/table.csv", "routes/edition.table.ts"),
+  route("editions/:edition/table.csv-metadata.json", "routes/edition.table.description.ts"),
 
   // Sheets
   route("sheets", "routes/sheets.tsx"),

@@ -229,6 +229,111 @@ function detailsAsOf(n: number, db: Database) {
     .orderBy("d.key");
 }
 
+// --- History ------------------------------------------------------------------
+
+/** `until` as it was known in edition n: a row that went out later still stood. */
+function untilAsOf(n: number) {
+  return sql<number | null>`case when v.until <= ${n} then v.until end`;
+}
+
+/**
+ * Every value that a species had up to edition n, oldest first within each property, with the people behind it. Looks at
+ * nothing later than n.
+ */
+export async function findValueHistory(n: number, speciesId: string, db: Database) {
+  const rows = await db
+    .selectFrom("table_value as v")
+    .innerJoin("line_version as lv", "lv.id", "v.line_version_id")
+    .innerJoin("revision_line as l", "l.id", "lv.line_id")
+    .innerJoin("person as writer", "writer.id", "lv.made_by")
+    .where("v.species_id", "=", speciesId)
+    .where("v.since", "<=", n)
+    .select([
+      "v.id as rowId",
+      "v.since",
+      "v.source_id as sourceId",
+      "l.revision_id as revisionId",
+      "writer.name as writer",
+    ])
+    .select((eb) => [
+      eb.ref("v.property").$castTo<Property>().as("property"),
+      eb.ref("v.value").$castTo<Digits>().as("digits"),
+      eb.ref("v.uncertainty").$castTo<Digits | null>().as("uncertaintyDigits"),
+      eb.ref("v.uncertainty_kind").$castTo<Uncertainty["kind"] | null>().as("uncertaintyKind"),
+      eb.ref("v.coverage_factor").$castTo<Digits | null>().as("coverageFactor"),
+      untilAsOf(n).as("until"),
+      // The acceptance that put it there is the newest decision on that version.
+      eb
+        .selectFrom("line_decision as d")
+        .innerJoin("person as p", "p.id", "d.decided_by")
+        .whereRef("d.line_version_id", "=", "lv.id")
+        .where("d.decision", "=", "accept")
+        .orderBy("d.id", "desc")
+        .limit(1)
+        .select("p.name")
+        .as("decider"),
+    ])
+    .orderBy("v.property")
+    .orderBy("v.since")
+    .execute();
+  return rows.map(withUncertainty);
+}
+
+/** A value that stood at some time up to an edition. */
+export type HistoricValue = Awaited<ReturnType<typeof findValueHistory>>[number];
+
+/** Withdrawals of a species' values up to edition n: in which edition, by which revision, and why. */
+export async function findWithdrawals(n: number, speciesId: string, db: Database) {
+  return db
+    .selectFrom("revision_line as l")
+    .innerJoin("line_version as lv", "lv.line_id", "l.id")
+    .where("l.species_id", "=", speciesId)
+    .where("l.kind", "=", "withdrawal")
+    .where("l.published_in", "<=", n)
+    .where((eb) =>
+      eb.not(
+        eb.exists(
+          eb
+            .selectFrom("line_version as newer")
+            .whereRef("newer.line_id", "=", "lv.line_id")
+            .whereRef("newer.version", ">", "lv.version")
+            .select("newer.id"),
+        ),
+      ),
+    )
+    .select(["l.revision_id as revisionId"])
+    .select((eb) => [
+      eb.ref("l.property").$castTo<Property>().as("property"),
+      eb.ref("l.published_in").$castTo<number>().as("edition"),
+      sql<string>`coalesce(lv.content->>'reason', '')`.as("reason"),
+    ])
+    .orderBy("l.published_in")
+    .execute();
+}
+
+/** What a species was called up to edition n, oldest first. */
+export async function findDetailHistory(n: number, speciesId: string, db: Database) {
+  return db
+    .selectFrom("species_detail as d")
+    .innerJoin("line_version as lv", "lv.id", "d.line_version_id")
+    .innerJoin("revision_line as l", "l.id", "lv.line_id")
+    .where("d.species_id", "=", speciesId)
+    .where("d.since", "<=", n)
+    .select([
+      "d.key",
+      "d.printed",
+      "d.label",
+      "d.name",
+      "d.cas",
+      "d.inchikey",
+      "d.synonyms",
+      "d.since",
+      "l.revision_id as revisionId",
+    ])
+    .orderBy("d.since")
+    .execute();
+}
+
 // --- Browsing ---------------------------------------------------------------
 
 export interface SpeciesOrder {

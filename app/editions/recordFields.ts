@@ -1,8 +1,11 @@
 import { fullCitation, noteOf } from "#app/sources/citation.ts";
 import type { DetailAsOf, SourceAsOf } from "./editions.queries.server.ts";
 
+/** The parts of what a species is called. */
+export type DetailTexts = Pick<DetailAsOf, "key" | "printed" | "label" | "name" | "cas" | "inchikey" | "synonyms">;
+
 /** The parts of what a species is called, as text, in the order they are compared and shown. */
-export const detailFields: readonly { name: string; text: (row: DetailAsOf) => string }[] = [
+export const detailFields: readonly { name: string; text: (row: DetailTexts) => string }[] = [
   { name: "key", text: (row) => row.key },
   { name: "formula", text: (row) => row.printed },
   { name: "label", text: (row) => row.label ?? "" },

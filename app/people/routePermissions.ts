@@ -49,10 +49,15 @@ export const routePermissions: Readonly<Record<string, RouteDoors>> = {
 
   // The table, as of an edition
   "/editions/:edition/table": reads("table:read"),
+  "/editions/:edition/species/:key": reads("table:read"),
 
   // Editions
   "/editions": reads("table:read"),
   "/editions/:edition": reads("table:read"),
+  "/editions/:edition/table.csv": reads("table:read"),
+  "/editions/:a/compare/:b": reads("table:read"),
+  "/editions/:edition/table.csv": reads("table:read"),
+  "/editions/:edition/table.csv-metadata.json": reads("table:read"),
 
   // Sheets
   "/sheets": reads("sheet:read"),

@@ -331,10 +331,10 @@ describe("a value", () => {
   test("has the contract's shape, with its digits to the last zero", async () => {
     const body = (await (await ask("/editions/1/species/H2O(l)")).json()) as {
       id: string;
-      values: Record<string, unknown>;
+      values: { property: string }[];
     };
     // CODATA Key Values (1989): −285.830 ± 0.040 kJ/mol, k = 2.
-    expect(body.values["enthalpyOfFormation"]).toEqual({
+    expect(body.values.find((value) => value.property === "enthalpyOfFormation")).toEqual({
       id: body.id,
       species: "H2O(l)",
       property: "enthalpyOfFormation",
@@ -352,7 +352,7 @@ describe("a value", () => {
       },
       since: 1,
     });
-    expect(body.values["heatCapacity"]).toMatchObject({
+    expect(body.values.find((value) => value.property === "heatCapacity")).toMatchObject({
       given: { text: "17.995", unit: "cal/(mol K)", note: "× 4.184" },
       uncertainty: null,
       source: { doi: "10.1063/1.555845" },

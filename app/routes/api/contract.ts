@@ -95,9 +95,7 @@ export const speciesShape = z
     inchikey: z.string().nullable(),
     synonyms: z.array(z.string()),
     since: editionNumber.meta({ description: "The edition in which it got this key and these names." }),
-    values: z
-      .partialRecord(property, valueShape)
-      .meta({ description: "Property to value; properties without a value are absent." }),
+    values: z.array(valueShape).meta({ description: "Ordered by property; at most one for each." }),
   })
   .meta({ id: "Species" });
 

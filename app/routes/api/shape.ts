@@ -78,7 +78,7 @@ export function apiSpecies(detail: DetailAsOf, values: readonly ValueAsOf[], sou
     inchikey: detail.inchikey,
     synonyms: detail.synonyms,
     since: detail.since,
-    values: Object.fromEntries(values.map((value) => [value.property, apiValue(value, sources)])),
+    values: values.map((value) => apiValue(value, sources)),
   };
 }
 
