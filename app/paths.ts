@@ -30,6 +30,7 @@ export const paths = {
   // The table, as of an edition
   table: (edition: EditionInPath = "current", query?: Query) => `/editions/${edition}/table${queryString(query)}`,
   tableDownload: (edition: EditionInPath) => `/editions/${edition}/table.csv`,
+  tableDescription: (edition: EditionInPath) => `/editions/${edition}/table.csv-metadata.json`,
   species: (edition: EditionInPath, key: string) => `/editions/${edition}/species/${segment(key)}`,
   editions: () => "/editions",
   edition: (edition: EditionInPath) => `/editions/${edition}`,

@@ -17,9 +17,8 @@ export default [
   route("editions", "routes/editions.tsx"),
   route("editions/:edition", "routes/edition.tsx"),
   route("editions/:edition/table.csv", "routes/table.download.ts"),
+  route("editions/:edition/table.csv-metadata.json", "routes/table.description.ts"),
   route("editions/:a/compare/:b", "routes/compare.tsx"),
-  route("editions/:edition/table.csv", "routes/edition.table.ts"),
-  route("editions/:edition/table.csv-metadata.json", "routes/edition.table.description.ts"),
 
   // Sheets
   route("sheets", "routes/sheets.tsx"),

@@ -1,10 +1,8 @@
 import { database } from "#app/db/database.server.ts";
 import { demand } from "#app/people/permissions.ts";
 import type { Acting } from "#app/people/person.ts";
-import type { Digits } from "#app/thermo/digits.ts";
-import type { Property } from "#app/thermo/property.ts";
-import type { Uncertainty } from "#app/thermo/uncertainty.ts";
 import { findEditions } from "./editions.queries.server.ts";
+import { leadingChanges, type ListedChange, type Stood } from "./leadingChanges.ts";
 import { compareEditionsNet } from "./read.server.ts";
 
 /** Changed values listed on the first page; the comparison has them all. */
@@ -12,19 +10,10 @@ const LISTED = 6;
 /** Editions that changed more than this are not compared for the first page. */
 const MOST_COMPARED = 2000;
 
-interface Stood {
-  digits: Digits;
-  uncertainty: Uncertainty | null;
-}
-
 /** A value that the newest edition changed. */
-export interface ChangedValue {
-  key: string;
-  property: Property;
+export interface ChangedValue extends ListedChange {
   before: Stood;
   after: Stood;
-  difference: Digits | null;
-  normalizedError: number | null;
 }
 
 /** The newest edition as the first page tells of it. */
@@ -54,13 +43,9 @@ export async function findEditionHome(acting: Acting): Promise<EditionHome | nul
   const { number, publishedAt, publisher, notes, speciesCount, valueCount, came, changed, went } = newest;
   const few = previous && changed > 0 && came + changed + went <= MOST_COMPARED;
   const { values } = few ? await compareEditionsNet(previous, newest) : { values: [] };
-  const changes = values
-    .flatMap(({ key, property, before, after, difference, normalizedError }): ChangedValue[] =>
-      before && after
-        ? [{ key, property, before: stood(before), after: stood(after), difference, normalizedError }]
-        : [],
-    )
-    .sort((a, b) => Math.abs(b.normalizedError ?? 0) - Math.abs(a.normalizedError ?? 0));
+  const changes = leadingChanges(values, LISTED).flatMap((change): ChangedValue[] =>
+    change.before && change.after ? [{ ...change, before: change.before, after: change.after }] : [],
+  );
   return {
     number,
     previous: previous?.number ?? null,
@@ -73,10 +58,6 @@ export async function findEditionHome(acting: Acting): Promise<EditionHome | nul
     changed,
     went,
     withdraws: newest.withdraws === null ? null : { edition: newest.withdraws, reason: newest.withdrawalReason ?? "" },
-    changes: changes.slice(0, LISTED),
+    changes,
   };
-}
-
-function stood({ digits, uncertainty }: Stood): Stood {
-  return { digits, uncertainty };
 }

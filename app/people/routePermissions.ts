@@ -56,7 +56,6 @@ export const routePermissions: Readonly<Record<string, RouteDoors>> = {
   "/editions/:edition": reads("table:read"),
   "/editions/:edition/table.csv": reads("table:read"),
   "/editions/:a/compare/:b": reads("table:read"),
-  "/editions/:edition/table.csv": reads("table:read"),
   "/editions/:edition/table.csv-metadata.json": reads("table:read"),
 
   // Sheets

@@ -20,6 +20,7 @@ const samples: Record<keyof typeof paths, string> = {
   home: paths.home(),
   table: paths.table(7, { phase: "g" }),
   tableDownload: paths.tableDownload("current"),
+  tableDescription: paths.tableDescription(7),
   species: paths.species(7, "CdSO4·8/3H2O(cr)"),
   editions: paths.editions(),
   edition: paths.edition(7),
