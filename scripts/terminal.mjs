@@ -62,11 +62,20 @@ export function run(program, args, options = {}) {
   });
 }
 
+/** The end of what a program said, without the lines that tell only where in its own code it was. */
+function lastWords(output) {
+  const lines = output.trim().split("\n");
+  return lines
+    .filter((line) => !/^\s+at /.test(line))
+    .slice(-30)
+    .join("\n");
+}
+
 /** As `run`, but a failure stops the script with `sentence` and what the program said last. */
 export async function runOrStop(sentence, program, args, options = {}) {
   const result = await run(program, args, options).catch((error) => ({ code: 1, output: String(error.message) }));
   if (result.code !== 0) {
-    const tail = result.output.trim().split("\n").slice(-30).join("\n");
+    const tail = lastWords(result.output);
     throw new Stop(tail ? `${sentence}\n${tail}` : sentence);
   }
   return result.output;
