@@ -179,15 +179,14 @@ export function checkPlan(plan: ColumnPlan, settings: SheetSettings): FieldError
     add("/columns", "A column holds values of different quantities, but none says which quantity. Say which one does.");
   }
   for (const [index, column] of plan.entries()) {
-    const name = columnName(column.head, index);
     if (column.means === "value" || column.means === "uncertainty") {
-      if (column.property === null) add(`/columns/${index}`, `Say of which quantity ${name} is.`);
+      if (column.property === null) add(`/columns/${index}`, "Say of which quantity this column is.");
     }
     if (column.means === "value" && column.property !== null) {
       const same = values.filter((other) => plan[other]?.property === column.property);
       if (same[0] !== index)
         add(`/columns/${index}`, `Another column already holds ${propertyInfo[column.property].symbol}.`);
-      if (column.unit === null) add(`/columns/${index}`, `Say in which unit ${name} is. A unit is never assumed.`);
+      if (column.unit === null) add(`/columns/${index}`, "Say in which unit the values are. A unit is never assumed.");
       else if (!isLikeUnit(column.unit, propertyInfo[column.property].unit)) {
         add(
           `/columns/${index}`,
@@ -203,10 +202,10 @@ export function checkPlan(plan: ColumnPlan, settings: SheetSettings): FieldError
         );
       }
       const same = indexes("uncertainty").filter((other) => plan[other]?.property === column.property);
-      if (same[0] !== index) add(`/columns/${index}`, `Another column already is this uncertainty.`);
+      if (same[0] !== index) add(`/columns/${index}`, "Another column already is this uncertainty.");
     }
     if (column.means === "anyValue" && column.unit === null && indexes("unitName").length === 0) {
-      add(`/columns/${index}`, `No column says the unit of ${name}. Say which one does, or choose the unit here.`);
+      add(`/columns/${index}`, "No column says the unit of these values. Say which one does, or choose the unit here.");
     }
   }
 
@@ -347,12 +346,12 @@ function uncertaintiesFollowValues(plan: ColumnPlan): void {
     const before = plan.slice(0, index).findLast((other) => other.means !== "uncertainty");
     if (before?.means === "value" && before.property !== null) {
       column.property = before.property;
-      column.because = `head; stands behind ${before.head}`;
+      column.because = `head; belongs to ${propertyInfo[before.property].symbol}, the column before it`;
     } else {
       column.means = "ignore";
       column.asks = before?.because.includes("left out") !== true;
       column.because = before
-        ? `an uncertainty behind ${before.head}, which is not read`
+        ? "an uncertainty behind a column that is not read"
         : "an uncertainty with no value before it";
     }
   }

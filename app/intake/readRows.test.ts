@@ -153,7 +153,7 @@ describe("a row that is refused says at which cell, and how to mend it", () => {
       "a negative entropy",
       "H2O,l,,-285.83,0.04,-69.95",
       5,
-      /cannot be negative. Did the sign come from the column dHf/,
+      /cannot be negative. Did the sign come from the ΔfH° column/,
       ["69.95"],
     ],
     ["a zero entropy", "H2O,l,,-285.83,0.04,0", 5, /missing value typed as 0/, [""]],

@@ -14,7 +14,7 @@ import { isAbsent } from "./cells.ts";
 import { readDescription } from "./description.ts";
 import { propertyOf } from "./head.ts";
 import type { ColumnMeans } from "./meaning.ts";
-import { columnName, type ColumnPlan, columnsOf, type SheetSettings } from "./plan.ts";
+import { type ColumnPlan, columnsOf, type SheetSettings } from "./plan.ts";
 
 /** A row as it came, with the repairs of its cells laid over it. */
 export interface SheetRow {
@@ -443,10 +443,9 @@ function notPositive(text: string, slot: Slot, value: Digits, row: SheetRow, fra
     (column) => column.property === "enthalpyOfFormation" && column.means === "value",
   );
   const positive = text.replace(/^\s*[-−–]\s*/, "");
-  const from =
-    neighbour === -1 || neighbour === slot.column || isAbsent(row.cells[neighbour] ?? "")
-      ? ""
-      : ` Did the sign come from the column ${columnName(frame.heads[neighbour] ?? "", neighbour)}?`;
+  const from = isAbsent(row.cells[neighbour] ?? "")
+    ? ""
+    : ` Did the sign come from the ${propertyInfo.enthalpyOfFormation.symbol} column?`;
   return problem(slot.column, `${what} cannot be negative.${from}`, [
     { label: `Take ${positive}`, column: slot.column, text: positive },
   ]);

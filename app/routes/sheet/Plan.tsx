@@ -27,6 +27,7 @@ import { Symbol } from "#app/ui/Symbol.tsx";
 import { Table } from "#app/ui/Table.tsx";
 import { UnitText } from "#app/ui/UnitText.tsx";
 import type { SheetOutcome } from "./outcome.ts";
+import { SheetText } from "./SheetText.tsx";
 
 type Column = SheetPage["columns"][number];
 
@@ -116,7 +117,7 @@ function PlanRow({
     <tr>
       <MarginMark kind={wrong ? "block" : column.asks ? "look" : null} />
       <th scope="row" className={column.head === "" ? "text-soft" : undefined}>
-        <Prose text={column.name} />
+        <SheetText text={column.name} />
       </th>
       <td>
         <Sample values={column.sample} />
@@ -164,7 +165,7 @@ function Sample({ values }: { values: readonly string[] }) {
   return values.map((value, index) => (
     <span key={index}>
       {index > 0 && " · "}
-      <Prose text={value} />
+      <SheetText text={value} />
     </span>
   ));
 }
@@ -324,7 +325,7 @@ export function PlanShown({ page }: { page: SheetPage }) {
           {page.columns.map((column, index) => (
             <tr key={index}>
               <th scope="row">
-                <Prose text={column.name} />
+                <SheetText text={column.name} />
               </th>
               <td>
                 <Sample values={column.sample} />

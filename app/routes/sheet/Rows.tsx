@@ -20,6 +20,7 @@ import { SpeciesName } from "#app/ui/SpeciesName.tsx";
 import { Symbol } from "#app/ui/Symbol.tsx";
 import { RowUnder, Table } from "#app/ui/Table.tsx";
 import type { RepairOutcome, SheetOutcome } from "./outcome.ts";
+import { SheetText } from "./SheetText.tsx";
 
 type PageRows = NonNullable<SheetPage["rows"]>;
 
@@ -98,7 +99,7 @@ function RefusedTable({ page, rows, open }: { page: SheetPage; rows: PageRows; o
             </th>
             {shown.map((column) => (
               <th key={column.index} scope="col" className={isFigure(column.means) ? "figure" : undefined}>
-                <Prose text={column.name} />
+                <SheetText text={column.name} />
               </th>
             ))}
           </tr>
@@ -155,11 +156,11 @@ function Refused({
               ) : column.means === "formula" ? (
                 <Formula printed={text} />
               ) : (
-                <Prose text={text} />
+                <SheetText text={text} />
               )}
               {cell?.original !== null && cell?.original !== undefined && (
                 <span className="block fine">
-                  was <Prose text={cell.original === "" ? "empty" : cell.original} />
+                  was <SheetText text={cell.original === "" ? "empty" : cell.original} />
                 </span>
               )}
             </td>
