@@ -78,9 +78,10 @@ export function shownChange(change: ValueChange<ValueAsOf>): ShownChange {
   };
 }
 
+/** With two significant digits, or none behind the point from 10 % on. */
 function percent(relative: number): string {
   const size = Math.abs(relative) * 100;
-  return showNumber(relative * 100, size >= 10 ? 0 : size >= 0.1 ? 2 : 4);
+  return showNumber(relative * 100, Math.min(6, Math.max(0, 1 - Math.floor(Math.log10(size)))));
 }
 
 /** Differences of one property as the drawing takes them. */

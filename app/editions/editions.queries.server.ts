@@ -236,6 +236,12 @@ function untilAsOf(n: number) {
   return sql<number | null>`case when v.until <= ${n} then v.until end`;
 }
 
+/** Who accepted the version `lv` of a line: the newest decision on it that did. */
+function acceptedBy() {
+  return sql<string | null>`(select p.name from line_decision d join person p on p.id = d.decided_by
+    where d.line_version_id = lv.id and d.decision = 'accept' order by d.id desc limit 1)`;
+}
+
 /**
  * Every value that a species had up to edition n, oldest first within each property, with the people behind it. Looks at
  * nothing later than n.
@@ -262,16 +268,7 @@ export async function findValueHistory(n: number, speciesId: string, db: Databas
       eb.ref("v.uncertainty_kind").$castTo<Uncertainty["kind"] | null>().as("uncertaintyKind"),
       eb.ref("v.coverage_factor").$castTo<Digits | null>().as("coverageFactor"),
       untilAsOf(n).as("until"),
-      // The acceptance that put it there is the newest decision on that version.
-      eb
-        .selectFrom("line_decision as d")
-        .innerJoin("person as p", "p.id", "d.decided_by")
-        .whereRef("d.line_version_id", "=", "lv.id")
-        .where("d.decision", "=", "accept")
-        .orderBy("d.id", "desc")
-        .limit(1)
-        .select("p.name")
-        .as("decider"),
+      acceptedBy().as("decider"),
     ])
     .orderBy("v.property")
     .orderBy("v.since")
@@ -287,6 +284,7 @@ export async function findWithdrawals(n: number, speciesId: string, db: Database
   return db
     .selectFrom("revision_line as l")
     .innerJoin("line_version as lv", "lv.line_id", "l.id")
+    .innerJoin("person as writer", "writer.id", "lv.made_by")
     .where("l.species_id", "=", speciesId)
     .where("l.kind", "=", "withdrawal")
     .where("l.published_in", "<=", n)
@@ -301,7 +299,7 @@ export async function findWithdrawals(n: number, speciesId: string, db: Database
         ),
       ),
     )
-    .select(["l.revision_id as revisionId"])
+    .select(["l.revision_id as revisionId", "writer.name as writer", acceptedBy().as("decider")])
     .select((eb) => [
       eb.ref("l.property").$castTo<Property>().as("property"),
       eb.ref("l.published_in").$castTo<number>().as("edition"),
@@ -317,6 +315,7 @@ export async function findDetailHistory(n: number, speciesId: string, db: Databa
     .selectFrom("species_detail as d")
     .innerJoin("line_version as lv", "lv.id", "d.line_version_id")
     .innerJoin("revision_line as l", "l.id", "lv.line_id")
+    .innerJoin("person as writer", "writer.id", "lv.made_by")
     .where("d.species_id", "=", speciesId)
     .where("d.since", "<=", n)
     .select([
@@ -329,6 +328,8 @@ export async function findDetailHistory(n: number, speciesId: string, db: Databa
       "d.synonyms",
       "d.since",
       "l.revision_id as revisionId",
+      "writer.name as writer",
+      acceptedBy().as("decider"),
     ])
     .orderBy("d.since")
     .execute();

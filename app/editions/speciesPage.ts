@@ -114,7 +114,7 @@ export function aboveTranslation(identity: SpeciesIdentity, entropy: Digits, mol
 // --- History ------------------------------------------------------------------
 
 /** One thing that an edition did to a species. */
-export interface HistoryEntry {
+export interface HistoryEntry extends Hands {
   edition: number;
   property: Property | null;
   /** "came", "changed", "withdrawn", "called". */
@@ -126,6 +126,10 @@ export interface HistoryEntry {
   sourceId: string | null;
   /** The reason of a withdrawal; what it is called otherwise. */
   sentence: string | null;
+}
+
+/** By which revision a change came, who wrote its line and who accepted it. */
+interface Hands {
   revisionId: number;
   writer: string | null;
   decider: string | null;
@@ -134,8 +138,8 @@ export interface HistoryEntry {
 /** The history of a species from its rows, the newest edition first. */
 export function speciesHistory(
   values: readonly HistoricValue[],
-  withdrawals: readonly { property: Property; edition: number; reason: string; revisionId: number }[],
-  details: readonly (DetailTexts & { since: number; revisionId: number })[],
+  withdrawals: readonly ({ property: Property; edition: number; reason: string } & Hands)[],
+  details: readonly (DetailTexts & { since: number } & Hands)[],
 ): HistoryEntry[] {
   const entries: HistoryEntry[] = [];
   for (const value of values) {
@@ -154,7 +158,7 @@ export function speciesHistory(
       decider: value.decider,
     });
   }
-  for (const { property, edition, reason, revisionId } of withdrawals) {
+  for (const { property, edition, reason, revisionId, writer, decider } of withdrawals) {
     const before = values.find((one) => one.property === property && one.until === edition);
     entries.push({
       ...nothing,
@@ -164,6 +168,8 @@ export function speciesHistory(
       before: before ? { digits: before.digits, uncertainty: before.uncertainty } : null,
       sentence: reason,
       revisionId,
+      writer,
+      decider,
     });
   }
   for (const [index, detail] of details.entries()) {
@@ -178,12 +184,14 @@ export function speciesHistory(
       what: "called",
       sentence: words.join("; ") || null,
       revisionId: detail.revisionId,
+      writer: detail.writer,
+      decider: detail.decider,
     });
   }
   return entries.sort((a, b) => b.edition - a.edition);
 }
 
-const nothing = { before: null, after: null, difference: null, sourceId: null, writer: null, decider: null } as const;
+const nothing = { before: null, after: null, difference: null, sourceId: null } as const;
 
 /** A property's values through the editions, as the plot takes them; null where it never changed. */
 export function historyPoints(values: readonly HistoricValue[], property: Property) {

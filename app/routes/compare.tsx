@@ -242,7 +242,8 @@ function changeColumns({ from, to, citations }: ComparePage): Column<ShownChange
       cell: ({ before, after }) =>
         before && after && before.sourceId !== after.sourceId ? (
           <>
-            <del>{cited(before.sourceId)}</del> <ins>{cited(after.sourceId)}</ins>
+            {cited(after.sourceId)}
+            <span className="fine block">was {cited(before.sourceId)}</span>
           </>
         ) : (
           cited((after ?? before)?.sourceId ?? "")
