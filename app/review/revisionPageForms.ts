@@ -59,7 +59,7 @@ export const revisionForm = z.discriminatedUnion(
       body: required("Write something first."),
     }),
     z.object({ intent: z.literal("return"), remark: required("Say what should be mended.") }),
-    z.object({ intent: z.literal("close") }),
+    z.object({ intent: z.literal("close"), password: z.string().max(LONGEST_REMARK).default("") }),
     z.object({
       intent: z.literal("rewrite"),
       line: identifier,
@@ -109,6 +109,7 @@ export const publishForm = z
     ),
     withdraws: z.coerce.number({ error: "Choose an edition of the list." }).int().min(1).max(1_000_000_000).optional(),
     withdrawalReason: optional(),
+    password: z.string().max(LONGEST_REMARK).default(""),
   })
   .refine((form) => form.withdraws === undefined || form.withdrawalReason !== "", {
     error: "Say why that edition is withdrawn.",

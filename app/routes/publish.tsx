@@ -1,11 +1,13 @@
 import { data, Form, Link, redirect } from "react-router";
 import { DomainError, Invalid, NotFound } from "#app/http/errors.ts";
 import { readForm } from "#app/http/forms.server.ts";
+import { requestContext } from "#app/http/requestContext.server.ts";
 import { pageError } from "#app/http/respond.server.ts";
 import { paths } from "#app/paths.ts";
-import { requireActing } from "#app/people/visitor.server.ts";
+import { asksPassword, demandFresh } from "#app/people/signing.server.ts";
+import { requireVisitor } from "#app/people/visitor.server.ts";
 import { publishEdition } from "#app/review/publish.server.ts";
-import { findNewestPublication, findPublishPage, type PublishPage as Page } from "#app/review/publishPage.server.ts";
+import { findNewestPublication, findPublishPage } from "#app/review/publishPage.server.ts";
 import { countsInWords } from "#app/review/publishPage.ts";
 import { publishForm, readFields } from "#app/review/revisionPageForms.ts";
 import { draftBookmark } from "#app/ui/Bookmark.tsx";
@@ -35,11 +37,14 @@ export function shouldRevalidate() {
 
 export async function loader({ request }: Route.LoaderArgs) {
   try {
-    return await findPublishPage(await requireActing(request, "edition:publish"));
+    const { acting, sessionId } = await requireVisitor(request, "edition:publish");
+    return { ...(await findPublishPage(acting)), asksPassword: await asksPassword(acting, sessionId) };
   } catch (error) {
     throw pageError(error);
   }
 }
+
+type Page = Route.ComponentProps["loaderData"];
 
 /** What a form of this page came to, when it did not publish. */
 interface Answer {
@@ -51,12 +56,12 @@ interface Answer {
   typed: Readonly<Record<string, string>>;
 }
 
-export async function action({ request }: Route.ActionArgs) {
+export async function action({ request, context }: Route.ActionArgs) {
   try {
-    const acting = await requireActing(request, "edition:publish");
+    const { acting, sessionId } = await requireVisitor(request, "edition:publish");
     const form = await readForm(request);
     const typed: Record<string, string> = {};
-    for (const [name, value] of form) if (typeof value === "string") typed[name] = value;
+    for (const [name, value] of form) if (typeof value === "string" && name !== "password") typed[name] = value;
     const answer = (status: number, rest: Partial<Answer>) =>
       data<Answer>({ step: "write", sentence: "", made: null, errors: {}, typed, ...rest }, { status });
 
@@ -70,6 +75,13 @@ export async function action({ request }: Route.ActionArgs) {
     }
     const { intent, notes, licence, withdraws, withdrawalReason, expectedPrevious, listDigest } = reading.value;
     if (intent !== "publish") return answer(200, { step: "confirm" });
+    try {
+      const { address } = context.get(requestContext);
+      await demandFresh(acting, sessionId, reading.value.password, { address, requestId: acting.requestId });
+    } catch (error) {
+      if (!(error instanceof Invalid)) throw error;
+      return answer(error.status, { step: "confirm", errors: { password: [error.message] } });
+    }
     try {
       const { number } = await publishEdition(acting, {
         expectedPrevious,
@@ -300,8 +312,12 @@ function Confirm({ page, answer }: { page: Page; answer: Answer }) {
   const changing = usePending("intent", "change");
   const { typed } = answer;
   const moved = typed["listDigest"] !== page.digest;
+  const password = plainField("password", {
+    errors: answer.errors["password"] ? [...answer.errors["password"]] : undefined,
+    required: true,
+  });
   return (
-    <Form method="post">
+    <Form method="post" noValidate>
       <Seen page={page} />
       {moved && (
         <Note kind="look" word="changed meanwhile">
@@ -332,6 +348,18 @@ function Confirm({ page, answer }: { page: Page; answer: Answer }) {
       <p className="mb-3 max-w-[60ch]">
         From then on edition {page.number} never changes. What turns out wrong is put right in the next one.
       </p>
+      {page.asksPassword && (
+        <>
+          <FormErrors fields={[[password, "Your password"]]} />
+          <Field
+            field={password}
+            label="Your password"
+            hint="You signed in a while ago, so it is asked for once more."
+            type="password"
+            autoComplete="current-password"
+          />
+        </>
+      )}
       <div className="flex flex-wrap items-center gap-3.5">
         <Button kind="main" type="submit" name="intent" value="publish" pending={publishing} pendingLabel="Publishing…">
           Publish edition {page.number}

@@ -1,9 +1,10 @@
 import { data, redirect } from "react-router";
 import { DomainError } from "#app/http/errors.ts";
 import { readForm } from "#app/http/forms.server.ts";
+import { requestContext } from "#app/http/requestContext.server.ts";
 import { numberInPath, pageError } from "#app/http/respond.server.ts";
 import { paths } from "#app/paths.ts";
-import { requireActing } from "#app/people/visitor.server.ts";
+import { requireActing, requireVisitor } from "#app/people/visitor.server.ts";
 import type { Route } from "./+types/resources.revision.act";
 import { actOnRevision } from "./revision/act.server.ts";
 import type { Outcome } from "./revision/outcome.ts";
@@ -19,10 +20,13 @@ export async function loader({ request, params }: Route.LoaderArgs) {
 }
 
 /** A form of a revision's page, sent in the background; answers with what came of it. */
-export async function action({ request, params }: Route.ActionArgs) {
+export async function action({ request, params, context }: Route.ActionArgs) {
   try {
-    const acting = await requireActing(request, "revision:read");
-    const outcome = await actOnRevision(acting, numberInPath(params.revision), await readForm(request));
+    const signer = {
+      ...(await requireVisitor(request, "revision:read")),
+      address: context.get(requestContext).address,
+    };
+    const outcome = await actOnRevision(signer, numberInPath(params.revision), await readForm(request));
     return data(outcome, { status: outcome.ok ? 200 : outcome.status });
   } catch (error) {
     if (!(error instanceof DomainError)) throw error;

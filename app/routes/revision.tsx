@@ -1,9 +1,11 @@
 import { data, Link, redirect } from "react-router";
 import { BadRequest } from "#app/http/errors.ts";
 import { readForm } from "#app/http/forms.server.ts";
+import { requestContext } from "#app/http/requestContext.server.ts";
 import { numberInPath, pageError } from "#app/http/respond.server.ts";
 import { paths } from "#app/paths.ts";
-import { requireActing } from "#app/people/visitor.server.ts";
+import { asksPassword } from "#app/people/signing.server.ts";
+import { requireVisitor } from "#app/people/visitor.server.ts";
 import type { RevisionPage as Page } from "#app/review/revisionPage.ts";
 import { findRevisionPage } from "#app/review/revisionPage.server.ts";
 import { draftBookmark, editionBookmark, type BookmarkProps } from "#app/ui/Bookmark.tsx";
@@ -35,21 +37,25 @@ function pageIn(request: Request): number {
 
 export async function loader({ request, params }: Route.LoaderArgs) {
   try {
-    const acting = await requireActing(request, "revision:read");
-    return await findRevisionPage(acting, numberInPath(params.revision), { page: pageIn(request) });
+    const { acting, sessionId } = await requireVisitor(request, "revision:read");
+    const page = await findRevisionPage(acting, numberInPath(params.revision), { page: pageIn(request) });
+    return { ...page, asksPassword: page.may.close && (await asksPassword(acting, sessionId)) };
   } catch (error) {
     throw pageError(error);
   }
 }
 
 /** Forms sent without scripts; the same acts as the resource beside it. */
-export async function action({ request, params }: Route.ActionArgs) {
+export async function action({ request, params, context }: Route.ActionArgs) {
   try {
-    const acting = await requireActing(request, "revision:read");
+    const signer = {
+      ...(await requireVisitor(request, "revision:read")),
+      address: context.get(requestContext).address,
+    };
     const id = numberInPath(params.revision);
     const page = pageIn(request);
     const form = await readForm(request);
-    const outcome = await actOnRevision(acting, id, form);
+    const outcome = await actOnRevision(signer, id, form);
     if (!outcome.ok) return data(outcome, { status: outcome.status });
     const line = String(form.get("line") ?? form.get("seen") ?? "").split(":", 1)[0] ?? "";
     const anchor = /^\d+$/.test(line) ? `#line-${line}` : "";
@@ -88,7 +94,7 @@ export default function RevisionPage({ loaderData: page, actionData }: Route.Com
         )}
         <History rounds={page.history} comments={page.may.comment} />
         <Caution />
-        <Bar page={page} digest={page.cleanDigest} />
+        <Bar page={page} digest={page.cleanDigest} asksPassword={page.asksPassword} />
       </Leaf>
     </DeskProvider>
   );

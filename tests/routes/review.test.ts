@@ -5,7 +5,7 @@ import { findLines, findRevision } from "#app/review/review.queries.server.ts";
 import { sendToReview, takeLineOut } from "#app/review/revise.server.ts";
 import { findNewestEdition } from "#app/editions/editions.queries.server.ts";
 import { ANY_SOURCE, expanded, type ValueRow } from "#tests/support/editions.ts";
-import { makePerson, signedIn } from "#tests/support/people.ts";
+import { makePerson, PASSWORD, signedIn } from "#tests/support/people.ts";
 import { acceptAll, propose, publishWaiting } from "#tests/support/revisions.ts";
 import { useServer } from "#tests/support/server.ts";
 
@@ -16,9 +16,10 @@ import { useServer } from "#tests/support/server.ts";
 
 let steward: Acting;
 let reviewer: Acting;
-const cookies: Record<"steward" | "reviewer" | "administrator", string> = {
+const cookies: Record<"steward" | "reviewer" | "reviewerSinceMorning" | "administrator", string> = {
   steward: "",
   reviewer: "",
+  reviewerSinceMorning: "",
   administrator: "",
 };
 let campaign = 0;
@@ -38,6 +39,7 @@ const server = useServer({
     reviewer = await makePerson("Ruth Amsel", "reviewer");
     cookies.steward = await signedIn(steward);
     cookies.reviewer = await signedIn(reviewer);
+    cookies.reviewerSinceMorning = await signedIn(reviewer, new Date(Date.now() - 60 * 60 * 1000));
     cookies.administrator = await signedIn(await makePerson("Pell Ostrander", "administrator"));
     const first = await propose(steward, {
       sources: [{ id: ANY_SOURCE, title: "Calder Point Laboratory, in-house notes (invented)" }],
@@ -353,6 +355,47 @@ describe("publishing", () => {
     expect(other?.text).toContain("Edition 2 was published by Ruth Amsel");
     expect(other?.text).toContain("Ammonia, decided.");
     expect((await findNewestEdition(server.database.app))?.number).toBe(2);
+  });
+});
+
+describe("signing off an hour after signing in", () => {
+  const morning = "reviewerSinceMorning";
+  const right = { password: PASSWORD };
+
+  test("asks for the password once more to close a review", async () => {
+    const id = await propose(steward, { values: [codata("H2(g)", "heatCapacity", "28.84")] });
+    await sendToReview(steward, id, "");
+    await post(at(id), morning, { intent: "accept", seen: await seenOf(id, "heatCapacity") });
+    expect(await statesOf(id)).toEqual(["accepted"]);
+    for (const password of ["", "seven grey kettle"]) {
+      const { status, text, html } = await post(at(id), morning, { intent: "close", password });
+      expect(status).toBe(422);
+      expect(text).toMatch(/Give your password once more|This is not your password/);
+      if (password) expect(html).not.toContain(password);
+    }
+    expect((await findRevision(id, server.database.app))?.state).toBe("in_review");
+    expect((await post(at(id), morning, { intent: "close", ...right })).status).toBe(303);
+    expect((await get(at(id), "steward")).text).toContain("Ruth Amsel reviewed it and closed the review");
+  });
+
+  test("asks for it to publish, and takes it", async () => {
+    const page = await (await server.fetch("/publish", { headers: { Cookie: cookies[morning] } })).text();
+    const hidden = (name: string) => new RegExp(`name="${name}" value="([^"]*)"`).exec(page)?.[1] ?? "";
+    const fields = {
+      expectedPrevious: hidden("expectedPrevious"),
+      listDigest: hidden("listDigest"),
+      notes: "Hydrogen.",
+      licence: "CC-BY-4.0",
+    };
+    const look = await post("/publish", morning, { intent: "look", ...fields });
+    expect(look.html).toContain('autoComplete="current-password"');
+    const wrong = await post("/publish", morning, { intent: "publish", ...fields, password: "no" });
+    expect(wrong.status).toBe(422);
+    expect(wrong.text).toContain("This is not your password. Nothing was signed off.");
+    expect(wrong.text).toContain("Hydrogen.");
+    expect((await findNewestEdition(server.database.app))?.number).toBe(2);
+    expect((await post("/publish", morning, { intent: "publish", ...fields, ...right })).status).toBe(303);
+    expect((await findNewestEdition(server.database.app))?.number).toBe(3);
   });
 });
 

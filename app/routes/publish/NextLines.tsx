@@ -33,7 +33,7 @@ export function NextLines({ revision, previous }: { revision: NextRevision; prev
             <th scope="col">Species</th>
             <th scope="col">Property</th>
             <th scope="col" className="figure">
-              {previous === 0 ? "Stands" : `Stands in edition ${previous}`}
+              Stands{previous > 0 && <span className="max-sm:sr-only"> in edition {previous}</span>}
             </th>
             <th scope="col" className="figure">
               Will stand

@@ -1,12 +1,15 @@
 import type { RevisionPage } from "#app/review/revisionPage.ts";
 import { Button } from "#app/ui/Button.tsx";
 import { DecisionBar, KeysHint } from "#app/ui/DecisionBar.tsx";
+import { Field } from "#app/ui/Field.tsx";
+import { plainField } from "#app/ui/fieldState.ts";
 import { count } from "#app/ui/figure.ts";
+import { FormErrors } from "#app/ui/FormErrors.tsx";
 import { InlineMark } from "#app/ui/MarginMark.tsx";
 import { Note } from "#app/ui/Note.tsx";
 import { Prose } from "#app/ui/Prose.tsx";
 import { StatusLine } from "#app/ui/StatusLine.tsx";
-import { ActForm, OpenLink, useDesk, useLineKeys } from "./desk.tsx";
+import { ActForm, OpenLink, useDesk, useFocusOnOpen, useLineKeys } from "./desk.tsx";
 import { ReasonForm } from "./Reason.tsx";
 
 const DECIDING_KEYS = [
@@ -23,7 +26,7 @@ const WRITING_KEYS = [
 ] as const;
 
 /** What can be done with the whole revision, always within reach; what was refused and what was done is said here. */
-export function Bar({ page, digest }: { page: RevisionPage; digest: string }) {
+export function Bar({ page, digest, asksPassword }: { page: RevisionPage; digest: string; asksPassword: boolean }) {
   const { said, refusal, dismiss, open, started } = useDesk();
   const keys = useLineKeys();
   const { may } = page;
@@ -61,7 +64,7 @@ export function Bar({ page, digest }: { page: RevisionPage; digest: string }) {
         )}
         {panel ?? (
           <>
-            {may.decide && <Deciding page={page} digest={digest} />}
+            {may.decide && <Deciding page={page} digest={digest} asksPassword={asksPassword} />}
             {!may.decide && may.write && <Writing page={page} />}
             {may.withdraw && (
               <OpenLink form="withdraw" anchor="decide" className="button button-quiet">
@@ -87,8 +90,8 @@ function Counts({ page: { counts } }: { page: RevisionPage }) {
   );
 }
 
-function Deciding({ page, digest }: { page: RevisionPage; digest: string }) {
-  const { cleanSet, may, counts } = page;
+function Deciding({ page, digest, asksPassword }: { page: RevisionPage; digest: string; asksPassword: boolean }) {
+  const { cleanSet, may } = page;
   return (
     <>
       {cleanSet.count > 0 && (
@@ -100,21 +103,69 @@ function Deciding({ page, digest }: { page: RevisionPage; digest: string }) {
           )}
         </ActForm>
       )}
-      {may.close && (
-        <ActForm intent="close">
-          {({ pending }) => (
-            <Button kind="main" type="submit" pending={pending} pendingLabel="Closing…">
-              {counts.accepted === 0
-                ? "Close the review: nothing accepted"
-                : `Close the review: ${count(counts.accepted)} accepted, ${count(counts.declined)} declined`}
-            </Button>
-          )}
-        </ActForm>
-      )}
+      {may.close &&
+        (asksPassword ? (
+          <OpenLink form="close" anchor="decide" className="button button-main">
+            {closeWords(page)}
+          </OpenLink>
+        ) : (
+          <ActForm intent="close">
+            {({ pending }) => (
+              <Button kind="main" type="submit" pending={pending} pendingLabel="Closing…">
+                {closeWords(page)}
+              </Button>
+            )}
+          </ActForm>
+        ))}
       <OpenLink form="return" anchor="decide" className="button">
-        Return<span className="max-sm:sr-only"> with comments</span>
+        <span>
+          Return<span className="max-sm:sr-only"> with comments</span>
+        </span>
       </OpenLink>
     </>
+  );
+}
+
+function closeWords({ counts }: RevisionPage): string {
+  return counts.accepted === 0
+    ? "Close the review: nothing accepted"
+    : `Close the review: ${count(counts.accepted)} accepted, ${count(counts.declined)} declined`;
+}
+
+/** Closing signs the review off; when the sign-in is old, the password is asked for once more. */
+function CloseForm({ page }: { page: RevisionPage }) {
+  const field = useFocusOnOpen<HTMLInputElement>();
+  return (
+    <ActForm intent="close" className="my-2 max-w-[46rem]">
+      {({ pending, errors }) => {
+        const password = plainField("password", {
+          id: "close-password",
+          errors: errors["password"] ? [...errors["password"]] : undefined,
+          required: true,
+        });
+        return (
+          <>
+            <FormErrors fields={[[password, "Your password"]]} />
+            <Field
+              ref={field}
+              field={password}
+              label="Your password"
+              hint="You sign with it that you reviewed these lines. You signed in a while ago, so it is asked for once more."
+              type="password"
+              autoComplete="current-password"
+            />
+            <div className="-mt-2 flex flex-wrap items-baseline gap-x-4 gap-y-2">
+              <Button kind="main" type="submit" pending={pending} pendingLabel="Closing…">
+                {closeWords(page)}
+              </Button>
+              <OpenLink form="close" anchor="decide">
+                Never mind
+              </OpenLink>
+            </div>
+          </>
+        );
+      }}
+    </ActForm>
   );
 }
 
@@ -144,6 +195,7 @@ function Writing({ page: { may, counts } }: { page: RevisionPage }) {
 /** The form of the bar that is open. */
 function panelOf(page: RevisionPage, open: string | null, started: string): React.ReactNode {
   const { may, counts } = page;
+  if (open === "close" && may.close) return <CloseForm page={page} />;
   if (open === "return" && may.decide) {
     return (
       <ReasonForm

@@ -57,7 +57,7 @@ export function Lines({ page }: { page: RevisionPage }) {
           <th scope="col">Species</th>
           <th scope="col">Property</th>
           <th scope="col" className="figure">
-            {page.newest === 0 ? "Stands" : `Stands in edition ${page.newest}`}
+            Stands{page.newest > 0 && <span className="max-sm:sr-only"> in edition {page.newest}</span>}
           </th>
           <th scope="col" className="figure">
             Proposed

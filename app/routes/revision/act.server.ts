@@ -1,5 +1,7 @@
 import { BadRequest, DomainError, Invalid, NotFound } from "#app/http/errors.ts";
+import { demand } from "#app/people/permissions.ts";
 import type { Acting } from "#app/people/person.ts";
+import { demandFresh } from "#app/people/signing.server.ts";
 import { acceptLines, closeReview, declineLines, returnRevision, setFindingAside } from "#app/review/decide.server.ts";
 import {
   commentOn,
@@ -14,15 +16,27 @@ import { readFields, type RevisionForm, revisionForm } from "#app/review/revisio
 import { takeSuggestionOf, writeValue } from "#app/review/revisionPageWrite.server.ts";
 import type { Outcome } from "./outcome.ts";
 
+/** Who sends a form, by which session and from where: closing a review may ask for the password once more. */
+export interface Signer {
+  acting: Acting;
+  sessionId: string;
+  /** The client's address, against which failed passwords are counted. */
+  address: string;
+}
+
 /**
  * Does what a form on the page of a revision asks, by the act of the review room that it names.
  *
  * A refusal comes back as an outcome with its status and sentence, and with what was typed; only what cannot be shown on
  * the page (no such revision, a broken body) is thrown.
  */
-export async function actOnRevision(acting: Acting, revisionId: number, form: FormData): Promise<Outcome> {
+export async function actOnRevision(
+  { acting, sessionId, address }: Signer,
+  revisionId: number,
+  form: FormData,
+): Promise<Outcome> {
   const typed: Record<string, string> = {};
-  for (const [name, value] of form) if (typeof value === "string") typed[name] = value;
+  for (const [name, value] of form) if (typeof value === "string" && name !== "password") typed[name] = value;
   const intent = typed["intent"] ?? "";
   const wrong = (status: number, sentence: string, errors: Record<string, readonly string[]> = {}): Outcome => ({
     ok: false,
@@ -41,6 +55,10 @@ export async function actOnRevision(acting: Acting, revisionId: number, form: Fo
     return wrong(422, above[0] ?? "", errors);
   }
   try {
+    if (reading.value.intent === "close") {
+      demand(acting, "revision:decide");
+      await demandFresh(acting, sessionId, reading.value.password, { address, requestId: acting.requestId });
+    }
     return { ok: true, intent, said: await perform(acting, revisionId, reading.value) };
   } catch (error) {
     if (!(error instanceof DomainError) || error instanceof NotFound || error instanceof BadRequest) throw error;
