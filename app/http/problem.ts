@@ -121,7 +121,7 @@ export function problemAddress(kind: string, publicUrl: string): string {
  * @param kind a key of `problemKinds`; an unknown one becomes `unexpected`
  */
 export function problemOf(kind: string, detail: string, publicUrl: string, requestId?: string): Problem {
-  const known = problemKinds[kind] ? kind : "unexpected";
+  const known = Object.hasOwn(problemKinds, kind) ? kind : "unexpected";
   const { status, title } = problemKinds[known]!;
   return {
     type: problemAddress(known, publicUrl),

@@ -44,15 +44,12 @@ export default function FindPage({ loaderData: found }: Route.ComponentProps) {
   const { text, species, sources, revisions, editions } = found;
   const nothing = species.length + sources.length + revisions.length + editions.length === 0;
   return (
-    <Leaf
-      heading={text ? `Find “${text}”` : "Find"}
-      lede={text ? undefined : "A species, a source, a revision or an edition."}
-    >
-      <Form method="get" action={paths.find()} role="search" aria-label="Find, on this page" className="mb-6">
+    <Leaf heading={text ? `Find “${text}”` : "Find"}>
+      <Form method="get" action={paths.find()} role="search" aria-label="Find, on this page" className="mt-4 mb-6">
         <div className="flex max-w-[40rem] flex-wrap items-end gap-3">
           <div className="grow">
             <label className="field-label" htmlFor="find-text">
-              Find
+              A species, source, revision or edition
             </label>
             <input
               key={text}

@@ -18,7 +18,7 @@ export function Lately({ entries }: { entries: Home["lately"] }) {
         <tbody>
           {entries.map((entry) => (
             <tr key={`${entry.kind} ${entry.at.toISOString()}`}>
-              <th scope="row" className="tight w-32 font-normal text-soft">
+              <th scope="row" className="tight w-20 font-normal sm:w-32 text-soft">
                 <time dateTime={entry.at.toISOString()}>{entry.day}</time>
               </th>
               <td>

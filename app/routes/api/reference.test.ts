@@ -1,0 +1,70 @@
+import { describe, expect, test } from "vitest";
+import { openApiDocument } from "./document.server.ts";
+import { referenceOf } from "./reference.ts";
+
+const document = openApiDocument("https://tables.calderpoint.example");
+const { endpoints, shapes } = referenceOf(document);
+const endpoint = (id: string) => endpoints.find((one) => one.id === id);
+const shape = (name: string) => shapes.find((one) => one.name === name);
+
+describe("the reference in the guide", () => {
+  test("has every operation and every named shape of the contract", () => {
+    expect(endpoints.map((one) => one.path)).toEqual(Object.keys(document.paths ?? {}));
+    expect(shapes.map((one) => one.name)).toEqual(Object.keys(document.components?.schemas ?? {}));
+  });
+
+  test("says of every parameter what it is for", () => {
+    const silent = endpoints.flatMap((one) =>
+      one.parameters
+        .filter((parameter) => parameter.description === "")
+        .map((parameter) => `${one.id} ${parameter.name}`),
+    );
+    expect(silent, "describe it in app/routes/api/contract.ts").toEqual([]);
+  });
+
+  test("says which addresses need a key", () => {
+    expect(endpoints.filter((one) => !one.needsKey).map((one) => one.id)).toEqual(["readContract"]);
+  });
+
+  test("names where a parameter stands and an example of it", () => {
+    expect(endpoint("readSpecies")?.parameters).toMatchObject([
+      { name: "edition", where: "path", required: true, example: "3" },
+      { name: "key", where: "path", required: true, example: "H2O(l)" },
+    ]);
+    expect(endpoint("listSpecies")?.parameters.find((one) => one.name === "limit")).toMatchObject({
+      where: "query",
+      required: false,
+      example: "100",
+    });
+  });
+
+  test("prints the fields of an answer, with the shapes they hold", () => {
+    const [ok] = endpoint("listSpecies")?.answers ?? [];
+    expect(ok).toMatchObject({ status: 200, mediaType: "application/json" });
+    expect(ok?.fields.find((one) => one.name === "species")).toMatchObject({
+      type: "list of Species",
+      shape: "Species",
+    });
+    expect(ok?.fields.find((one) => one.name === "next")).toMatchObject({ type: "text or null", shape: null });
+  });
+
+  test("prints members inside members, alternatives and lists of fixed words", () => {
+    const fields = shape("Value")?.fields ?? [];
+    expect(fields.find((one) => one.name === "source.doi")).toMatchObject({ type: "text or null", optional: false });
+    expect(fields.find((one) => one.name === "uncertainty")).toMatchObject({
+      type: "Uncertainty or null",
+      shape: "Uncertainty",
+    });
+    expect(fields.find((one) => one.name === "origin")).toMatchObject({ type: '"stated", "derived"' });
+    expect(fields.find((one) => one.name === "given")).toMatchObject({ optional: true });
+    expect(shape("Phase")?.values).toContain("aq");
+  });
+
+  test("every shape that a field names is printed", () => {
+    const named = [
+      ...shapes.flatMap((one) => one.fields),
+      ...endpoints.flatMap((one) => one.answers.flatMap((a) => a.fields)),
+    ];
+    for (const { name, shape: of } of named) if (of !== null) expect(shape(of), name).toBeDefined();
+  });
+});
