@@ -48,6 +48,46 @@ export function citationRecord({ number, publishedAt, publisher, licence, digest
   };
 }
 
+export interface RecordedEdition extends CitedEdition {
+  notes: string;
+  speciesCount: number;
+  valueCount: number;
+  /** Addresses with scheme and host: its CSV, the edition before, the edition that withdrew it. */
+  download: string;
+  previous: string | null;
+  withdrawnBy: string | null;
+}
+
+/** An edition as data catalogues read it: JSON-LD in the terms of W3C DCAT 3 and Dublin Core. */
+export function catalogueRecord(edition: RecordedEdition) {
+  const { number, publishedAt, publisher, licence, digest, address, notes, speciesCount, valueCount } = edition;
+  return {
+    "@context": {
+      dcat: "http://www.w3.org/ns/dcat#",
+      dct: "http://purl.org/dc/terms/",
+      foaf: "http://xmlns.com/foaf/0.1/",
+      xsd: "http://www.w3.org/2001/XMLSchema#",
+    },
+    "@id": address,
+    "@type": "dcat:Dataset",
+    "dct:title": `Table of standard formation properties, edition ${number}`,
+    "dct:description": notes,
+    "dct:extent": `${valueCount} values of ${speciesCount} species`,
+    "dct:issued": { "@value": publishedAt.toISOString(), "@type": "xsd:dateTime" },
+    "dct:publisher": { "@type": "foaf:Agent", "foaf:name": publisher },
+    "dct:license": { "@id": `https://spdx.org/licenses/${licence}.html` },
+    "dct:identifier": `sha256:${digest}`,
+    "dcat:version": String(number),
+    ...(edition.previous === null ? {} : { "dcat:previousVersion": { "@id": edition.previous } }),
+    ...(edition.withdrawnBy === null ? {} : { "dct:isReplacedBy": { "@id": edition.withdrawnBy } }),
+    "dcat:distribution": {
+      "@type": "dcat:Distribution",
+      "dcat:downloadURL": { "@id": edition.download },
+      "dcat:mediaType": { "@id": "https://www.iana.org/assignments/media-types/text/csv" },
+    },
+  };
+}
+
 /** What the form "compare edition … with edition …" asks for. */
 export type AskedComparison =
   | { kind: "none" }

@@ -1,6 +1,6 @@
 import { Link } from "react-router";
 import { config } from "#app/config.server.ts";
-import { citationRecord, citationText } from "#app/editions/editionPage.ts";
+import { catalogueRecord, citationRecord, citationText } from "#app/editions/editionPage.ts";
 import { type EditionPage, findEditionPage } from "#app/editions/editionPage.server.ts";
 import { forPage } from "#app/http/respond.server.ts";
 import { paths } from "#app/paths.ts";
@@ -23,27 +23,39 @@ import { useEditionFrame, WithdrawnNotice } from "./edition/Frame.tsx";
 import { keptByAddress } from "./edition/kept.ts";
 import { pinnedEdition } from "./edition/pin.server.ts";
 
-export const meta: Route.MetaFunction = ({ params }) => [
+export const meta: Route.MetaFunction = ({ loaderData, params }) => [
   { title: /^\d+$/.test(params.edition) ? `Edition ${params.edition} · Tablewright` : "Edition · Tablewright" },
+  ...(loaderData ? [{ "script:ld+json": loaderData.record }] : []),
 ];
 
 export const loader = forPage(async ({ request, params }: Route.LoaderArgs) => {
   const acting = await requireActing(request, "table:read");
   const edition = await pinnedEdition(request, params.edition);
   const page = await findEditionPage(acting, edition);
-  const { number, publishedAt, publisher, licence } = page.frame;
+  const { number, publishedAt, publisher, licence, speciesCount, valueCount, withdrawn } = page.frame;
+  const at = (path: string): string => `${config().publicUrl}${path}`;
   const cited = {
     number,
     publishedAt,
     publisher,
     licence,
     digest: page.digest,
-    address: `${config().publicUrl}${paths.edition(number)}`,
+    address: at(paths.edition(number)),
   };
+  const record = catalogueRecord({
+    ...cited,
+    notes: page.notes,
+    speciesCount,
+    valueCount,
+    download: at(paths.tableDownload(number)),
+    previous: page.previous === null ? null : at(paths.edition(page.previous)),
+    withdrawnBy: withdrawn && at(paths.edition(withdrawn.edition)),
+  });
   return {
     page,
     review: await findEditionReview(acting, number),
     cite: { text: citationText(cited), record: JSON.stringify(citationRecord(cited), null, 2) },
+    record,
   };
 });
 

@@ -81,7 +81,7 @@ function NoEdition({ next }: { next: NextEditionCount | null }) {
 }
 
 /** How many columns the table has, for what stands under a row. */
-const COLUMNS = 9;
+const COLUMNS = 8;
 
 function List({ editions }: { editions: readonly ListedEdition[] }) {
   return (
@@ -106,7 +106,6 @@ function List({ editions }: { editions: readonly ListedEdition[] }) {
           <th scope="col" className="figure">
             Went
           </th>
-          <th scope="col">Ways in</th>
         </tr>
       </thead>
       <tbody>
@@ -126,9 +125,6 @@ function List({ editions }: { editions: readonly ListedEdition[] }) {
             <td className="figure">{count(edition.came)}</td>
             <td className="figure">{count(edition.changed)}</td>
             <td className="figure">{count(edition.went)}</td>
-            <td className="tight">
-              <WaysIn number={edition.number} />
-            </td>
           </tr>,
           <RowUnder key={`${edition.number} under`} columns={COLUMNS}>
             <About edition={edition} />
@@ -139,26 +135,26 @@ function List({ editions }: { editions: readonly ListedEdition[] }) {
   );
 }
 
-/** The links of one row. What they lead to is said in full to those who hear them one by one. */
-function WaysIn({ number }: { number: number }) {
+/** The ways on from one edition. What they lead to is said in full to those who hear them one by one. */
+function WaysOn({ number }: { number: number }) {
   return (
-    <span className="inline-flex gap-x-4">
+    <p className="flex flex-wrap gap-x-4">
       <Link to={paths.table(number)}>
-        read<span className="said"> the table of edition {number}</span>
+        read the table<span className="said"> of edition {number}</span>
       </Link>
+      {number > 1 && (
+        <Link to={paths.compare(number - 1, number)}>
+          compare <span className="said">edition {number} </span>with edition {number - 1}
+        </Link>
+      )}
       <a href={paths.tableDownload(number)} download>
         download<span className="said"> edition {number}</span>
       </a>
-      {number > 1 && (
-        <Link to={paths.compare(number - 1, number)}>
-          <span className="said">edition {number} </span>against {number - 1}
-        </Link>
-      )}
-    </span>
+    </p>
   );
 }
 
-function About({ edition: { note, withdraws, withdrawn } }: { edition: ListedEdition }) {
+function About({ edition: { number, note, withdraws, withdrawn } }: { edition: ListedEdition }) {
   return (
     <div className="max-w-[68ch] text-soft">
       <p>
@@ -175,6 +171,7 @@ function About({ edition: { note, withdraws, withdrawn } }: { edition: ListedEdi
           <Prose text={withdrawn.reason} />
         </p>
       )}
+      <WaysOn number={number} />
     </div>
   );
 }

@@ -1,5 +1,6 @@
 import { resolveEdition } from "#app/editions/resolve.server.ts";
 import { forPage } from "#app/http/respond.server.ts";
+import { paths } from "#app/paths.ts";
 import { requireActing } from "#app/people/visitor.server.ts";
 import type { Route } from "./+types/table.download";
 import { tableFileAnswer } from "./api/answer.server.ts";
@@ -8,5 +9,7 @@ import { tableFileAnswer } from "./api/answer.server.ts";
 export const loader = forPage(async ({ request, params }: Route.LoaderArgs) => {
   await requireActing(request, "table:read");
   const { edition } = await resolveEdition(params.edition);
-  return tableFileAnswer(request, edition, "asked", {});
+  return tableFileAnswer(request, edition, "asked", {
+    Link: `<${paths.tableDescription(edition.number)}>; rel="describedby"; type="application/csvm+json"`,
+  });
 });

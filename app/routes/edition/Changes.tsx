@@ -31,6 +31,7 @@ export function Changes({ page }: { page: EditionPage }) {
     ...(renamed > 0 ? [`${count(renamed)} species ${renamed === 1 ? "is" : "are"} called otherwise`] : []),
     ...(recited > 0 ? [`${recited === 1 ? "one source is" : `${count(recited)} sources are`} cited otherwise`] : []),
   ];
+  const cameOnly = listed.every(({ what }) => what === "came");
   const words = changesInWords({ came, changed, went });
   return (
     <Section head="What it changed">
@@ -43,15 +44,16 @@ export function Changes({ page }: { page: EditionPage }) {
           caption={`Changes of edition ${number} against edition ${previous}`}
           rows={listed}
           columns={columnsFor(previous, number, listed)}
+          hidden={cameOnly ? ["what", "before", "difference"] : []}
           rowKey={({ key, property }) => `${key} ${property}`}
-          className="max-w-[60rem]"
+          className={cameOnly ? "max-w-[36rem]" : "max-w-[60rem]"}
         />
       )}
       <p className="mt-3">
         {all > listed.length && listed.length > 0 && (
           <span className="text-soft">
-            The first {count(listed.length)} of {count(all)}, those furthest beyond their uncertainties before the
-            others.{" "}
+            The first {count(listed.length)} of {count(all)}
+            {changed > 0 && ", those furthest beyond their uncertainties before the others"}.{" "}
           </span>
         )}
         <Link to={paths.compare(previous, number)}>

@@ -69,7 +69,7 @@ const columns: readonly Column<CheckRun>[] = [
     id: "check",
     head: "Check",
     rowHead: true,
-    wraps: "wide",
+    wraps: true,
     cell: ({ code, title, known }) =>
       known ? (
         <Link to={paths.conventionsCheck(code)}>

@@ -39,7 +39,7 @@ export function Files({ page: { frame, file, digest, previousDigest, previous } 
           One number that stands for all of them: were a single digit of this edition other than it was published, its
           digest would be another.
         </Lede>
-        <dl className="mb-3 grid max-w-[68ch] gap-x-4 sm:grid-cols-[auto_minmax(0,1fr)]">
+        <dl className="mb-3 grid max-w-[46rem] gap-x-4 sm:grid-cols-[auto_minmax(0,1fr)]">
           <dt className="text-soft">Edition {number}</dt>
           <dd className="mb-1">
             <Hash text={digest} />
