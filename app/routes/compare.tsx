@@ -143,7 +143,7 @@ function CompareRibbon({ from, to, newest }: { from: EditionFrame; to: EditionFr
     <Ribbon
       end={
         <>
-          {to.number !== newest && (
+          {Math.max(from.number, to.number) < newest && (
             <span className="is-look">
               edition {newest} stands: <Link to={paths.compare(from.number, newest)}>compare with it</Link>
             </span>
