@@ -100,6 +100,7 @@ export default function CompareRoute({ loaderData: page }: Route.ComponentProps)
             rows={changes}
             columns={changeColumns(page)}
             rowKey={(change) => `${change.speciesId} ${change.property}`}
+            className="min-w-[60rem]"
           />
           <Pages page={page} />
           <Fine>
@@ -243,7 +244,7 @@ function changeColumns({ from, to, citations }: ComparePage): Column<ShownChange
         before && after && before.sourceId !== after.sourceId ? (
           <>
             {cited(after.sourceId)}
-            <span className="fine block">was {cited(before.sourceId)}</span>
+            <span className="fine block">was {citations[before.sourceId] ?? before.sourceId}</span>
           </>
         ) : (
           cited((after ?? before)?.sourceId ?? "")

@@ -149,7 +149,7 @@ function Values({ page }: { page: SpeciesPage }) {
   }
   const shortOf = (sourceId: string): string => sources.find((one) => one.sourceId === sourceId)?.short ?? sourceId;
   return (
-    <Table caption={`Values of ${species.key} in edition ${frame.number}`} className="max-w-4xl" even>
+    <Table caption={`Values of ${species.key} in edition ${frame.number}`} className="max-w-4xl min-w-[40rem]" even>
       <thead>
         <tr>
           <th scope="col">Property</th>
@@ -256,9 +256,7 @@ function Closure({ page }: { page: SpeciesPage }) {
       )}
       {aboveTranslation !== null && (
         <Lede>
-          <Prose
-            text={`Its entropy stands ${aboveTranslation} J/(mol K) above the floor of translation alone.`}
-          />{" "}
+          <Prose text={`Its entropy stands ${aboveTranslation} J/(mol K) above the floor of translation alone.`} />{" "}
           <Link to={paths.conventions()}>How it is reckoned</Link>
         </Lede>
       )}
@@ -318,9 +316,7 @@ function historyColumns(page: SpeciesPage): Column<HistoryEntry>[] {
       head: "Difference",
       figure: true,
       cell: ({ difference }) =>
-        difference !== null ? (
-          <Figures digits={difference} uncertainty={null} sign="plus" />
-        ) : null,
+        difference !== null ? <Figures digits={difference} uncertainty={null} sign="plus" /> : null,
     },
     {
       id: "why",
@@ -355,6 +351,7 @@ function History({ entries, page }: { entries: readonly HistoryEntry[]; page: Sp
       rows={entries}
       columns={historyColumns(page)}
       rowKey={(entry) => `${entry.edition} ${entry.what} ${entry.property ?? ""}`}
+      className="min-w-[56rem]"
       empty={<EmptyPage>No edition has touched it yet.</EmptyPage>}
     />
   );

@@ -76,6 +76,7 @@ function TableOfEdition({ page }: { page: TablePage }) {
         rowKey={(row) => row.speciesId}
         sorting={{ column: order.by, direction: order.direction }}
         sortedAlready
+        className="min-w-[48rem]"
         empty={
           <EmptyPage start={<ButtonLink to={paths.table(frame.number)}>Show all species</ButtonLink>}>
             No species of edition {frame.number} is like that.
