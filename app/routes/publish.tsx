@@ -327,7 +327,7 @@ function Confirm({ page, answer }: { page: Page; answer: Answer }) {
       {["notes", "licence", "withdraws", "withdrawalReason"].map((name) => (
         <input key={name} type="hidden" name={name} value={typed[name] ?? ""} />
       ))}
-      <dl className="mb-5 grid max-w-[46rem] grid-cols-[max-content_minmax(0,1fr)] gap-x-6 gap-y-1.5">
+      <dl className="mt-3 mb-5 grid max-w-[46rem] grid-cols-[max-content_minmax(0,1fr)] gap-x-6 gap-y-1.5">
         <dt className="text-soft">Brings</dt>
         <dd>{countsInWords(page.counts)}</dd>
         <dt className="text-soft">Notes</dt>

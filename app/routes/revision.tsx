@@ -109,14 +109,13 @@ function bookmarkOf(page: Page): BookmarkProps {
 
 function RevisionRibbon({ page }: { page: Page }) {
   const { revision, counts, sent, newest } = page;
-  const decided = counts.lines - counts.open;
   return (
     <Ribbon
       end={
         <>
           <span>
             {counts.lines === 1 ? "1 line" : `${count(counts.lines)} lines`}
-            {revision.state === "in_review" && decided > 0 && `, ${count(decided)} decided`}
+            {revision.state === "in_review" && counts.open < counts.lines && `, ${count(counts.open)} open`}
             {revision.sheetId !== null && (
               <>
                 {" "}
@@ -168,7 +167,7 @@ function Standing({ page }: { page: Page }) {
   }
   if (revision.state === "decided" && ended) {
     return (
-      <Note kind="clean" word="reviewed">
+      <Note kind="clean" word="decided">
         <p>
           {ended.by} reviewed it and closed the review on <Time at={ended.at} withTime />: {count(counts.accepted)}{" "}
           accepted, {count(counts.declined)} declined.{" "}
