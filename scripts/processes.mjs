@@ -38,10 +38,10 @@ export function startProgram(name, env, giveUp) {
       settle.resolve();
     });
     child.on("error", (error) => settle.reject(error));
-    child.on("exit", async () => {
+    child.on("exit", async (code) => {
       if (stopping) return;
       // Before it was up for the first time it has said itself what is wrong.
-      if (!up) return settle.reject(new Stop(`The ${name} process did not start.`));
+      if (!up) return settle.reject(Object.assign(new Stop(`The ${name} process did not start.`), { code }));
       falls = [...falls.filter((time) => Date.now() - time < 60_000), Date.now()];
       if (falls.length > MOST_FALLS) return giveUp(`The ${name} process ended ${falls.length} times within a minute.`);
       say(`The ${name} process ended unexpectedly; starting it again.`);

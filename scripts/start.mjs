@@ -14,27 +14,34 @@ import { main, say, sleep, Stop } from "./terminal.mjs";
 
 const FIRST_PORT = 3000;
 const PORTS_TRIED = 50;
+/** The exit code with which the web process says that its port is taken. */
+const PORT_TAKEN = 98;
 
-/** Tries to listen; gives the error's code, or undefined when the port is free. */
-function tryPort(port, host) {
+/** Listens on a port; gives what lets go of it again, or the code of the error. */
+function hold(port, host) {
   return new Promise((resolve) => {
-    const server = createServer();
-    server.once("error", (error) => resolve(error.code));
-    server.listen(port, host, () => server.close(() => resolve(undefined)));
+    const server = createServer((connection) => connection.destroy());
+    server.once("error", ({ code }) => resolve({ code }));
+    server.listen(port, host, () => resolve({ port, letGo: () => new Promise((done) => server.close(done)) }));
   });
 }
 
-/** The port asked for, or the first free one from 3000 on. */
-async function choosePort(host) {
+/**
+ * The port asked for, or the first free one from 3000 on. It is held until the web process takes it, so that another
+ * clone that starts meanwhile chooses another one.
+ */
+async function holdPort(host) {
   const { PORT } = process.env;
   const ports = PORT ? [Number(PORT)] : Array.from({ length: PORTS_TRIED }, (_, index) => FIRST_PORT + index);
   for (const port of ports) {
-    const code = await tryPort(port, host);
-    if (code === undefined) return port;
-    if (code === "EADDRNOTAVAIL" || code === "ENOTFOUND" || code === "EAI_AGAIN") {
+    const held = await hold(port, host);
+    if (held.letGo) return held;
+    if (["EADDRNOTAVAIL", "ENOTFOUND", "EAI_AGAIN"].includes(held.code)) {
       throw new Stop("HOST does not name an address of this machine.");
     }
-    if (PORT && code === "EACCES") throw new Stop("PORT may not be used by this user; set it to a port above 1023.");
+    if (PORT && held.code === "EACCES") {
+      throw new Stop("PORT may not be used by this user; set it to a port above 1023.");
+    }
   }
   throw new Stop(
     PORT
@@ -77,7 +84,12 @@ await main(async () => {
   // What was started, to be ended in the reverse order whatever happens.
   const undo = [release];
   try {
-    const port = await choosePort(host);
+    let held = await holdPort(host);
+    undo.push(() => held.letGo());
+    let programs = [];
+    let ending = false;
+    const stopPrograms = () => Promise.all(programs.map((program) => program.stop()));
+    const publicUrlGiven = process.env.PUBLIC_URL;
     const { demo, env, ownerUrl, appUrl, close } = await openEnvironment();
     undo.push(close);
     if (ownerUrl) await migrate(ownerUrl);
@@ -91,18 +103,31 @@ await main(async () => {
       undo.push(inbox.close);
       env.SMTP_URL = inbox.url;
     }
-    env.PORT = String(port);
     env.HOST = host;
-    env.PUBLIC_URL = await publicUrlOf(env);
+    undo.push(stopPrograms, () => (ending = true));
 
     let giveUp;
     const gaveUp = new Promise((_resolve, reject) => (giveUp = (sentence) => reject(new Stop(sentence))));
     gaveUp.catch(() => undefined);
-    const programs = ["web", "worker"].map((name) => startProgram(name, env, giveUp));
-    undo.push(() => Promise.all(programs.map((program) => program.stop())));
-    const up = Promise.all(programs.map((program) => program.ready)).then(() => waitUntilHealthy(host, port));
+    const begin = async () => {
+      const { port } = held;
+      env.PORT = String(port);
+      env.PUBLIC_URL = publicUrlGiven || (await publicUrlOf({ ...env, PUBLIC_URL: undefined }));
+      await held.letGo();
+      if (ending) return;
+      programs = ["web", "worker"].map((name) => startProgram(name, env, giveUp));
+      await Promise.all(programs.map((program) => program.ready));
+      await waitUntilHealthy(host, port);
+    };
+    const up = begin().catch(async (error) => {
+      // In the moment between letting go of the port and taking it, somebody else took it.
+      if (error.code !== PORT_TAKEN || process.env.PORT) throw error;
+      await stopPrograms();
+      held = await holdPort(host);
+      await begin();
+    });
     up.catch(() => undefined);
-    const early = await Promise.race([up.then(() => undefined), stopping, gaveUp]);
+    const early = await Promise.race([up, stopping, gaveUp]);
     if (early === undefined) {
       announce(env.PUBLIC_URL);
       const seconds = ((Date.now() - begun) / 1000).toFixed(1);

@@ -51,6 +51,6 @@ export async function runProcess(start: () => Promise<Running>): Promise<void> {
   } catch (error) {
     const known = error instanceof SettingError || error instanceof ListenError;
     process.stderr.write(`${known ? error.message : String((error as Error).stack ?? error)}\n`);
-    process.exit(1);
+    process.exit(error instanceof ListenError ? error.exitCode : 1);
   }
 }

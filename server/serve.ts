@@ -18,7 +18,15 @@ const KEEP_ALIVE_TIMEOUT = 65_000;
 const GRACE = 8_000;
 
 /** Thrown by `serve` when the address cannot be listened on; the sentence names the setting. */
-export class ListenError extends Error {}
+export class ListenError extends Error {
+  /** The exit code of a process that ends for this: 98, as the system numbers "address in use", else 1. */
+  readonly exitCode: number;
+
+  constructor(sentence: string, exitCode = 1) {
+    super(sentence);
+    this.exitCode = exitCode;
+  }
+}
 
 /** What `serve` gives back. */
 export interface Serving {
@@ -103,7 +111,7 @@ export async function serve(handler: RequestListener, settings: Config): Promise
 
 function listenError(error: Error & { code?: string }, host: string, port: number): Error {
   if (error.code === "EADDRINUSE")
-    return new ListenError(`PORT ${port} is taken by another program; set PORT to a free one.`);
+    return new ListenError(`PORT ${port} is taken by another program; set PORT to a free one.`, 98);
   if (error.code === "EACCES")
     return new ListenError(`PORT ${port} may not be used by this user; set PORT to one above 1023.`);
   if (error.code === "EADDRNOTAVAIL" || error.code === "ENOTFOUND") {
