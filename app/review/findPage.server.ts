@@ -20,7 +20,7 @@ import { findRevisionsLike } from "./review.queries.server.ts";
 import type { RevisionState } from "./states.ts";
 
 /** The longest text that can be looked for. */
-export const LONGEST_FIND = 200;
+const LONGEST_FIND = 200;
 const LISTED = 25;
 /** Species among which the best are chosen before the list is cut. */
 const LOOKED_AT = 500;

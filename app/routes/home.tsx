@@ -10,6 +10,7 @@ import { may, type Permission } from "#app/people/permissions.ts";
 import type { Acting } from "#app/people/person.ts";
 import { findVisitor, requestIdOf } from "#app/people/visitor.server.ts";
 import { findLately, findReviewHome } from "#app/review/homePage.server.ts";
+import { Caution } from "#app/ui/Caution.tsx";
 import { Ribbon } from "#app/ui/EditionLine.tsx";
 import { EmptyPage } from "#app/ui/EmptyPage.tsx";
 import { count } from "#app/ui/figure.ts";
@@ -126,6 +127,7 @@ export default function HomePage({ loaderData: home }: Route.ComponentProps) {
         home.hasRole && <FirstSteps mayBring={home.mayBring} />
       )}
       {home.lately.length > 0 && <Lately entries={home.lately} />}
+      {edition && edition.changes.length > 0 && <Caution />}
     </Leaf>
   );
 }

@@ -69,7 +69,8 @@ export function NextEdition({ next }: { next: NonNullable<Home["next"]> }) {
           </span>
         ))}
         {revisions.length === 1 ? " is decided: " : " are decided: "}
-        {countsInWords(counts)}.{!mayPublish && " A reviewer publishes them."}
+        {countsInWords(counts)}.
+        {!mayPublish && (revisions.length === 1 ? " A reviewer publishes it." : " A reviewer publishes them.")}
       </p>
       {mayPublish && (
         <ButtonLink kind="main" to={paths.publish()}>
