@@ -85,7 +85,7 @@ const COLUMNS = 8;
 
 function List({ editions }: { editions: readonly ListedEdition[] }) {
   return (
-    <Table caption="Every edition, the newest first" even>
+    <Table caption="Every edition, the newest first" even className="max-w-[60rem]">
       <thead>
         <tr>
           <th scope="col">Edition</th>
@@ -138,7 +138,7 @@ function List({ editions }: { editions: readonly ListedEdition[] }) {
 /** The ways on from one edition. What they lead to is said in full to those who hear them one by one. */
 function WaysOn({ number }: { number: number }) {
   return (
-    <p className="flex flex-wrap gap-x-4">
+    <p className="flex flex-wrap gap-x-4 [&>a]:min-h-6">
       <Link to={paths.table(number)}>
         read the table<span className="said"> of edition {number}</span>
       </Link>
