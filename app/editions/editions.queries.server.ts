@@ -426,21 +426,6 @@ export async function findSpeciesOnceCalled(n: number, key: string, db: Database
     .execute();
 }
 
-/**
- * Values of edition n behind a place in the order of key and property, at most `limit`: a download reads an edition in
- * such portions, so that it never stands in memory whole. An edition never changes, so the portions belong together.
- */
-export async function findValuesBehind(
-  n: number,
-  place: { key: string; property: string } | null,
-  limit: number,
-  db: Database,
-) {
-  let query = valuesAsOf(n, {}, db).limit(limit);
-  if (place) query = query.where(sql<boolean>`(d.key, v.property) > (${place.key}, ${place.property})`);
-  return (await query.execute()).map(withUncertainty);
-}
-
 // --- Sources ----------------------------------------------------------------
 
 export type SourceKind = "measurement" | "evaluation" | "calculation" | "estimate";

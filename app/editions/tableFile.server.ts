@@ -1,6 +1,6 @@
 import { createHash } from "node:crypto";
 import { database } from "#app/db/database.server.ts";
-import { type Edition, findDetailsAsOf, findValuesBehind } from "./editions.queries.server.ts";
+import { type Edition, findDetailsAsOf, findValuesAsOf } from "./editions.queries.server.ts";
 import { findSources } from "./read.server.ts";
 import { fileHead, fileLine } from "./tableFile.ts";
 
@@ -11,22 +11,22 @@ export interface FileDigest {
   length: number;
 }
 
-/** Values read at a time. */
-const PORTION = 2_000;
+/** Species whose values are read at a time. */
+const PORTION = 1_000;
 
-/** The lines of an edition's CSV in portions; an edition never stands in memory whole. */
-async function* portions(n: number): AsyncGenerator<Buffer> {
-  const details = new Map((await findDetailsAsOf(n, {}, database())).map((detail) => [detail.speciesId, detail]));
+/**
+ * The lines of an edition's CSV in portions; its values never stand in memory all at once. An edition never changes, so
+ * portions read one after another belong together.
+ */
+export async function* tableFilePortions(n: number, size = PORTION): AsyncGenerator<Buffer> {
+  const details = await findDetailsAsOf(n, {}, database());
   const sources = await findSources(n);
   yield Buffer.from(fileHead(), "utf8");
-  let place: { key: string; property: string } | null = null;
-  for (;;) {
-    const values = await findValuesBehind(n, place, PORTION, database());
-    const last = values.at(-1);
-    if (!last) return;
-    place = { key: last.key, property: last.property };
+  for (let first = 0; first < details.length; first += size) {
+    const portion = new Map(details.slice(first, first + size).map((detail) => [detail.speciesId, detail]));
+    const values = await findValuesAsOf(n, { speciesIds: [...portion.keys()] }, database());
     const lines = values.flatMap((value) => {
-      const detail = details.get(value.speciesId);
+      const detail = portion.get(value.speciesId);
       return detail ? [fileLine({ edition: n, value, detail, sources })] : [];
     });
     yield Buffer.from(lines.join(""), "utf8");
@@ -44,7 +44,7 @@ export async function digestTableFile(edition: Edition): Promise<FileDigest> {
   if (found) return found;
   const hash = createHash("sha256");
   let length = 0;
-  for await (const portion of portions(edition.number)) {
+  for await (const portion of tableFilePortions(edition.number)) {
     hash.update(portion);
     length += portion.length;
   }
@@ -56,7 +56,7 @@ export async function digestTableFile(edition: Edition): Promise<FileDigest> {
 
 /** The edition's CSV as a stream of bytes. */
 export function streamTableFile(edition: Edition): ReadableStream<Uint8Array> {
-  const source = portions(edition.number);
+  const source = tableFilePortions(edition.number);
   return new ReadableStream<Uint8Array>({
     async pull(controller) {
       const { done, value } = await source.next();

@@ -1,4 +1,5 @@
 import { beforeAll, describe, expect, test } from "vitest";
+import { useDatabase as workOn } from "#app/db/database.server.ts";
 import { countChanges, pairValues } from "#app/editions/compare.ts";
 import { editionDigest } from "#app/editions/digest.ts";
 import {
@@ -10,12 +11,12 @@ import {
   findSourceDetailsAsOf,
   findSpeciesPageAsOf,
   findValuesAsOf,
-  findValuesBehind,
   findValuesThatCame,
   findValuesThatWent,
   type ValueAsOf,
 } from "#app/editions/editions.queries.server.ts";
 import { EVERY_SPECIES, readSearch, type SpeciesFilter } from "#app/editions/search.ts";
+import { tableFilePortions } from "#app/editions/tableFile.server.ts";
 import { useDatabase } from "#tests/support/database.ts";
 import { publishThreeEditions } from "#tests/support/editions.ts";
 
@@ -81,23 +82,19 @@ describe("reading as of an edition", () => {
     expect(await findValuesAsOf(3, { speciesIds: [] }, database.app)).toEqual([]);
     expect(keysOf(await findValuesAsOf(3, { sourceIds: ["src_calderpoint9"] }, database.app))).toEqual(["NH3(g)"]);
   });
+});
 
-  test("portions of a download are the whole, once each", async () => {
-    const whole = await findValuesAsOf(2, {}, database.app);
-    const portions: ValueAsOf[] = [];
-    for (;;) {
-      const last = portions.at(-1);
-      const portion = await findValuesBehind(
-        2,
-        last ? { key: last.key, property: last.property } : null,
-        3,
-        database.app,
-      );
-      if (portion.length === 0) break;
-      portions.push(...portion);
-    }
-    expect(portions).toEqual(whole);
-  });
+test("a download read in portions is the whole, in order, whatever their size", async () => {
+  workOn(database.app);
+  const read = async (size: number) => {
+    const portions: Buffer[] = [];
+    for await (const portion of tableFilePortions(2, size)) portions.push(portion);
+    return Buffer.concat(portions).toString("utf8");
+  };
+  const whole = await read(1_000);
+  expect(await read(1)).toBe(whole);
+  expect(await read(3)).toBe(whole);
+  expect(whole.trimEnd().split("\r\n").length - 1).toBe((await findValuesAsOf(2, {}, database.app)).length);
 });
 
 describe("editions", () => {
