@@ -18,7 +18,7 @@ export interface CitedEdition {
 }
 
 /** Day of a moment in UTC, as ISO 8601 writes it: 2026-03-12. */
-export function isoDay(at: Date): string {
+function isoDay(at: Date): string {
   return at.toISOString().slice(0, 10);
 }
 

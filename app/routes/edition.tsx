@@ -82,7 +82,7 @@ export default function EditionRoute({ loaderData: { page, review, cite } }: Rou
     >
       <WithdrawnNotice frame={frame} />
       <Withdraws page={page} />
-      <p className="mb-4 max-w-[68ch] whitespace-pre-line">
+      <p className="my-4 max-w-[68ch] whitespace-pre-line">
         <Prose text={page.notes} />
       </p>
       <div className="actions">
