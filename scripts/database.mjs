@@ -49,18 +49,53 @@ export async function migrate(ownerUrl) {
 }
 
 /** Makes the demo's content with the application's own acts and the application's own rights. */
-export async function seed(appUrl, env = process.env) {
+async function seed(appUrl, env = process.env) {
   await runOrStop("The demo's content could not be made.", bin("kysely"), ["seed", "run", "--no-outdated-check"], {
     env: { ...env, DATABASE_URL: appUrl },
   });
 }
 
-/** True when the database holds no edition yet: the mark of a database that was never seeded or used. */
-export async function isEmpty(ownerUrl) {
+// Stands as the database's comment once the demo is whole; a start that was broken off while making it leaves none.
+const WHOLE = "the demo is made";
+
+/** Whether the demo's content is all there, none of it, or a part that a broken-off start left behind. */
+export async function demoContent(ownerUrl) {
   return withOwner(ownerUrl, async (client) => {
-    const { rows } = await client.query("select exists (select from person) as used");
-    return !rows[0].used;
+    const { rows } = await client.query(
+      `select shobj_description(oid, 'pg_database') as note, exists (select from person) as used
+         from pg_database where datname = current_database()`,
+    );
+    if (rows[0].note === WHOLE) return "whole";
+    return rows[0].used ? "part" : "none";
   });
+}
+
+/** Makes the demo's content where it is missing, on a new database where only a part of it is there. */
+export async function ensureDemo({ superUrl, ownerUrl, appUrl }, env = process.env) {
+  const found = await demoContent(ownerUrl);
+  if (found === "whole") return;
+  if (found === "part") {
+    say("A start was broken off while it made the demo's content; it is made anew.");
+    await replaceDatabase(superUrl);
+    await migrate(ownerUrl);
+  } else {
+    say("Making the demo's content …");
+  }
+  await seed(appUrl, env);
+  await withOwner(ownerUrl, (client) => client.query(`comment on database tablewright is '${WHOLE}'`));
+}
+
+async function replaceDatabase(superUrl) {
+  const { default: pg } = await import("pg");
+  const client = new pg.Client({ connectionString: superUrl });
+  await client.connect();
+  try {
+    await client.query("drop database if exists tablewright with (force)");
+    await client.query("create database tablewright owner tablewright_owner");
+    await client.query(sqlForDatabaseRights("tablewright"));
+  } finally {
+    await client.end();
+  }
 }
 
 /** A plain-text picture of the schema, without what differs between machines. */
@@ -128,27 +163,21 @@ const commands = {
   },
   async seed() {
     refuseWithDatabaseUrl("npm run db:seed");
-    await withDatabase(async ({ ownerUrl, appUrl }) => {
-      await migrate(ownerUrl);
-      if (!(await isEmpty(ownerUrl))) {
+    await withDatabase(async (cluster) => {
+      await migrate(cluster.ownerUrl);
+      if ((await demoContent(cluster.ownerUrl)) === "whole") {
         throw new Stop("The demo's database is not empty, so nothing was added; npm run db:reset empties it first.");
       }
-      await seed(appUrl);
+      await ensureDemo(cluster);
       say("The demo's content was made.");
     });
   },
   async reset() {
     refuseWithDatabaseUrl("npm run db:reset");
-    await withDatabase(async ({ superUrl, ownerUrl, appUrl }) => {
-      const { default: pg } = await import("pg");
-      const client = new pg.Client({ connectionString: superUrl });
-      await client.connect();
-      await client.query("drop database if exists tablewright with (force)");
-      await client.query("create database tablewright owner tablewright_owner");
-      await client.query(sqlForDatabaseRights("tablewright"));
-      await client.end();
-      await migrate(ownerUrl);
-      await seed(appUrl);
+    await withDatabase(async (cluster) => {
+      await replaceDatabase(cluster.superUrl);
+      await migrate(cluster.ownerUrl);
+      await ensureDemo(cluster);
       say(`The demo's database in ${clusterFolder()} was made anew.`);
     });
   },

@@ -2,7 +2,7 @@
 import { createServer as createViteServer } from "vite";
 import { announce, claim, release } from "./claim.mjs";
 import { freePort } from "./cluster.mjs";
-import { isEmpty, migrate, seed } from "./database.mjs";
+import { ensureDemo, migrate } from "./database.mjs";
 import { openEnvironment, publicUrlOf } from "./environment.mjs";
 import { startInbox } from "./inbox.mjs";
 import { stopRequest } from "./processes.mjs";
@@ -16,7 +16,7 @@ await main(async () => {
     const { demo, env, ownerUrl, appUrl, close } = await openEnvironment();
     undo.push(close);
     if (ownerUrl) await migrate(ownerUrl);
-    if (demo && (await isEmpty(ownerUrl))) await seed(appUrl, env);
+    if (demo) await ensureDemo({ superUrl, ownerUrl, appUrl }, env);
     if (demo && !env.SMTP_URL) {
       const inbox = await startInbox(env.TABLEWRIGHT_MAIL_FOLDER);
       undo.push(inbox.close);

@@ -87,7 +87,7 @@ function ownSecret() {
 /**
  * Opens the database meant and writes the environment for the server's programs.
  *
- * @returns {Promise<{ demo: boolean, env: NodeJS.ProcessEnv, ownerUrl: string | undefined, appUrl: string, started: boolean, close(): Promise<void> }>}
+ * @returns {Promise<{ demo: boolean, env: NodeJS.ProcessEnv, superUrl?: string, ownerUrl: string | undefined, appUrl: string, started: boolean, close(): Promise<void> }>}
  *   `ownerUrl` is undefined when the person keeps the migrations to another place; `close` stops the demo's cluster, and
  *   `started` says whether it was started here
  */
@@ -124,6 +124,7 @@ export async function openEnvironment() {
       TABLEWRIGHT_DEMO: "yes",
       TABLEWRIGHT_MAIL_FOLDER: path.join(dataFolder, "mail"),
     },
+    superUrl: cluster.superUrl,
     ownerUrl: cluster.ownerUrl,
     appUrl: cluster.appUrl,
     started: cluster.started,

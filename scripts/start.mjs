@@ -5,7 +5,7 @@
 import { createServer } from "node:net";
 import { ensureBuild } from "./build.mjs";
 import { announce, claim, release } from "./claim.mjs";
-import { isEmpty, migrate, seed } from "./database.mjs";
+import { ensureDemo, migrate } from "./database.mjs";
 import { checkSettings, importTypeScript, openEnvironment, publicUrlOf } from "./environment.mjs";
 import { startInbox } from "./inbox.mjs";
 import { startProgram, stopRequest } from "./processes.mjs";
@@ -90,13 +90,10 @@ await main(async () => {
     let ending = false;
     const stopPrograms = () => Promise.all(programs.map((program) => program.stop()));
     const publicUrlGiven = process.env.PUBLIC_URL;
-    const { demo, env, ownerUrl, appUrl, close } = await openEnvironment();
+    const { demo, env, superUrl, ownerUrl, appUrl, close } = await openEnvironment();
     undo.push(close);
     if (ownerUrl) await migrate(ownerUrl);
-    if (demo && (await isEmpty(ownerUrl))) {
-      say("Making the demo's content …");
-      await seed(appUrl, env);
-    }
+    if (demo) await ensureDemo({ superUrl, ownerUrl, appUrl }, env);
     await ensureBuild();
     if (demo && !env.SMTP_URL) {
       const inbox = await startInbox(env.TABLEWRIGHT_MAIL_FOLDER);

@@ -158,7 +158,10 @@ export function overlayView(input: OverlayInput): TableView {
     for (const line of lines) {
       if (!line.speciesId || !line.property) continue;
       const values = valuesOf(map, line.speciesId);
-      if (line.content.kind === "withdrawal") delete values[line.property];
+      if (line.content.kind === "withdrawal") {
+        const { [line.property]: _withdrawn, ...kept } = values;
+        map.set(line.speciesId, kept);
+      }
       if (line.content.kind === "value") {
         values[line.property] = fromLine(line, line.content, mark ? line.id : null);
       }

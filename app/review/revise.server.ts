@@ -85,6 +85,7 @@ export async function rewriteLine(
   acting: Acting,
   change: { revisionId: number; lineId: string; expectedVersion: number; content: LineContent; reason: string },
 ): Promise<void> {
+  demandReason(change.reason, "Say why the line is changed.");
   await act(acting, async ({ trx, record }) => {
     await findWritable(acting, change.revisionId, trx);
     const line = await findOwnLine(change.revisionId, change.lineId, trx);
@@ -120,8 +121,18 @@ export async function rewriteLine(
   });
 }
 
+function demandReason(reason: string, sentence: string): void {
+  if (!reason.trim()) throw new Invalid(sentence, [{ pointer: "/reason", detail: sentence }]);
+}
+
+/** Whether a line still proposes something: declined, dropped and published ones do not. */
+function isProposing(line: Pick<LineRow, "state">): boolean {
+  return line.state === "open" || line.state === "accepted";
+}
+
 /** Takes a line out of a draft or returned revision; it stays on record. */
 export async function takeLineOut(acting: Acting, revisionId: number, lineId: string, reason: string): Promise<void> {
+  demandReason(reason, "Say why the line is taken out.");
   await act(acting, async ({ trx, record }) => {
     await findWritable(acting, revisionId, trx);
     const line = await findOwnLine(revisionId, lineId, trx);
@@ -153,7 +164,7 @@ export async function restateLines(acting: Acting, revisionId: number): Promise<
       lines.map((line) => line.id),
       trx,
     );
-    const overtaken = lines.filter((line) => line.state !== "published" && isOvertaken(line, bases.get(line.id)));
+    const overtaken = lines.filter((line) => isProposing(line) && isOvertaken(line, bases.get(line.id)));
     for (const line of overtaken) {
       const base = bases.get(line.id);
       await updateLineBase(
@@ -243,8 +254,7 @@ export async function sendToReview(acting: Acting, id: number, remark: string): 
 
 /** Withdraws a revision; its lines are dropped and stay on record. */
 export async function withdrawRevision(acting: Acting, id: number, reason: string): Promise<void> {
-  if (!reason.trim())
-    throw new Invalid("Say why the revision is withdrawn.", [{ pointer: "/reason", detail: "Say why." }]);
+  demandReason(reason, "Say why the revision is withdrawn.");
   await act(acting, async ({ trx, record }) => {
     demand(acting, "revision:write");
     const revision = await findRevisionForUpdate(id, trx);

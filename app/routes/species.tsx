@@ -98,11 +98,13 @@ function Identity({ page: { species, also, frame } }: { page: SpeciesPage }) {
   const phases = also.filter((other) => other.sameSubstance);
   return (
     <>
-      {species.name}
-      {species.cas && ` · CAS ${species.cas}`}
+      {[species.name, species.cas && `CAS ${species.cas}`]
+        .filter(Boolean)
+        .map((text) => `${text} · `)
+        .join("")}
       {species.molarMass !== null && (
         <>
-          {` · ${species.molarMass} `}g mol<sup>−1</sup>
+          {species.molarMass} g mol<sup>−1</sup>
         </>
       )}
       {species.synonyms.length > 0 && ` · also called ${species.synonyms.join(", ")}`}

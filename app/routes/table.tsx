@@ -209,7 +209,10 @@ function columnsFor(edition: number, shown: readonly Property[], rows: readonly 
       compare: sortedByServer,
       cell: (row) => <SpeciesName speciesKey={row.key} to={paths.species(edition, row.key)} />,
     },
-    { id: "name", head: "Name", wraps: true, compare: sortedByServer, cell: (row) => row.name },
+    // Many published tables print no names; a column of blanks would only push the figures apart.
+    ...(rows.some((row) => row.name !== "")
+      ? [{ id: "name", head: "Name", wraps: true, compare: sortedByServer, cell: (row: TableRow) => row.name }]
+      : []),
     ...shown.map((property): Column<TableRow> => {
       const tail = tailOf(
         rows.flatMap(({ values }) => {

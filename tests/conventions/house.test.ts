@@ -43,7 +43,7 @@ describe("the tree", () => {
   test.each([...folders, "server/", "scripts/", "db/", "fixtures/", "tests/"])(
     "%s has its line in DEVELOPERS.md",
     (folder) => {
-      expect(developers).toContain(`| \`${folder}\` |`);
+      expect(developers.split("\n").some((line) => line.startsWith(`| \`${folder}\` `))).toBe(true);
     },
   );
 
@@ -102,10 +102,15 @@ describe("where things may stand", () => {
 
 describe("what is left open or silenced", () => {
   test("nothing is left for later in the code", () => {
+    const code = (file: string) =>
+      read(file)
+        .split("\n")
+        .filter((line) => !/^\s*(\*|\/\/|\/\*)/.test(line) || /\b(TODO|FIXME|XXX)\b|@ts-ignore/.test(line))
+        .join("\n");
     const found = sources
       .filter((file) => file !== "tests/conventions/house.test.ts")
       .filter((file) =>
-        /\b(TODO|FIXME|XXX)\b|@ts-ignore|\bas any\b|: any\b|\.only\(|\.skip\(|\.todo\(/.test(read(file)),
+        /\b(TODO|FIXME|XXX)\b|@ts-ignore|\bas any\b|: any\b|\.only\(|\.skip\(|\.todo\(/.test(code(file)),
       );
     expect(found).toEqual([]);
   });

@@ -86,11 +86,6 @@ async function refusalOf(work: Promise<unknown>): Promise<Error> {
   throw new Error("It was not refused.");
 }
 
-const enthalpyOf = async (n: number) =>
-  (await findValuesAsOf(n, {}, database.app)).find(
-    (row) => row.key === "NH3(g)" && row.property === "enthalpyOfFormation",
-  );
-
 test("the first edition holds what was accepted, digit for digit", async () => {
   const values = await findValuesAsOf(1, {}, database.app);
   expect(values.map((row) => `${row.key} ${row.property} ${row.digits}`)).toEqual([
@@ -204,7 +199,13 @@ test("an edit after the decision voids it, visibly, and the line must be decided
   ]);
   expect(
     await refusalOf(
-      rewriteLine(steward, { revisionId: id, lineId: line.id, expectedVersion: 1, content: line.content, reason: "" }),
+      rewriteLine(steward, {
+        revisionId: id,
+        lineId: line.id,
+        expectedVersion: 1,
+        content: line.content,
+        reason: "again",
+      }),
     ),
   ).toBeInstanceOf(Refused);
   await sendToReview(steward, id, "mended");
