@@ -13,7 +13,7 @@ await main(async () => {
   if (!claim()) return;
   const undo = [release];
   try {
-    const { demo, env, ownerUrl, appUrl, close } = await openEnvironment();
+    const { demo, env, superUrl, ownerUrl, appUrl, close } = await openEnvironment();
     undo.push(close);
     if (ownerUrl) await migrate(ownerUrl);
     if (demo) await ensureDemo({ superUrl, ownerUrl, appUrl }, env);
