@@ -137,15 +137,16 @@ describe.each(all.filter((pattern) => !isApi(pattern)).map((pattern) => [pattern
     }
   });
 
-  test.runIf(doors.intents)("does for each what their roles allow, form by form", async () => {
-    for (const [intent, permission] of Object.entries(doors.intents ?? {}) as [string, Permission][]) {
-      for (const { name, roles, acting, cookie } of visitors) {
-        const got = await outcomeOf(await post(address, cookie, { intent, ...fields[intent] }));
-        const open = isOpenTo(doors.change, roles) && may(roles, permission);
-        expect(got, `${name}: ${intent}`).toBe(open ? "let in" : acting ? "refused" : "nobody");
+  if (doors.intents)
+    test("does for each what their roles allow, form by form", async () => {
+      for (const [intent, permission] of Object.entries(doors.intents ?? {}) as [string, Permission][]) {
+        for (const { name, roles, acting, cookie } of visitors) {
+          const got = await outcomeOf(await post(address, cookie, { intent, ...fields[intent] }));
+          const open = isOpenTo(doors.change, roles) && may(roles, permission);
+          expect(got, `${name}: ${intent}`).toBe(open ? "let in" : acting ? "refused" : "nobody");
+        }
       }
-    }
-  });
+    });
 });
 
 describe.each(all.filter(isApi).map((pattern) => [pattern]))("%s", (pattern) => {
