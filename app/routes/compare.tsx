@@ -239,7 +239,7 @@ function changeColumns({ from, to, citations }: ComparePage): Column<ShownChange
     {
       id: "source",
       head: "Source",
-      wraps: true,
+      wraps: "wide",
       cell: ({ before, after }) =>
         before && after && before.sourceId !== after.sourceId ? (
           <>

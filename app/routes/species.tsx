@@ -323,7 +323,7 @@ function historyColumns(page: SpeciesPage): Column<HistoryEntry>[] {
     {
       id: "why",
       head: "Source or reason",
-      wraps: true,
+      wraps: "wide",
       cell: ({ sourceId, sentence }) =>
         sentence !== null ? (
           <Prose text={sentence} />
@@ -334,7 +334,7 @@ function historyColumns(page: SpeciesPage): Column<HistoryEntry>[] {
     {
       id: "who",
       head: "Who",
-      wraps: true,
+      wraps: "wide",
       cell: ({ revisionId, writer, decider }) => (
         <>
           <Link to={paths.revision(revisionId)}>revision {revisionId}</Link>

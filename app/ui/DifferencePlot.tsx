@@ -32,7 +32,8 @@ export function DifferencePlot({
     1e-9,
   );
   const tail = tailOf(differences.map(({ printed }) => printed));
-  const marks = ticks(-reach, reach, 6);
+  // The cell is narrow: three or so labels keep apart.
+  const marks = ticks(-reach, reach, 3);
   // 1000 units wide and stretched to the cell; strokes keep their width.
   const x = scale([-reach, reach], [20, 980]);
   return (
@@ -46,7 +47,7 @@ export function DifferencePlot({
           <th scope="col" className="figure">
             {head}
           </th>
-          <th scope="col">Against both uncertainties</th>
+          <th scope="col">Both uncertainties</th>
         </tr>
       </thead>
       <tbody>

@@ -53,7 +53,10 @@ export function NextLines({ revision, previous }: { revision: NextRevision; prev
                 <ValueCells line={line} property={line.property} tails={tails} />
               ) : (
                 <td colSpan={4}>
-                  <span className="text-soft">{line.what}: </span>
+                  <span className="text-soft">
+                    {line.what}
+                    {line.changes.length > 0 && ": "}
+                  </span>
                   {line.changes.map(({ label, before, after }, index) => (
                     <span key={label}>
                       {index > 0 && <span className="text-soft"> · </span>}
