@@ -1,4 +1,5 @@
 import { sql } from "kysely";
+import { batches } from "#app/db/batches.ts";
 import type { Database } from "#app/db/database.server.ts";
 import { rowHash } from "#app/editions/digest.ts";
 import type { Property } from "#app/thermo/property.ts";
@@ -9,12 +10,6 @@ import { hashedSourceDetail, hashedSpeciesDetail, hashedValue } from "./nextEdit
  * The rows of the open edition. Every statement works on a batch: what goes out is marked first, then what comes in is
  * inserted, so that the exclusion constraints never see two rows for one place.
  */
-
-const BATCH = 2000;
-
-function* batches<T>(rows: readonly T[]): Generator<readonly T[]> {
-  for (let start = 0; start < rows.length; start += BATCH) yield rows.slice(start, start + BATCH);
-}
 
 export interface ValueComing {
   speciesId: string;

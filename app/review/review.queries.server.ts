@@ -1,4 +1,5 @@
 import { sql } from "kysely";
+import { batches } from "#app/db/batches.ts";
 import type { Database } from "#app/db/database.server.ts";
 import type { Finding } from "#app/checks/types.ts";
 import type { Property } from "#app/thermo/property.ts";
@@ -40,13 +41,6 @@ export interface LineRow {
   contentHash: Buffer;
   madeBy: string;
   madeAt: Date;
-}
-
-// One line of a batch carries at most eleven parameters; PostgreSQL takes 65 535 in a statement.
-const BATCH = 2000;
-
-function* batches<T>(rows: readonly T[]): Generator<readonly T[]> {
-  for (let start = 0; start < rows.length; start += BATCH) yield rows.slice(start, start + BATCH);
 }
 
 /** The revision with the names of its people, or undefined. */

@@ -210,16 +210,24 @@ export async function up(db: Kysely<unknown>): Promise<void> {
 
     -- A new version of a line voids what was decided on the one before.
     create function tg_line_version_added() returns trigger language plpgsql as $$
+    declare
+      line_state text;
+      revision_state text;
     begin
-      update revision_line set state = 'open' where id = new.line_id and state in ('open', 'accepted', 'declined');
-      if not found then
-        raise exception 'This line is published or dropped and takes no further version.' using errcode = 'TW006';
-      end if;
-      if (select r.state from revision r join revision_line l on l.revision_id = r.id where l.id = new.line_id) not in ('draft', 'returned') then
+      select l.state, r.state into line_state, revision_state
+        from revision_line l join revision r on r.id = l.revision_id where l.id = new.line_id;
+      if revision_state not in ('draft', 'returned') then
         raise exception 'Lines are edited while their revision is a draft or was returned.' using errcode = 'TW006';
+      end if;
+      if line_state not in ('open', 'accepted', 'declined') then
+        raise exception 'This line is published or dropped and takes no further version.' using errcode = 'TW006';
       end if;
       if new.version <> (select coalesce(max(version), 0) + 1 from line_version where line_id = new.line_id) then
         raise exception 'Versions of a line are numbered without gaps.' using errcode = 'TW006';
+      end if;
+      -- A line is born open, so the first version of each of a sheet's thousands of lines has nothing to reopen.
+      if line_state <> 'open' then
+        update revision_line set state = 'open' where id = new.line_id;
       end if;
       return new;
     end
