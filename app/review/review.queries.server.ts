@@ -237,25 +237,21 @@ export async function findLineBases(lineIds: readonly string[], db: Database): P
     select l.id::text as "lineId",
            coalesce(tv.id, sd.id, so.id)::text as "standingRow",
            coalesce(tv.line_version_id, sd.line_version_id, so.line_version_id)::text as "standingVersion",
-           (select max(v.id) from line_version v where v.line_id = w.id)::text as "waitingVersion",
-           w.revision_id as "waitingRevision"
+           -- Newest by version, which the unique index gives; max(id) would walk the whole primary key for each line.
+           (select v.id from line_version v where v.line_id = coalesce(ws.id, wo.id) order by v.version desc limit 1)::text as "waitingVersion",
+           coalesce(ws.revision_id, wo.revision_id) as "waitingRevision"
       from revision_line l
       left join table_value tv on l.kind in ('value', 'withdrawal') and tv.species_id = l.species_id and tv.property = l.property and tv.until is null
       left join species_detail sd on l.kind = 'detail' and sd.species_id = l.species_id and sd.until is null
       left join source_detail so on l.kind = 'source' and so.source_id = l.source_id and so.until is null
-      left join revision_line w on w.state = 'accepted' and w.id <> l.id
-           and ((l.source_id is not null and w.source_id = l.source_id)
-             or (l.species_id is not null and w.species_id = l.species_id and coalesce(w.property, '') = coalesce(l.property, '')))
+      -- Two joins by equality rather than one with "or": each has its partial unique index, or is hashed.
+      left join revision_line ws on ws.state = 'accepted' and ws.species_id is not null and ws.id <> l.id
+           and ws.species_id = l.species_id and coalesce(ws.property, '') = coalesce(l.property, '')
+      left join revision_line wo on wo.state = 'accepted' and wo.source_id is not null and wo.id <> l.id
+           and wo.source_id = l.source_id
      where l.id = any(${sql.val([...lineIds])}::bigint[])
   `.execute(db);
   return new Map(result.rows.map((row) => [row.lineId, row]));
-}
-
-/** What a place (species and property, species, or source) holds now, for a line about to be written. */
-export interface PlaceBase {
-  standingRow: string | null;
-  waitingVersion: string | null;
-  waitingRevision: number | null;
 }
 
 /** The newest accepted line that waits for a place, or undefined. */
