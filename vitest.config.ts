@@ -13,6 +13,8 @@ const common = {
 export default defineConfig({
   test: {
     reporters: ["default"],
+    // A browser or server test mostly waits for another process, so two files at once keep two cores busy.
+    maxWorkers: 2,
     projects: [
       {
         test: {
