@@ -27,6 +27,7 @@ export const acts = {
   "sheet.built": "sheet",
   "revision.begun": "revision",
   "revision.line-written": "revision",
+  "revision.lines-added": "revision",
   "revision.line-taken-out": "revision",
   "revision.described": "revision",
   "revision.sent": "revision",

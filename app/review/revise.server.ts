@@ -56,7 +56,7 @@ export async function insertRevisionWithLines(acting: Acting, draft: RevisionDra
 }
 
 /** The revision, if it exists and this person may write in it now. */
-async function findWritable(acting: Acting, id: number, trx: ActScope["trx"]) {
+export async function findWritable(acting: Acting, id: number, trx: ActScope["trx"]) {
   demand(acting, "revision:write");
   const revision = await findRevisionForUpdate(id, trx);
   if (!revision) throw new NotFound(`There is no revision ${id}.`);
