@@ -20,6 +20,7 @@ import { FormErrors } from "#app/ui/FormErrors.tsx";
 import { Leaf } from "#app/ui/Leaf.tsx";
 import { Note } from "#app/ui/Note.tsx";
 import { Time } from "#app/ui/Time.tsx";
+import { useRootData } from "#app/ui/useRootData.ts";
 import type { Route } from "./+types/revision";
 import { actOnRevision } from "./revision/act.server.ts";
 import { Bar } from "./revision/Bar.tsx";
@@ -108,6 +109,7 @@ function bookmarkOf(page: Page): BookmarkProps {
 }
 
 function RevisionRibbon({ page }: { page: Page }) {
+  const { opens } = useRootData();
   const { revision, counts, sent, newest } = page;
   return (
     <Ribbon
@@ -119,7 +121,12 @@ function RevisionRibbon({ page }: { page: Page }) {
             {revision.sheetId !== null && (
               <>
                 {" "}
-                · sheet <Link to={paths.sheet(revision.sheetId)}>{revision.sheetName}</Link>
+                · sheet{" "}
+                {opens.includes("sheets") ? (
+                  <Link to={paths.sheet(revision.sheetId)}>{revision.sheetName}</Link>
+                ) : (
+                  revision.sheetName
+                )}
               </>
             )}
           </span>
