@@ -1,20 +1,5 @@
 import { sql } from "kysely";
 import type { Database } from "#app/db/database.server.ts";
-import { type LineContent, lineContent } from "./content.ts";
-
-/** What these versions of lines say, by version id. */
-export async function findVersionContents(
-  versionIds: readonly string[],
-  db: Database,
-): Promise<Map<string, LineContent>> {
-  if (versionIds.length === 0) return new Map();
-  const rows = await db
-    .selectFrom("line_version")
-    .select(["id", "content"])
-    .where(sql<boolean>`id = any(${[...versionIds]}::bigint[])`)
-    .execute();
-  return new Map(rows.map((row) => [row.id, lineContent.parse(row.content)]));
-}
 
 /** Those of these sources that have an identity in the table. */
 export async function findKnownSourceIds(ids: readonly string[], db: Database): Promise<Set<string>> {

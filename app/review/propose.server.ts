@@ -11,7 +11,7 @@ import type { Phase } from "#app/thermo/phase.ts";
 import { propertyInfo } from "#app/thermo/property.ts";
 import type { LineContent } from "./content.ts";
 import { examineRevision } from "./examine.server.ts";
-import { findKeyHolders, findKnownSourceIds, findVersionContents } from "./propose.queries.server.ts";
+import { findKeyHolders, findKnownSourceIds } from "./propose.queries.server.ts";
 import {
   findLineBases,
   findLines,
@@ -21,6 +21,7 @@ import {
   updateLineBase,
 } from "./review.queries.server.ts";
 import { findWritable } from "./revise.server.ts";
+import { findVersionContents } from "./revisionPage.queries.server.ts";
 
 /** A line written by hand. What it is written against is found when it is written, never handed in. */
 export type ProposedLine = Pick<NewLine, "kind" | "speciesId" | "property" | "sourceId" | "content">;
@@ -198,7 +199,7 @@ async function writeAgainstBases(
 ): Promise<void> {
   const bases = await findLineBases(lineIds, trx);
   const versions = [...bases.values()].flatMap((base) => base.waitingVersion ?? base.standingVersion ?? []);
-  const contents = await findVersionContents(versions, trx);
+  const contents = new Map((await findVersionContents(versions, trx)).map((one) => [one.id, one.content]));
   for (const [index, line] of lines.entries()) {
     const lineId = lineIds[index];
     const base = lineId === undefined ? undefined : bases.get(lineId);

@@ -99,7 +99,7 @@ describe("a draft begun by hand", () => {
     const examination = await findNewestExamination(id, database.app);
     expect(examination).toMatchObject({ occasion: "build", lines: 1 });
     const entries = await findEntries(0, 10_000, database.app);
-    expect(entries.findLast((one) => one.act === "revision.begun")).toMatchObject({ objectId: String(id) });
+    expect(entries.findLast((one) => one.act === "revision.begun")).toMatchObject({ object_id: String(id) });
   });
 
   test("where nothing stands, a line is written against nothing", async () => {
@@ -115,7 +115,7 @@ describe("a draft begun by hand", () => {
       ["heatCapacity", 2],
     ]);
     const entries = await findEntries(0, 10_000, database.app);
-    expect(entries.findLast((one) => one.act === "revision.lines-added")).toMatchObject({ objectId: String(id) });
+    expect(entries.findLast((one) => one.act === "revision.lines-added")).toMatchObject({ object_id: String(id) });
   });
 
   test("a place already proposed in the revision is refused by name, and nothing is written", async () => {
