@@ -6,6 +6,7 @@ import { demand } from "#app/people/permissions.ts";
 import type { Acting } from "#app/people/person.ts";
 import { findWaitingLines } from "#app/review/review.queries.server.ts";
 import { insertRevisionWithLines } from "#app/review/revise.server.ts";
+import { describedSource } from "#app/sources/sourceForm.ts";
 import { findChoosableSources, insertSource } from "#app/sources/sources.queries.server.ts";
 import {
   findCandidates,
@@ -19,7 +20,7 @@ import { countRows, findReadRows, findRepairs, updateSheetBuilt } from "./intake
 import { matchSpecies, settleRows } from "./match.ts";
 import type { SheetFrame } from "./readRows.ts";
 import { frameOf, repairedRow, repairsByRow } from "./rereadRows.server.ts";
-import { cslOf, type SourceChoice } from "./sourceChoice.ts";
+import type { SourceChoice } from "./sourceChoice.ts";
 
 /** What came of building: the revision and how its lines came about. */
 export interface BuiltRevision {
@@ -170,13 +171,7 @@ async function sourceOf(
   return {
     id: `src_${randomUUID().replaceAll("-", "")}`,
     exists: false,
-    isNew: {
-      kind: "source",
-      citation: cslOf(source),
-      doi: source.doi === "" ? null : source.doi,
-      sourceKind: source.sourceKind,
-      notice: null,
-    },
+    isNew: { kind: "source", ...describedSource(source) },
   };
 }
 

@@ -71,25 +71,5 @@ export const SETTING_OPTIONS = {
   ],
 } as const satisfies Record<string, readonly (readonly [string, string])[]>;
 
-export const SOURCE_KIND_OPTIONS = [
-  ["", "say how the values came about"],
-  ["measurement", "measured"],
-  ["evaluation", "evaluated from measurements"],
-  ["calculation", "calculated"],
-  ["estimate", "estimated"],
-] as const;
-
 /** The choice of the source field that stands for one described below it. */
 export const NEW_SOURCE = "new";
-
-/** The names of the fields that describe a new source, in the order of the page. */
-export const SOURCE_FIELDS = [
-  "title",
-  "authors",
-  "year",
-  "container",
-  "publisher",
-  "doi",
-  "sourceKind",
-  "note",
-] as const;

@@ -2,7 +2,6 @@ import { describe, expect, test } from "vitest";
 import type { ColumnPlan } from "./plan.ts";
 import { MEANING_OPTIONS, meaningValue } from "./planChoices.ts";
 import { readPlanForm } from "./planForm.ts";
-import { cslOf, newSource } from "./sourceChoice.ts";
 
 const planned: ColumnPlan = [
   { head: "formula", means: "formula", property: null, unit: null, because: "head", asks: false },
@@ -94,33 +93,5 @@ describe("the form of a plan", () => {
       if (column) expect(meaningValue(column)).toBe(value);
       else expect(pointersOf({ "means.2": value, "unit.2": "" }).length).toBeGreaterThan(0);
     }
-  });
-});
-
-describe("a new source", () => {
-  const source = newSource.parse({
-    title: " Key values ",
-    authors: "Cox, J. D.\nWagman, D. D.\nCalder Point Laboratory",
-    year: "1989",
-    container: "",
-    publisher: "Hemisphere",
-    doi: "https://doi.org/10.1063/1.555845",
-    sourceKind: "evaluation",
-    note: "",
-  });
-
-  test("is cited in CSL-JSON, with a bare DOI and without what is empty", () => {
-    expect(cslOf(source)).toEqual({
-      type: "book",
-      title: "Key values",
-      author: [
-        { family: "Cox", given: "J. D." },
-        { family: "Wagman", given: "D. D." },
-        { literal: "Calder Point Laboratory" },
-      ],
-      issued: { "date-parts": [[1989]] },
-      publisher: "Hemisphere",
-      DOI: "10.1063/1.555845",
-    });
   });
 });

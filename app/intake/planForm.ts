@@ -1,10 +1,11 @@
 import type { FieldError } from "#app/http/errors.ts";
+import { readSourceForm } from "#app/sources/sourceForm.ts";
 import { isProperty } from "#app/thermo/property.ts";
 import { UNITS } from "#app/thermo/unit.ts";
 import { COLUMN_MEANS, type ColumnMeans } from "./meaning.ts";
-import { meaningValue, meansField, NEW_SOURCE, SOURCE_FIELDS, takesUnit, unitField } from "./planChoices.ts";
+import { meaningValue, meansField, NEW_SOURCE, takesUnit, unitField } from "./planChoices.ts";
 import { checkPlan, type ColumnPlan, type PlannedColumn, type SheetSettings, sheetSettings } from "./plan.ts";
-import { newSource, type NewSource, type SourceChoice } from "./sourceChoice.ts";
+import type { SourceChoice } from "./sourceChoice.ts";
 
 export type PlanForm =
   | { readonly ok: true; readonly columns: ColumnPlan; readonly settings: SheetSettings; readonly source: SourceChoice }
@@ -68,17 +69,8 @@ function readSource(text: (name: string) => string, errors: FieldError[]): Sourc
     return null;
   }
   if (chosen !== NEW_SOURCE) return { kind: "known", sourceId: chosen };
-  const typed = Object.fromEntries(SOURCE_FIELDS.map((name) => [name, text(`source.${name}`)])) as Record<
-    keyof NewSource,
-    string
-  >;
-  const source = newSource.safeParse(typed);
-  if (source.success) return { kind: "new", source: source.data };
-  for (const issue of source.error.issues) {
-    errors.push({
-      pointer: `/source/${String(issue.path[0] ?? "")}`,
-      detail: issue.code === "too_big" ? "This is longer than the record takes. Shorten it." : issue.message,
-    });
-  }
+  const described = readSourceForm((field) => text(`source.${field}`));
+  if (described.ok) return { kind: "new", source: described.source };
+  for (const { field, detail } of described.errors) errors.push({ pointer: `/source/${field}`, detail });
   return null;
 }

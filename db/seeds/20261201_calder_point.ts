@@ -9,13 +9,13 @@ import type { SheetSettings } from "#app/intake/plan.ts";
 import { readSheet } from "#app/intake/readSheet.server.ts";
 import { receiveSheet } from "#app/intake/receiveSheet.server.ts";
 import { leaveRowsOut } from "#app/intake/repairCell.server.ts";
-import type { NewSource } from "#app/intake/sourceChoice.ts";
 import { makeDemoPeople } from "#app/people/demo.server.ts";
 import type { Acting, Person } from "#app/people/person.ts";
 import { acceptLines, closeReview, declineLines, setFindingAside } from "#app/review/decide.server.ts";
 import { findNextEdition, publishEdition } from "#app/review/publish.server.ts";
 import { findFindings, findLines, findNewestExamination } from "#app/review/review.queries.server.ts";
 import { sendToReview } from "#app/review/revise.server.ts";
+import type { NewSource } from "#app/sources/sourceForm.ts";
 
 /*
  * The demo: Calder Point Laboratory, a fictional place. Everything is done by the application's own acts, as its people

@@ -6,8 +6,9 @@ import { findSheet } from "#app/intake/intake.queries.server.ts";
 import type { ColumnPlan, SheetSettings } from "#app/intake/plan.ts";
 import { readSheet } from "#app/intake/readSheet.server.ts";
 import { receiveSheet } from "#app/intake/receiveSheet.server.ts";
-import type { NewSource, SourceChoice } from "#app/intake/sourceChoice.ts";
+import type { SourceChoice } from "#app/intake/sourceChoice.ts";
 import type { Acting } from "#app/people/person.ts";
+import type { NewSource } from "#app/sources/sourceForm.ts";
 
 /** The bytes of a sheet in fixtures/. */
 export function fixture(name: string): Uint8Array {

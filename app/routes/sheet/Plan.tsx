@@ -6,8 +6,6 @@ import {
   MEANING_OPTIONS,
   NEW_SOURCE,
   SETTING_OPTIONS,
-  SOURCE_FIELDS,
-  SOURCE_KIND_OPTIONS,
   takesUnit,
   UNIT_OPTIONS,
   unitField,
@@ -26,6 +24,7 @@ import { Columns, Fine, Section } from "#app/ui/Section.tsx";
 import { Symbol } from "#app/ui/Symbol.tsx";
 import { Table } from "#app/ui/Table.tsx";
 import { UnitText } from "#app/ui/UnitText.tsx";
+import { describedFields, type DescribedField, SourceFields } from "../source/SourceFields.tsx";
 import type { SheetOutcome } from "./outcome.ts";
 import { SheetText } from "./SheetText.tsx";
 
@@ -88,7 +87,7 @@ export function PlanForm({ page, failed }: { page: SheetPage; failed: SheetOutco
           )}
         </Section>
         <Section head="Where the values come from">
-          <SourceFields {...source} />
+          <SourceChoiceFields {...source} />
         </Section>
       </Columns>
       <DecisionBar label="Confirm" end="nothing enters the table before it was reviewed">
@@ -233,19 +232,8 @@ function settingFields(
 interface SourceState {
   choice: FieldState;
   options: readonly (readonly [string, string])[];
-  described: LabelledField[];
+  described: DescribedField[];
 }
-
-const SOURCE_LABELS: Record<(typeof SOURCE_FIELDS)[number], { label: string; hint?: string }> = {
-  title: { label: "Title" },
-  authors: { label: "Authors (may stay empty)", hint: "One a line, family name first: Cox, J. D." },
-  year: { label: "Year (may stay empty)" },
-  container: { label: "Journal or series (may stay empty)" },
-  publisher: { label: "Publisher or laboratory (may stay empty)" },
-  doi: { label: "DOI (may stay empty)" },
-  sourceKind: { label: "How the values came about" },
-  note: { label: "Remark on the source (may stay empty)", hint: "Such as that numbers are provisional or invented." },
-};
 
 function sourceFields(
   page: SheetPage,
@@ -265,19 +253,16 @@ function sourceFields(
           [id, proposed === null ? name : `${name} (proposed in revision ${proposed})`] as const,
       ),
     ],
-    described: SOURCE_FIELDS.map((name) => ({
-      field: plainField(`source.${name}`, {
-        initialValue: typed?.[`source.${name}`] ?? before?.[name] ?? "",
-        errors: errorsAt(`/source/${name}`),
-      }),
-      ...SOURCE_LABELS[name],
-      ...(name === "sourceKind" ? { options: SOURCE_KIND_OPTIONS } : {}),
-    })),
+    described: describedFields(
+      (name) => typed?.[`source.${name}`] ?? before?.[name] ?? "",
+      (name) => errorsAt(`/source/${name}`),
+      "source.",
+    ),
   };
 }
 
 /** The choice of a source. Its description is open from the start, so that it can be filled in without scripts. */
-function SourceFields({ choice, options, described }: SourceState) {
+function SourceChoiceFields({ choice, options, described }: SourceState) {
   const [chosen, setChosen] = useState(typeof choice.initialValue === "string" ? choice.initialValue : "");
   return (
     <>
@@ -290,12 +275,7 @@ function SourceFields({ choice, options, described }: SourceState) {
       {(chosen === NEW_SOURCE || chosen === "") && (
         <fieldset className="mt-4">
           <legend className="mb-3 font-semibold">A new source</legend>
-          {described.map(({ field, label, hint, options: choices }) => {
-            if (choices) return <Select key={field.name} field={field} label={label} options={choices} />;
-            if (field.name === "source.authors")
-              return <TextArea key={field.name} field={field} label={label} hint={hint} rows={3} />;
-            return <Field key={field.name} field={field} label={label} hint={hint} />;
-          })}
+          <SourceFields fields={described} />
         </fieldset>
       )}
     </>
