@@ -3,6 +3,7 @@ import { elementOf } from "./elements.ts";
 import {
   type Fraction,
   fractionToNumber,
+  isNone,
   isOne,
   ONE,
   productOf,
@@ -168,7 +169,7 @@ function parseBody(body: string): ParsedBody | string {
     if (multiplier !== "" && parts.length === 1)
       return "it begins with a number; a coefficient belongs to an equation.";
     const times = multiplier === "" ? ONE : readFraction(multiplier);
-    if (times === undefined || times.numerator === 0n) return `“${multiplier}” is no count of molecules.`;
+    if (times === undefined || isNone(times)) return `“${multiplier}” is no count of molecules.`;
     const parsed = new GroupParser(part.slice(multiplier.length)).parseAll();
     if (typeof parsed === "string") return parsed;
     for (const [element, count] of parsed.counts) addTo(counts, element, productOf(count, times));
@@ -187,7 +188,7 @@ function withoutDoubtfulPoints(printed: string): string {
   if (readings.length === 1 && readings[0] === printed) return printed;
   return printed.replace(/\d+\.\d+/g, (decimal) => {
     const count = readFraction(decimal);
-    return count === undefined ? decimal : `${count.numerator}/${count.denominator}`;
+    return count === undefined ? decimal : count.toFraction();
   });
 }
 
@@ -275,7 +276,7 @@ class GroupParser {
       throw new FormulaFault(`the count “${text}” begins with a zero. Was the letter O meant?`);
     }
     const count = readFraction(text);
-    if (count === undefined || count.numerator === 0n) throw new FormulaFault(`“${text}” is no count of atoms.`);
+    if (count === undefined || isNone(count)) throw new FormulaFault(`“${text}” is no count of atoms.`);
     this.position += match[0].length;
     return count;
   }
