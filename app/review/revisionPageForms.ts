@@ -1,6 +1,6 @@
 import { z } from "zod";
 import { UNITS } from "#app/thermo/unit.ts";
-import { UNCERTAINTY_CHOICES } from "./revisionPageValue.ts";
+import { UNCERTAINTY_CHOICES } from "./writtenValue.ts";
 
 /*
  * What the forms of the review pages send. Every form names its intent; the sentences stand at the field that lacks

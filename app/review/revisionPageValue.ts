@@ -1,19 +1,14 @@
-import { digits, isZero, readDigits } from "#app/thermo/digits.ts";
+import { readDigits } from "#app/thermo/digits.ts";
 import { showDigits } from "#app/thermo/notation.ts";
-import { readNumber } from "#app/thermo/number.ts";
 import { type Property, propertyInfo } from "#app/thermo/property.ts";
-import type { Uncertainty } from "#app/thermo/uncertainty.ts";
-import { convert, isLikeUnit, type Unit, UNITS } from "#app/thermo/unit.ts";
-import type { UncertaintyContent, ValueContent } from "./content.ts";
+import { isLikeUnit, type Unit, UNITS } from "#app/thermo/unit.ts";
+import type { ValueContent } from "./content.ts";
+import { type FigureField, readFigure, type UncertaintyChoice } from "./writtenValue.ts";
 
 /*
  * A value as a steward writes it by hand on the page of a revision, read by the same reader as a sheet's cell and
  * converted by the same rules.
  */
-
-/** How an uncertainty can be stated on the page. */
-export const UNCERTAINTY_CHOICES = ["standard", "expanded", "unstated", "exact", "none"] as const;
-export type UncertaintyChoice = (typeof UNCERTAINTY_CHOICES)[number];
 
 export interface WrittenValue {
   value: string;
@@ -24,8 +19,7 @@ export interface WrittenValue {
 
 /** What writing came to: the new content, or what is wrong with which field. */
 export type ReadWritten =
-  | { outcome: "read"; content: ValueContent }
-  | { outcome: "wrong"; errors: Partial<Record<"value" | "unit" | "uncertainty", string>> };
+  { outcome: "read"; content: ValueContent } | { outcome: "wrong"; errors: Partial<Record<FigureField, string>> };
 
 /** The units in which a property may be written, its own first. */
 export function unitsFor(property: Property): readonly Unit[] {
@@ -40,47 +34,9 @@ export function unitsFor(property: Property): readonly Unit[] {
  * @param before the content that the line has, of which everything but value, uncertainty and wording stays
  */
 export function readWritten(written: WrittenValue, property: Property, before: ValueContent): ReadWritten {
-  const { unit } = propertyInfo[property];
-  if (!isLikeUnit(written.unit, unit)) {
-    return {
-      outcome: "wrong",
-      errors: { unit: `${propertyInfo[property].symbol} is written in ${unit} or its like.` },
-    };
-  }
-  const reading = readNumber(written.value);
-  if (reading.outcome !== "read") return { outcome: "wrong", errors: { value: reading.sentence } };
-  const within = reading.value.uncertainty;
-  const beside = within ? null : readBeside(written);
-  if (typeof beside === "string") return { outcome: "wrong", errors: { uncertainty: beside } };
-  const stated: Uncertainty | null = within ? { ...within, coverageFactor: null } : beside;
-  const converted = convert(reading.value.digits, written.unit, unit);
-  const uncertainty: UncertaintyContent | null = stated && {
-    ...stated,
-    digits: convert(stated.digits, written.unit, unit).digits,
-  };
-  return {
-    outcome: "read",
-    content: {
-      ...before,
-      digits: converted.digits,
-      uncertainty,
-      given: { text: written.value.trim(), unit: written.unit, note: converted.note },
-    },
-  };
-}
-
-/** The uncertainty from the field of its own; a sentence where it cannot be read. */
-function readBeside({ uncertainty: text, kind }: WrittenValue): Uncertainty | null | string {
-  const empty = text.trim() === "";
-  if (kind === "none")
-    return empty ? null : "An uncertainty is given, but “none stated” is chosen. Say which kind it is.";
-  if (kind === "exact") return { digits: digits("0"), kind: "exact", coverageFactor: null };
-  if (empty) return "Give the uncertainty, or choose “none stated”.";
-  const reading = readNumber(text);
-  if (reading.outcome !== "read") return reading.sentence;
-  const stated = reading.value.digits;
-  if (stated.startsWith("-") || isZero(stated)) return "An uncertainty is larger than zero.";
-  return { digits: stated, kind, coverageFactor: kind === "expanded" ? 2 : null };
+  const reading = readFigure(written, property);
+  if (reading.outcome === "wrong") return { outcome: "wrong", errors: reading.errors };
+  return { outcome: "read", content: { ...before, ...reading.figure } };
 }
 
 /** How a value is filled into the form that edits it. */

@@ -9,7 +9,8 @@ import { findLine, findLines, type LineRow } from "./review.queries.server.ts";
 import { rewriteLine } from "./revise.server.ts";
 import { findPageFindings } from "./revisionPage.server.ts";
 import { repairsOf } from "./revisionPage.ts";
-import { readWritten, takeSuggestion, type UncertaintyChoice } from "./revisionPageValue.ts";
+import { readWritten, takeSuggestion } from "./revisionPageValue.ts";
+import type { UncertaintyChoice } from "./writtenValue.ts";
 
 /** A value as the form of a line sends it. */
 export interface ValueForm {

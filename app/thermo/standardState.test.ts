@@ -1,6 +1,8 @@
 import { describe, expect, it } from "vitest";
+import { digits } from "./digits.ts";
+import type { Property } from "./property.ts";
 import { readKey, type SpeciesIdentity } from "./speciesKey.ts";
-import { entropyStepToBar, GAS_ENTROPY_STEP, gasFormed, gibbsStepToBar } from "./standardState.ts";
+import { entropyStepToBar, GAS_ENTROPY_STEP, gasFormed, gibbsStepToBar, printedAtBar } from "./standardState.ts";
 
 function identity(key: string): SpeciesIdentity {
   const reading = readKey(key);
@@ -42,5 +44,27 @@ describe("from 1 atm to 1 bar", () => {
 
   it("is not known for an element without a reference state", () => {
     expect(gibbsStepToBar(identity("HAt(g)"))).toBeUndefined();
+  });
+});
+
+describe("a printed value from 1 atm to 1 bar", () => {
+  const at = (property: Property, value: string, key: string) => printedAtBar(property, digits(value), identity(key));
+
+  // H2O(l) and HBr(g): NBS Technical Note 270-3 (1 atm) and the NBS tables of 1982 (1 bar), from memory. The rest is
+  // arithmetic with R ln 1.01325 = 0.1094 J/(mol K).
+  it.each<[Property, string, string, string, string]>([
+    ["gibbsEnergyOfFormation", "H2O(l)", "-237.178", "-237.129", "1 atm to 1 bar: + 0.0489"],
+    ["entropy", "O2(g)", "205.028", "205.137", "1 atm to 1 bar: + 0.1094"],
+    ["entropy", "O2(g)", "205", "205", "1 atm to 1 bar: + 0.1094"],
+    ["entropy", "H2O(l)", "69.91", "69.91", "1 atm to 1 bar: no change"],
+    ["enthalpyOfFormation", "H2O(g)", "-241.818", "-241.818", "1 atm to 1 bar: no change"],
+    ["heatCapacity", "O2(g)", "29.355", "29.355", "1 atm to 1 bar: no change"],
+    ["gibbsEnergyOfFormation", "HBr(g)", "-53.43", "-53.45", "1 atm to 1 bar: − 0.0163"],
+  ])("%s of %s: %s becomes %s", (property, key, printed, expected, note) => {
+    expect(at(property, printed, key)).toEqual({ digits: expected, note });
+  });
+
+  it("is refused for ΔfG° where an element has no reference state", () => {
+    expect(at("gibbsEnergyOfFormation", "-1.0", "HAt(g)")).toBeUndefined();
   });
 });

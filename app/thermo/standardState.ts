@@ -1,4 +1,6 @@
 import { GAS_CONSTANT, REFERENCE_TEMPERATURE, STANDARD_ATMOSPHERE, STANDARD_PRESSURE } from "./constants.ts";
+import { add, type Digits, digitsOf, isZero, places, roundTo } from "./digits.ts";
+import type { Property } from "./property.ts";
 import { referenceStateOf } from "./referenceStates.ts";
 import { isSolute, type SpeciesIdentity } from "./speciesKey.ts";
 
@@ -43,4 +45,35 @@ export function gasFormed(identity: SpeciesIdentity): number | undefined {
     if (state.phase === "g") formed -= count / state.atoms;
   }
   return isSolute(identity) ? formed + identity.formula.charge / 2 : formed;
+}
+
+/** Places to which a step is written out before a printed value is rounded to its own. */
+const STEP_PLACES = 4;
+
+/**
+ * A printed value at 1 atm as it is at 1 bar, rounded to the places it was printed with: S° and ΔfG° take their step,
+ * the others stay. `note` says what was done, for the record.
+ *
+ * @param value in the table's unit for the property
+ * @returns undefined for a ΔfG° when an element of the formula has no reference state
+ */
+export function printedAtBar(
+  property: Property,
+  value: Digits,
+  identity: SpeciesIdentity,
+): { digits: Digits; note: string } | undefined {
+  const step =
+    property === "entropy"
+      ? entropyStepToBar(identity)
+      : property === "gibbsEnergyOfFormation"
+        ? gibbsStepToBar(identity)
+        : 0;
+  if (step === undefined) return undefined;
+  const written = digitsOf(step, STEP_PLACES);
+  if (isZero(written)) return { digits: value, note: "1 atm to 1 bar: no change" };
+  const sign = written.startsWith("-") ? "−" : "+";
+  return {
+    digits: roundTo(add(value, written), places(value)),
+    note: `1 atm to 1 bar: ${sign} ${written.replace("-", "")}`,
+  };
 }

@@ -1,5 +1,6 @@
-import { type UncertaintyChoice, unitsFor, writtenFrom } from "#app/review/revisionPageValue.ts";
+import { unitsFor, writtenFrom } from "#app/review/revisionPageValue.ts";
 import type { LineView } from "#app/review/revisionPage.ts";
+import type { UncertaintyChoice } from "#app/review/writtenValue.ts";
 import type { Property } from "#app/thermo/property.ts";
 import { Button } from "#app/ui/Button.tsx";
 import { Field, Select } from "#app/ui/Field.tsx";
