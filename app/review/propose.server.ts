@@ -24,7 +24,10 @@ import { findWritable } from "./revise.server.ts";
 import { findVersionContents } from "./revisionPage.queries.server.ts";
 
 /** A line written by hand. What it is written against is found when it is written, never handed in. */
-export type ProposedLine = Pick<NewLine, "kind" | "speciesId" | "property" | "sourceId" | "content">;
+export type ProposedLine = Pick<NewLine, "kind" | "speciesId" | "property" | "sourceId" | "content" | "reason"> & {
+  /** The version that the person saw standing or waiting here, null for an empty place; left out, whatever is there. */
+  seen?: string | null;
+};
 
 /** The identity of a species that the lines bring into the table. */
 export interface ProposedSpecies {
@@ -206,11 +209,16 @@ async function writeAgainstBases(
     if (lineId === undefined || !base) throw new Error("A line was inserted without a base to be found.");
     const version = base.waitingVersion ?? base.standingVersion;
     const before = version === null ? undefined : contents.get(version);
+    if (line.seen !== undefined && line.seen !== version) {
+      throw new Refused(
+        `${capitalized(await nameOf(line, lines, trx))} was changed in the table since you opened the page. Look at what is there now, then propose again.`,
+      );
+    }
     const waits = base.waitingRevision === null ? "" : ` in revision ${base.waitingRevision}`;
     if (line.kind === "withdrawal" && (!before || before.kind === "withdrawal")) {
       throw new Refused(
         before
-          ? `${await nameOf(line, lines, trx)} is already withdrawn${waits}.`
+          ? `${capitalized(await nameOf(line, lines, trx))} is already withdrawn${waits}.`
           : `There is no ${await nameOf(line, lines, trx)} to withdraw.`,
       );
     }
@@ -231,6 +239,8 @@ async function writeAgainstBases(
     }
   }
 }
+
+const capitalized = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
 
 /** Whether two contents say the same. How a number was typed is no part of what it says. */
 function saysTheSame(one: LineContent, other: LineContent): boolean {

@@ -19,6 +19,8 @@ export interface NewLine {
   againstRow: string | null;
   /** Id of the version of the accepted line that waited for the same place when it was written. */
   againstVersion: string | null;
+  /** Why it is proposed, for its first version; a sheet's lines say it once, in the summary of their revision. */
+  reason?: string;
 }
 
 /** A line with its newest version and the newest decision on that version. */
@@ -331,6 +333,7 @@ export async function insertLines(
         content: JSON.stringify(one.line.content),
         content_hash: contentHash(one.line.content),
         made_by: madeBy,
+        reason: one.line.reason ?? "",
       };
     });
     await trx.insertInto("line_version").values(versions).execute();

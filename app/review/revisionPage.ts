@@ -252,7 +252,7 @@ export interface LineView {
   behind: number | null;
   decision: DecisionView | null;
   voided: readonly DecisionView[];
-  /** All versions, oldest first, where there is more than one. */
+  /** All versions, oldest first, where there is more than one or the first gives its reason. */
   versions: readonly VersionView[];
   comments: readonly { id: string; body: string; by: string; at: Date }[];
   findings: readonly FindingView[];
@@ -556,7 +556,7 @@ function lineView(
     decision: current ? decisionView(current) : null,
     voided: decisions.filter((one) => one.void).map(decisionView),
     versions:
-      versions.length > 1
+      versions.length > 1 || versions.some((version) => version.reason !== "")
         ? versions.map(({ version, content: said, by, at, reason }) => ({
             version,
             figure: figureOf(said),
