@@ -213,7 +213,7 @@ function withoutRemarks(plain: string): {
 }
 
 function unitIn(piece: string): Unit | null {
-  if (piece === "" || !/(?:J|cal|joules?|calories?|e\.?\s?u\.?|gibbs)/i.test(piece)) return null;
+  if (piece === "" || !/(?:J|cal|joules?|calories?|eV|electron|e\.?\s?u\.?|gibbs|gbs)/i.test(piece)) return null;
   const spelled = piece.includes("/") ? piece.replaceAll("_", " ") : piece.replace("_", "/").replaceAll("_", " ");
   const reading = readUnit(spelled);
   return reading.outcome === "read" ? reading.value : null;

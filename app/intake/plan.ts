@@ -7,7 +7,7 @@ import { readNumber } from "#app/thermo/number.ts";
 import { type Phase, readPhase } from "#app/thermo/phase.ts";
 import { PROPERTIES, type Property, propertyInfo } from "#app/thermo/property.ts";
 import { readKey } from "#app/thermo/speciesKey.ts";
-import { isLikeUnit, readUnit, type Unit, UNITS } from "#app/thermo/unit.ts";
+import { conversionFactor, isLikeUnit, readUnit, type Unit, UNITS } from "#app/thermo/unit.ts";
 import type { DecodedSheet } from "./decode.ts";
 import { type HeadReading, propertyOf, readHead } from "./head.ts";
 import { isAbsent } from "./cells.ts";
@@ -388,18 +388,6 @@ function onlyOnce(plan: ColumnPlan): void {
   }
 }
 
-/** How much of the table's own unit one unit is. */
-const IN_TABLE_UNIT: Readonly<Record<Unit, number>> = {
-  "kJ/mol": 1,
-  "J/mol": 0.001,
-  "kcal/mol": 4.184,
-  "cal/mol": 0.004184,
-  "J/(mol K)": 1,
-  "kJ/(mol K)": 1000,
-  "cal/(mol K)": 4.184,
-  "kcal/(mol K)": 4184,
-};
-
 /** Agreement to 1 % is what "fits" means. */
 const FITS = 0.01;
 
@@ -431,7 +419,8 @@ function bestUnit(
   sheet: DecodedSheet,
   context: PlanContext,
 ): { unit: Unit; others: boolean } | null {
-  const candidates = UNITS.filter((unit) => isLikeUnit(unit, propertyInfo[property].unit));
+  // The two calories differ by less than values of two tables do: without a word in the head it is the thermochemical.
+  const candidates = UNITS.filter((unit) => isLikeUnit(unit, propertyInfo[property].unit) && !unit.includes("(IT)"));
   const agreeing = new Map<Unit, number>(candidates.map((unit) => [unit, 0]));
   let compared = 0;
   for (const row of sheet.rows) {
@@ -446,7 +435,7 @@ function bestUnit(
     if (value === 0 || stands.length === 0) continue;
     compared += 1;
     for (const unit of candidates) {
-      const converted = value * IN_TABLE_UNIT[unit];
+      const converted = value * conversionFactor(unit, propertyInfo[property].unit);
       if (stands.some((one) => Math.abs(converted - one) <= FITS * Math.abs(one))) {
         agreeing.set(unit, (agreeing.get(unit) ?? 0) + 1);
       }

@@ -98,6 +98,20 @@ export function multiply(value: Digits, factor: string): Digits {
   return spell(new Exact(value).times(exactFactor), places(value) + places(exactFactor));
 }
 
+/**
+ * The product with an exact ratio, rounded half to even at a place that is not below zero. Here digits may be added: the
+ * ratio is exact, so how many stand behind the point is the caller's to say.
+ */
+export function scaleBy(
+  value: Digits,
+  ratio: { readonly s: bigint; readonly n: bigint; readonly d: bigint },
+  place: number,
+): Digits {
+  // A quotient that lies just between two neighbours has an end, so a thousand figures decide every tie.
+  const product = new Exact(value).times((ratio.s * ratio.n).toString()).div(ratio.d.toString());
+  return spell(product.toDecimalPlaces(place, Decimal.ROUND_HALF_EVEN), place);
+}
+
 /** −a. */
 export function negate(value: Digits): Digits {
   return spell(new Exact(value).negated(), places(value));

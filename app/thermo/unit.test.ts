@@ -1,10 +1,13 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
+import { FARADAY_CONSTANT } from "./constants.ts";
 import { compare, digits, places, roundTo } from "./digits.ts";
 import {
   addQuantities,
+  conversionFactor,
   convert,
   convertQuantity,
+  exactDecimalFactor,
   isLikeUnit,
   quantity,
   readUnit,
@@ -68,20 +71,16 @@ describe("reading a unit", () => {
     ["", "No unit"],
     ["kJ", "per mole"],
     ["J/K", "per mole"],
-    ["kJ/g", "not a unit this table reads"],
-    ["kJ/kg", "not a unit this table reads"],
-    ["kJ/kmol", "not a unit this table reads"],
-    ["MJ/mol", "not a unit this table reads"],
-    ["mJ/mol", "not a unit this table reads"],
-    ["eV", "not a unit this table reads"],
-    ["cm-1", "not a unit this table reads"],
+    ["kJ/g", "per mass"],
+    ["kJ/kmol", "1 kJ/kmol is 1 J/mol"],
+    ["MJ/mol", "capitals get lost"],
+    ["eV/mol", "per particle, not per mole"],
+    ["eV/atom", "may count each atom"],
+    ["cm-1", "wavenumber"],
     ["kJ mol", "not a unit this table reads"],
     ["J/(mol K2)", "not a unit this table reads"],
-    ["BTU/lbmol", "not a unit this table reads"],
-    ["cal_IT/mol", "thermochemical calorie"],
-    ["cal(15 °C)/mol", "thermochemical calorie"],
+    ["cal(15 °C)/mol", "neither the thermochemical calorie"],
     ["kJ//mol", "not a unit this table reads"],
-    ["J/M", "not a unit this table reads"],
   ])("%j is refused: %s", (text, sentence) => {
     expect(readUnit(text)).toMatchObject({ outcome: "refused", sentence: expect.stringContaining(sentence) });
   });
@@ -102,8 +101,20 @@ describe("converting", () => {
     ["0.06995", "kJ/(mol K)", "J/(mol K)", "69.95", "× 1000"],
     ["-68315", "cal/mol", "kJ/mol", "-285.830", "× 0.004184"],
     ["205.10", "J/(mol K)", "J/(mol K)", "205.10", null],
+    ["-68.269", "kcal(IT)/mol", "kJ/mol", "-285.829", "× 4.1868"],
+    ["-2.96242", "eV", "kJ/mol", "-285.8301", "× 96.48533212"],
+    ["-285.8301", "kJ/mol", "eV", "-2.962420", "÷ 96.48533212"],
+    ["2.1258", "meV/K", "J/(mol K)", "205.109", "× 96.48533212"],
+    ["1.0000", "kcal(IT)/mol", "kcal/mol", "1.0007", "× 4.1868 ÷ 4.184"],
+    ["1.00", "kJ/mol", "cal/mol", "239", "× 1000 ÷ 4.184"],
   ] as const)("%s %s is %s: %s (%s)", (value, from, to, expected, note) => {
     expect(convert(digits(value), from, to)).toEqual({ digits: expected, note });
+  });
+
+  it("takes an electronvolt per particle for F in J/mol, exactly (SI 2019)", () => {
+    expect(exactDecimalFactor("eV", "J/mol")).toBe("96485.3321233100184"); // 1.602176634 × 6.02214076 × 10 000
+    expect(conversionFactor("eV", "J/mol")).toBeCloseTo(FARADAY_CONSTANT, 8);
+    expect(exactDecimalFactor("J/mol", "eV")).toBeUndefined();
   });
 
   it("refuses unlike quantities", () => {

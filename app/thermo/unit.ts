@@ -1,12 +1,25 @@
-import { type Digits, add, multiply, places, roundTo, subtract, toNumber, digits } from "./digits.ts";
+import { type Digits, add, places, scaleBy, subtract } from "./digits.ts";
+import { decimalOf, Fraction, fractionToNumber } from "./fraction.ts";
+import { unitFactors } from "./unitFactors.ts";
 import { plainText } from "./typography.ts";
 import { ambiguous, isTooLong, quote, read, type Reading, refused } from "./reading.ts";
 
-/** Units of an energy per amount of substance. */
-export type EnergyUnit = "kJ/mol" | "J/mol" | "kcal/mol" | "cal/mol";
-/** Units of an entropy or a heat capacity per amount of substance. */
-export type EntropyUnit = "J/(mol K)" | "kJ/(mol K)" | "cal/(mol K)" | "kcal/(mol K)";
-/** Every unit a sheet may use. `cal` is the thermochemical calorie, 4.184 J exactly. */
+/** Units of an energy per amount of substance, or per particle. */
+export type EnergyUnit = "kJ/mol" | "J/mol" | "kcal/mol" | "cal/mol" | "kcal(IT)/mol" | "cal(IT)/mol" | "eV" | "meV";
+/** Units of an entropy or a heat capacity per amount of substance, or per particle. */
+export type EntropyUnit =
+  | "J/(mol K)"
+  | "kJ/(mol K)"
+  | "cal/(mol K)"
+  | "kcal/(mol K)"
+  | "cal(IT)/(mol K)"
+  | "kcal(IT)/(mol K)"
+  | "eV/K"
+  | "meV/K";
+/**
+ * Every unit a sheet may use. `cal` is the thermochemical calorie, 4.184 J exactly; `cal(IT)` the International Table
+ * calorie, 4.1868 J exactly; `eV` the electronvolt per particle, which is F in J/mol.
+ */
 export type Unit = EnergyUnit | EntropyUnit;
 
 /** The units of the same kind of quantity as U. */
@@ -18,16 +31,30 @@ export interface Quantity<U extends Unit> {
   readonly unit: U;
 }
 
-/** One unit in joules, exact by definition. */
-const IN_JOULES: Readonly<Record<Unit, { readonly kind: "energy" | "entropy"; readonly joules: string }>> = {
-  "kJ/mol": { kind: "energy", joules: "1000" },
-  "J/mol": { kind: "energy", joules: "1" },
-  "kcal/mol": { kind: "energy", joules: "4184" },
-  "cal/mol": { kind: "energy", joules: "4.184" },
-  "J/(mol K)": { kind: "entropy", joules: "1" },
-  "kJ/(mol K)": { kind: "entropy", joules: "1000" },
-  "cal/(mol K)": { kind: "entropy", joules: "4.184" },
-  "kcal/(mol K)": { kind: "entropy", joules: "4184" },
+/**
+ * An electronvolt per particle in J/mol: e N_A = 1.602 176 634 × 10⁻¹⁹ C × 6.022 140 76 × 10²³ /mol, the product of two
+ * constants that are exact since 2019 (SI Brochure, 9th ed.).
+ */
+const ELECTRONVOLT = new Fraction("1.602176634").mul("6.02214076").mul(10_000);
+
+/** One unit in J/mol or J/(mol K), exact. */
+const IN_JOULES: Readonly<Record<Unit, { readonly kind: "energy" | "entropy"; readonly joules: Fraction }>> = {
+  "kJ/mol": { kind: "energy", joules: new Fraction(1000) },
+  "J/mol": { kind: "energy", joules: new Fraction(1) },
+  "kcal/mol": { kind: "energy", joules: new Fraction(4184) },
+  "cal/mol": { kind: "energy", joules: new Fraction("4.184") },
+  "kcal(IT)/mol": { kind: "energy", joules: new Fraction("4186.8") },
+  "cal(IT)/mol": { kind: "energy", joules: new Fraction("4.1868") },
+  eV: { kind: "energy", joules: ELECTRONVOLT },
+  meV: { kind: "energy", joules: ELECTRONVOLT.div(1000) },
+  "J/(mol K)": { kind: "entropy", joules: new Fraction(1) },
+  "kJ/(mol K)": { kind: "entropy", joules: new Fraction(1000) },
+  "cal/(mol K)": { kind: "entropy", joules: new Fraction("4.184") },
+  "kcal/(mol K)": { kind: "entropy", joules: new Fraction(4184) },
+  "cal(IT)/(mol K)": { kind: "entropy", joules: new Fraction("4.1868") },
+  "kcal(IT)/(mol K)": { kind: "entropy", joules: new Fraction("4186.8") },
+  "eV/K": { kind: "entropy", joules: ELECTRONVOLT },
+  "meV/K": { kind: "entropy", joules: ELECTRONVOLT.div(1000) },
 };
 
 /** Every unit a sheet may use, energies first. */
@@ -67,11 +94,10 @@ export function isLikeUnit(a: Unit, b: Unit): boolean {
  * @throws RangeError for unlike quantities (kJ/mol and J/(mol K))
  */
 export function convert(value: Digits, from: Unit, to: Unit): { digits: Digits; note: string | null } {
-  if (!isLikeUnit(from, to)) throw new RangeError(`${from} and ${to} measure different quantities`);
-  const { factor, note } = conversionStep(from, to);
-  if (note === null) return { digits: value, note };
-  const place = Math.max(0, places(value) - Math.floor(Math.log10(toNumber(factor))));
-  return { digits: roundTo(multiply(value, factor), place), note };
+  const factor = exactFactor(from, to);
+  if (from === to) return { digits: value, note: null };
+  const place = Math.max(0, places(value) - Math.floor(Math.log10(fractionToNumber(factor))));
+  return { digits: scaleBy(value, factor, place), note: stepInWords(from, to) };
 }
 
 /**
@@ -81,136 +107,135 @@ export function convert(value: Digits, from: Unit, to: Unit): { digits: Digits; 
  * @throws RangeError for unlike quantities
  */
 export function conversionFactor(from: Unit, to: Unit): number {
-  if (!isLikeUnit(from, to)) throw new RangeError(`${from} and ${to} measure different quantities`);
-  return toNumber(conversionStep(from, to).factor);
+  return fractionToNumber(exactFactor(from, to));
 }
 
 /**
- * The exact factor from one unit to another, and how a person would write the step.
- * From a joule to a calorie the factor has no finite decimal, so it carries 30 digits.
+ * How many of one unit make up another, in decimals: all of them, or undefined where they never end.
+ *
+ * @throws RangeError for unlike quantities
  */
-function conversionStep(from: Unit, to: Unit): { factor: Digits; note: string | null } {
-  if (from === to) return { factor: digits("1"), note: null };
-  const step = STEPS[`${IN_JOULES[from].joules}>${IN_JOULES[to].joules}`];
-  if (step === undefined) throw new RangeError(`no factor from ${from} to ${to}`);
-  return { factor: digits(step[0]), note: step[1] };
+export function exactDecimalFactor(from: Unit, to: Unit): string | undefined {
+  return decimalOf(exactFactor(from, to));
 }
 
-/** Keyed by joules in the one unit and joules in the other. */
-const STEPS: Readonly<Record<string, readonly [factor: string, note: string]>> = {
-  "1000>1": ["1000", "× 1000"],
-  "1>1000": ["0.001", "÷ 1000"],
-  "4184>4.184": ["1000", "× 1000"],
-  "4.184>4184": ["0.001", "÷ 1000"],
-  "4184>1000": ["4.184", "× 4.184"],
-  "4.184>1": ["4.184", "× 4.184"],
-  "4184>1": ["4184", "× 4184"],
-  "4.184>1000": ["0.004184", "× 0.004184"],
-  "1000>4184": ["0.239005736137667304015296367113", "÷ 4.184"],
-  "1>4.184": ["0.239005736137667304015296367113", "÷ 4.184"],
-  "1>4184": ["0.000239005736137667304015296367113", "÷ 4184"],
-  "1000>4.184": ["239.005736137667304015296367113", "× 1000 ÷ 4.184"],
-};
+/** The exact factor from one unit to another, whether or not its decimals end. */
+function exactFactor(from: Unit, to: Unit): Fraction {
+  if (!isLikeUnit(from, to)) throw new RangeError(`${from} and ${to} measure different quantities`);
+  return IN_JOULES[from].joules.div(IN_JOULES[to].joules);
+}
 
-const ENERGY_SYMBOL = /^(k?)(J|cal)$/;
+/** How a person would write the step: a factor, a divisor, or both where neither has an end. */
+function stepInWords(from: Unit, to: Unit): string {
+  const factor = exactFactor(from, to);
+  const times = decimalOf(factor);
+  if (times !== undefined && !(factor.compare(1) < 0 && factor.n === 1n)) return `× ${inTenFigures(times)}`;
+  const inverse = factor.inverse();
+  const divided = decimalOf(inverse);
+  if (divided !== undefined && inverse.compare(1) > 0) return `÷ ${inTenFigures(divided)}`;
+  // A kilo on both sides says nothing: × 4.1868 ÷ 4.184, not × 4186.8 ÷ 4184.
+  const [a, b] = [IN_JOULES[from].joules, IN_JOULES[to].joules];
+  const kilo = a.compare(1000) >= 0 && b.compare(1000) >= 0 ? 1000 : 1;
+  return `× ${inTenFigures(decimalOf(a.div(kilo)) ?? "")} ÷ ${inTenFigures(decimalOf(b.div(kilo)) ?? "")}`;
+}
+
+/** A factor as steps show it: ten figures, as the Faraday constant is printed, though all of them are used. */
+function inTenFigures(decimal: string): string {
+  return decimal.replace(".", "").length <= 10 ? decimal : String(Number(Number(decimal).toPrecision(10)));
+}
+
+/** Texts that name a unit of some other kind, each with what to do instead. */
+const NOT_READ: readonly (readonly [pattern: RegExp, why: string])[] = [
+  [
+    /^(?:E_?h|E_\{?h\}?|Ha|hartrees?|a\.?\s?u\.?)(?:[\s/].*)?$/i,
+    "is the hartree per particle. Give the values in kJ/mol: 1 hartree is 2625.4996 kJ/mol (CODATA 2018).",
+  ],
+  [
+    /cm\s*\^?[({]?-\s?1|1\s?\/\s?cm|wave\s?numbers?/i,
+    "is a wavenumber. Give the values in kJ/mol: 1 cm-1 is 0.01196266 kJ/mol.",
+  ],
+  [/\b(?:Ry|rydbergs?)\b/i, "is the rydberg. Give the values in kJ/mol: 1 rydberg is 1312.7498 kJ/mol (CODATA 2018)."],
+  [
+    /^(?:[SH]°?|C_?\{?p\}?°?|G°?)?\s*\/?\s*\(?R\s?T?\)?$|units?\s+of\s+R\b|^R\s+units?$|dimensionless|^k_?\{?B\}?$/,
+    "is a multiple of the gas constant. Multiply by R = 8.314462618 J/(mol K) and give the values in J/(mol K) or kJ/mol.",
+  ],
+  [/\bbtu|\blb/i, "is a British unit. Give the values in kJ/mol or J/(mol K)."],
+  [
+    /°\s?[FR]\b|\bdeg\.?\s?[FR]\b|fahrenheit|rankine/i,
+    "counts degrees Fahrenheit or Rankine. Give the values per kelvin.",
+  ],
+  [/k[\s-]?mol|\bkmol|kilo-?mol|mmol/i, "is not per mole. Give the values per mol: 1 kJ/kmol is 1 J/mol."],
+  [
+    /\bg(?:ram)?[\s.-]*at(?:om|\.|\b)|mol(?:es?)?\s*(?:of\s*)?\(?atoms?|atoms?[\s-]*mol/i,
+    "counts moles of atoms, not of the formula as written. Multiply by the number of atoms in the formula and give the values per mol.",
+  ],
+  [
+    /\batoms?\b/i,
+    "may count each atom or the formula as written. Write eV (or kJ/mol) where the values are per formula; else multiply by the number of atoms first.",
+  ],
+];
 
 /**
  * Reads a unit as sheets spell it: `kJ mol-1`, `kJ·mol⁻¹`, `kJ/mol`, `J/mol/K`, `J K-1 mol-1`, `cal/mol·K`, `e.u.`,
- * `gibbs/mol` and their like. Energies per gram, per kilomole or per particle, and other calories, are refused.
+ * `gibbs/mol`, `kcal(IT)/mol`, `eV` and their like. Energies per gram, per kilomole, per atom or of other kinds are
+ * refused with what to do.
  */
 export function readUnit(text: string): Reading<Unit> {
   if (isTooLong(text)) return refused(`${quote(text)} is too long for a unit.`);
   const plain = plainText(text).trim();
   if (plain === "") return refused("No unit is given. Write the unit, for example kJ/mol or J/(mol K).");
-  const entropyUnit = /^(?:e\.?\s?u\.?|(?:gibbs|gbs)(?:\/mole?|\s*mole?\^?-1))$/i.exec(plain);
-  if (entropyUnit !== null) {
-    return read("cal/(mol K)", [`${quote(text)} is the entropy unit, 1 cal/(mol K) with 1 cal = 4.184 J.`]);
-  }
-  if (/cal.*(?:\bIT\b|_IT)|(?:15|20)\s*°?\s*C|international/i.test(plain)) {
-    return refused(
-      `${quote(text)} is not the thermochemical calorie (4.184 J). Give the values in joules: 1 cal(IT) is 4.1868 J.`,
-    );
+  const shown = text.trim();
+  if (/^(?:e\.?\s?u\.?|entropy\s+units?)(?:\s*\/\s*mole?)?$/i.test(plain)) {
+    return read("cal/(mol K)", [`${quote(shown)} is the entropy unit, 1 cal/(mol K) with 1 cal = 4.184 J.`]);
   }
   const factors = unitFactors(plain);
-  if (factors === undefined) return refused(unreadable(text));
-
-  const { energy, moles, kelvins, rest } = factors;
-  if (rest.length > 0 || energy === undefined) return refused(unreadable(text));
+  if (factors?.otherCalorie) {
+    return refused(
+      `${quote(shown)} is neither the thermochemical calorie (4.184 J) nor that of the International Table (4.1868 J). Give the values in joules.`,
+    );
+  }
+  const { energy, moles, kelvins, particles, rest } = factors ?? { rest: [plain] };
+  if (factors === undefined || rest?.length || energy === undefined) return refused(whyNoUnit(plain, shown));
   if (energy === "Cal") {
     return ambiguous<Unit>(
       kelvins === 0 ? ["cal/mol", "kcal/mol"] : ["cal/(mol K)", "kcal/(mol K)"],
-      `${quote(text)} may mean the calorie or the “large” calorie, which is a kilocalorie. Write cal or kcal.`,
+      `${quote(shown)} may mean the calorie or the “large” calorie, which is a kilocalorie. Write cal or kcal.`,
     );
   }
-  if (moles === 0) return refused(`${quote(text)} does not say per mole. Write for example ${energy}/mol.`);
-  if (moles !== -1 || (kelvins !== 0 && kelvins !== -1)) return refused(unreadable(text));
-  return read<Unit>(
-    kelvins === 0 ? (`${energy}/mol` as EnergyUnit) : (`${energy}/(mol K)` as EntropyUnit),
-    factors.notes,
-  );
-}
-
-interface UnitFactors {
-  energy: "J" | "kJ" | "cal" | "kcal" | "Cal" | undefined;
-  moles: number;
-  kelvins: number;
-  rest: string[];
-  notes: string[];
-}
-
-/** Takes a unit apart into symbols with exponents; a solidus divides by everything up to the next one. */
-function unitFactors(plain: string): UnitFactors | undefined {
-  const spelled = plain
-    .replace(/[_(\s](?:th|thermochem(?:ical)?)\.?\)?(?=[\s/·*]|$)/gi, " ")
-    .replace(/\bper\b/gi, "/")
-    .replace(/[·.*×]|(?<=[a-z])-(?=[A-Za-z])/gi, " ")
-    .replace(/\bmolK\b/gi, "mol K")
-    .replace(/\bKmol\b/g, "K mol");
-  const factors: UnitFactors = { energy: undefined, moles: 0, kelvins: 0, rest: [], notes: [] };
-  const parts = spelled.split("/");
-  for (const [index, part] of parts.entries()) {
-    const inner = part.replace(/[()[\]]/g, " ").trim();
-    if (inner === "") return undefined;
-    for (const token of inner.split(/\s+/)) {
-      const match = /^°?([A-Za-z]+)(?:\^?\{?([+-]?\d)\}?)?$/.exec(token);
-      if (match === null) return undefined;
-      const exponent = Number(match[2] ?? "1") * (index === 0 ? 1 : -1);
-      if (!takeFactor(factors, match[1] ?? "", exponent)) factors.rest.push(token);
+  const electronic = energy === "eV" || energy === "meV";
+  if (electronic) {
+    if (moles !== 0) {
+      return refused(`${quote(shown)}: an electronvolt is counted per particle, not per mole. Write eV, or kJ/mol.`);
     }
+    if ((kelvins !== 0 && kelvins !== -1) || (particles !== 0 && particles !== -1)) {
+      return refused(whyNoUnit(plain, shown));
+    }
+    return read<Unit>(kelvins === 0 ? energy : `${energy}/K`, [
+      ...factors.notes,
+      `${quote(shown)} is read as electronvolts per particle of the formula: 1 eV is 96.48533212 kJ/mol.`,
+    ]);
   }
-  return factors;
+  if (moles === 0 && particles !== 0) {
+    return refused(`${quote(shown)} is per particle. Multiply by the Avogadro constant and give the values per mol.`);
+  }
+  if (moles === 0) return refused(`${quote(shown)} does not say per mole. Write for example ${energy}/mol.`);
+  if (moles !== -1 || particles !== 0 || (kelvins !== 0 && kelvins !== -1)) return refused(whyNoUnit(plain, shown));
+  return read<Unit>(kelvins === 0 ? `${energy}/mol` : `${energy}/(mol K)`, factors.notes);
 }
 
-function takeFactor(factors: UnitFactors, symbol: string, exponent: number): boolean {
-  if (/^mol(?:es?)?$/i.test(symbol)) {
-    factors.moles += exponent;
-    return true;
+function whyNoUnit(plain: string, shown: string): string {
+  const known = NOT_READ.find(([pattern]) => pattern.test(plain));
+  if (known) return `${quote(shown)} ${known[1]}`;
+  if (/^M[Jj]\b|^mJ\b|^mj\b/.test(plain)) {
+    return `${quote(shown)}: MJ and mJ are not read, because capitals get lost on the way. Give the values in kJ or J.`;
   }
-  if (/^(?:K|kelvin|deg|degK|degree)$/.test(symbol)) {
-    factors.kelvins += exponent;
-    return true;
+  if (/^[kM]eV\b/.test(plain))
+    return `${quote(shown)} is no unit of chemical energies. Give the values in eV or kJ/mol.`;
+  if (/(?:\/|\bper\b|\s)\s*\(?\s*(?:k?g|mg|grams?|kilograms?)\b|\bk?g\s*\^?-1/i.test(plain)) {
+    return `${quote(shown)} is per mass. Multiply by the molar mass and give the values per mol.`;
   }
-  const energy = energySymbol(symbol);
-  if (energy === undefined || exponent !== 1 || factors.energy !== undefined) return false;
-  factors.energy = energy;
-  if (energy !== "Cal" && !ENERGY_SYMBOL.test(symbol)) factors.notes.push(`${symbol} is read as ${energy}.`);
-  return true;
-}
-
-/** Symbols are case-sensitive, but heads in capitals are common; `MJ` and `mJ` are never taken for anything else. */
-function energySymbol(symbol: string): UnitFactors["energy"] {
-  if (symbol === "Cal") return "Cal";
-  const lower = symbol.toLowerCase();
-  if (/^(?:kj|kilojoules?)$/.test(lower)) return "kJ";
-  if (/^(?:j|joules?)$/.test(lower)) return "J";
-  if (/^(?:kcal|kilocalories?)$/.test(lower)) return "kcal";
-  if (/^(?:cal|calories?)$/.test(lower)) return "cal";
-  return undefined;
-}
-
-function unreadable(text: string): string {
   return (
-    `${quote(text)} is not a unit this table reads. ` +
-    "Energies are read in kJ, J, kcal or cal per mol; entropies and heat capacities in the same per (mol K)."
+    `${quote(shown)} is not a unit this table reads. ` +
+    "Energies are read in kJ, J, kcal or cal per mol or in eV; entropies and heat capacities in the same per (mol K)."
   );
 }

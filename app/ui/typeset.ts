@@ -19,7 +19,7 @@ const drawn: Record<string, DrawnSign> = {
   "≠": "notEqual",
 };
 
-const unitNames = "kcal|cal|kJ|J|kg|mg|g|mol|eV|kPa|Pa|mV|V|kB|m|C|K";
+const unitNames = "kcal\\(IT\\)|cal\\(IT\\)|kcal|cal|kJ|J|kg|mg|g|mol|meV|eV|kPa|Pa|mV|V|kB|m|C|K";
 // A chain of at least one division, as the data spell it: "kJ/mol", "J/(mol K)", "cal/(mol K)", "g/mol", "C/mol".
 const unitPattern = `(?:${unitNames})/(?:(?:mol|K|g|kg|s)(?![A-Za-z])|\\((?:mol|K|kg|g)(?: (?:mol|K|kg|g))*\\))`;
 const symbolPattern =
@@ -62,7 +62,10 @@ export function unitPieces(unit: string): Piece[] {
     .split(" ");
   // The trade prints kelvin before mole, although the data write "mol K".
   below.sort((a, b) => (a === "K" ? -1 : b === "K" ? 1 : 0));
-  const pieces: Piece[] = [{ text: unit.slice(0, slash) }];
+  const above = unit.slice(0, slash);
+  const pieces: Piece[] = above.endsWith("(IT)")
+    ? [{ text: above.slice(0, -4) }, { text: "IT", as: "sub" }]
+    : [{ text: above }];
   for (const name of below) pieces.push({ text: `\u00a0${name}` }, { text: "−1", as: "sup" });
   return pieces;
 }
