@@ -1,16 +1,14 @@
 import { createHash } from "node:crypto";
-import { beforeAll, describe, expect, test } from "vitest";
+import { describe, expect, test } from "vitest";
 import { useDatabase as workOn } from "#app/db/database.server.ts";
 import { makeKey } from "#app/people/apiKey.server.ts";
 import routes from "#app/routes.ts";
-import { Contract } from "#tests/support/contract.ts";
 import { publishEditionOf, publishThreeEditions } from "#tests/support/editions.ts";
 import { makePerson } from "#tests/support/people.ts";
 import { useServer } from "#tests/support/server.ts";
 
 let key = "";
 let sheetsKey = "";
-let contract: Contract;
 
 const server = useServer({
   async prepare(database) {
@@ -21,10 +19,6 @@ const server = useServer({
     key = (await makeKey(analyst, { name: "titration-2", scopes: ["read"], days: 30 })).key;
     sheetsKey = (await makeKey(steward, { name: "hands in only", scopes: ["sheets:write"], days: 30 })).key;
   },
-});
-
-beforeAll(async () => {
-  contract = new Contract(await (await server.fetch("/api/v1/openapi.json")).json());
 });
 
 /** Asks as the program does. */
@@ -52,41 +46,41 @@ const addresses: readonly [operation: string, path: string][] = [
 const locked = addresses.filter(([operation]) => !operation.endsWith("openapi.json"));
 
 describe("every operation", () => {
-  test.each(addresses)("%s answers as the contract says", async (operation, path) => {
+  test.each(addresses)("%s answers as the contract says", async (_operation, path) => {
     const answer = await ask(path);
     expect(answer.status).toBe(200);
     expect(answer.headers.get("X-Request-Id")).toMatch(/^[0-9a-f-]{36}$/);
-    await contract.check(operation, answer);
   });
 
-  test("the contract, the addresses above and the manifest name the same operations", () => {
-    expect(contract.operations.sort()).toEqual(addresses.map(([operation]) => operation).sort());
-    const manifest = routes
-      .flatMap((route) => (route.path?.startsWith("api/v1/") ? [route.path.slice("api/v1".length)] : []))
-      .filter((path) => !path.startsWith("/sheets"))
-      .map((path) => `get ${path.replace(/:(\w+)/g, "{$1}")}`);
-    expect(manifest.sort()).toEqual(contract.operations.sort());
+  test("the contract and the manifest name the same addresses, and each reading one stands above", async () => {
+    const contract = await server.contract();
+    const reading = contract.operations.filter(
+      (operation) => operation.startsWith("get ") && !/sheets/.test(operation),
+    );
+    expect(addresses.map(([operation]) => operation).sort()).toEqual(reading.sort());
+    const manifest = routes.flatMap((route) =>
+      route.path?.startsWith("api/v1/") ? [route.path.slice("api/v1".length).replace(/:(\w+)/g, "{$1}")] : [],
+    );
+    const told = contract.operations.map((operation) => operation.split(" ")[1] ?? "");
+    expect(manifest.sort()).toEqual([...new Set(told)].sort());
   });
 
-  test.each(locked)("%s wants a key", async (operation, path) => {
+  test.each(locked)("%s wants a key", async (_operation, path) => {
     const answer = await server.fetch(`/api/v1${path}`);
     expect(answer.status).toBe(401);
     expect(answer.headers.get("WWW-Authenticate")).toMatch(/^Bearer/);
-    await contract.check(operation, answer);
   });
 
-  test.each(locked)("%s wants the scope read", async (operation, path) => {
+  test.each(locked)("%s wants the scope read", async (_operation, path) => {
     const answer = await server.fetch(`/api/v1${path}`, { headers: { Authorization: `Bearer ${sheetsKey}` } });
     expect(answer.status).toBe(403);
-    await contract.check(operation, answer);
   });
 
-  test.each(addresses)("%s says which methods it answers", async (operation, path) => {
+  test.each(addresses)("%s says which methods it answers", async (_operation, path) => {
     for (const method of ["POST", "PUT", "PATCH", "DELETE"]) {
       const answer = await ask(path, { method, ...(method === "DELETE" ? {} : { body: "{}" }) });
       expect(answer.status, method).toBe(405);
       expect(answer.headers.get("Allow")).toBe("GET, HEAD, OPTIONS");
-      await contract.check(operation, answer);
     }
     const options = await ask(path, { method: "OPTIONS" });
     expect([options.status, options.headers.get("Allow"), await options.text()]).toEqual([
@@ -106,7 +100,7 @@ describe("every operation", () => {
     }
   });
 
-  test.each(addresses)("%s: the ETag is the SHA-256 of the bytes, and having them is 304", async (operation, path) => {
+  test.each(addresses)("%s: the ETag is the SHA-256 of the bytes, and having them is 304", async (_operation, path) => {
     const full = await ask(path);
     const sha256 = createHash("sha256").update(Buffer.from(await full.arrayBuffer()));
     const etag = full.headers.get("ETag") ?? "";
@@ -116,18 +110,16 @@ describe("every operation", () => {
       expect(again.status, known).toBe(304);
       expect(again.headers.get("ETag")).toBe(etag);
       expect(again.headers.get("Cache-Control")).toBe(full.headers.get("Cache-Control"));
-      await contract.check(operation, again);
     }
     const other = await ask(path, { headers: { "If-None-Match": '"other"' } });
     expect(other.status).toBe(200);
   });
 
-  test.each(addresses)("%s refuses what it does not know, and anything given twice", async (operation, path) => {
+  test.each(addresses)("%s refuses what it does not know, and anything given twice", async (_operation, path) => {
     const joint = path.includes("?") ? "&" : "?";
     for (const query of ["surprise=1", "limit=1&limit=2", "species=a&species=b"]) {
       const answer = await ask(`${path}${joint}${query}`);
       expect(answer.status, query).toBe(400);
-      await contract.check(operation, answer);
     }
   });
 
@@ -186,9 +178,7 @@ describe("what is not there", () => {
   ])("a parameter of the wrong kind, %s, is 422 with a pointer to it", async (query, pointer) => {
     const answer = await ask(`/editions/1/species?${query}`);
     expect(answer.status).toBe(422);
-    const problem = (await contract.check("get /editions/{edition}/species", answer)) as {
-      errors: { pointer: string }[];
-    };
+    const problem = (await answer.json()) as { errors: { pointer: string }[] };
     expect(problem.errors[0]?.pointer).toBe(pointer);
   });
 });
@@ -262,7 +252,6 @@ describe("species and keys", () => {
       expect(answer.headers.get("Location")).toBe(
         `/api/v1/editions/${edition}/species/${encodeURIComponent(canonical)}`,
       );
-      await contract.check("get /editions/{edition}/species/{key}", answer);
     }
   });
 

@@ -8,6 +8,8 @@ import { promisify } from "node:util";
 import { type ParsedMail, simpleParser } from "mailparser";
 import { afterAll, beforeAll, expect } from "vitest";
 import { startInbox } from "../../scripts/inbox.mjs";
+import { API_BASE } from "#app/http/apiContract.ts";
+import { Contract } from "./contract.ts";
 import { cloneDatabase, type TestDatabase } from "./database.ts";
 
 /** How the server of a test file is started. */
@@ -26,8 +28,13 @@ export interface TestServer {
   readonly url: string;
   readonly port: number;
   readonly database: TestDatabase;
-  /** Sends a request to a path of the service; redirects are not followed. */
+  /**
+   * Sends a request to a path of the service; redirects are not followed. Every answer of the API is held against the
+   * contract that the service serves: status, headers, media type and body.
+   */
   fetch(path: string, init?: RequestInit): Promise<Response>;
+  /** The contract that answers are held against, with what was seen of it so far. */
+  contract(): Promise<Contract>;
   /** The letters that have arrived so far, oldest first. */
   letters(): Promise<ParsedMail[]>;
   /** Waits for a letter to an address; the newest one when several came. */
@@ -120,6 +127,13 @@ export async function startServer(
   const names = options.worker ? ["web", "worker"] : ["web"];
   const children = await Promise.all(names.map((name) => startProgram(name, env, write)));
 
+  // Behind a proxy the contract is asked for as its clients do.
+  const asClient = { "X-Forwarded-Host": new URL(env["PUBLIC_URL"] ?? url).host, "X-Forwarded-Proto": "https" };
+  let served: Promise<Contract> | undefined;
+  const contract = (): Promise<Contract> =>
+    (served ??= fetch(`${url}${API_BASE}/openapi.json`, { headers: env["PUBLIC_URL"] === url ? {} : asClient }).then(
+      async (answer) => new Contract(await answer.json()),
+    ));
   const letters = async (): Promise<ParsedMail[]> => {
     const files = (await readdir(mailFolder)).filter((file) => file.endsWith(".eml")).sort();
     return Promise.all(files.map(async (file) => simpleParser(await readFile(path.join(mailFolder, file)))));
@@ -128,7 +142,14 @@ export async function startServer(
     url,
     port,
     database,
-    fetch: (where, init) => fetch(`${url}${where}`, { redirect: "manual", ...init }),
+    async fetch(where, init) {
+      const answer = await fetch(`${url}${where}`, { redirect: "manual", ...init });
+      if (where.startsWith("/api/")) {
+        await (await contract()).check(init?.method ?? "GET", where, answer.clone());
+      }
+      return answer;
+    },
+    contract,
     letters,
     async letterTo(address) {
       const deadline = Date.now() + LETTER_TIME;
@@ -181,6 +202,7 @@ export function useServer(options: ServerOptions = {}): TestServer {
       return current().database;
     },
     fetch: (where, init) => current().fetch(where, init),
+    contract: () => current().contract(),
     letters: () => current().letters(),
     letterTo: (address) => current().letterTo(address),
     log: () => current().log(),

@@ -255,7 +255,7 @@ const cursor = z
 const editionParameter = z.object({
   edition: z.string().meta({
     description: "Number of the edition, or current for the newest. Answers under a number never change.",
-    example: "3",
+    example: "1",
   }),
 });
 
@@ -265,6 +265,7 @@ const NONE = z.object({});
 
 export const listEditions = operation({
   id: "listEditions",
+  group: "Editions",
   method: "get",
   path: "/editions",
   summary: "All editions, the newest first",
@@ -273,10 +274,12 @@ export const listEditions = operation({
   query: NONE,
   answer: { description: "The editions.", mediaType: "application/json", schema: editionList },
   otherStatuses: [304, 400],
+  scope: "read",
 });
 
 export const readEdition = operation({
   id: "readEdition",
+  group: "Editions",
   method: "get",
   path: "/editions/{edition}",
   summary: "One edition",
@@ -286,10 +289,13 @@ export const readEdition = operation({
   query: NONE,
   answer: { description: "The edition.", mediaType: "application/json", schema: oneEdition },
   otherStatuses: [304, 400, 404],
+  headers: ["Link", "Content-Location"],
+  scope: "read",
 });
 
 export const listSpecies = operation({
   id: "listSpecies",
+  group: "Species",
   method: "get",
   path: "/editions/{edition}/species",
   summary: "Species of an edition with their values, a page at a time",
@@ -311,10 +317,13 @@ export const listSpecies = operation({
   }),
   answer: { description: "A page of species.", mediaType: "application/json", schema: speciesPage },
   otherStatuses: [304, 400, 404, 422],
+  headers: ["Link", "Content-Location"],
+  scope: "read",
 });
 
 export const readSpecies = operation({
   id: "readSpecies",
+  group: "Species",
   method: "get",
   path: "/editions/{edition}/species/{key}",
   summary: "One species with all its values",
@@ -326,10 +335,13 @@ export const readSpecies = operation({
   query: NONE,
   answer: { description: "The species.", mediaType: "application/json", schema: oneSpecies },
   otherStatuses: [304, 308, 400, 404],
+  headers: ["Content-Location"],
+  scope: "read",
 });
 
 export const listValues = operation({
   id: "listValues",
+  group: "Species",
   method: "get",
   path: "/editions/{edition}/values",
   summary: "A flat list of values",
@@ -350,10 +362,13 @@ export const listValues = operation({
   }),
   answer: { description: "The values.", mediaType: "application/json", schema: valueList },
   otherStatuses: [304, 400, 404, 422],
+  headers: ["Content-Location"],
+  scope: "read",
 });
 
 export const downloadTable = operation({
   id: "downloadTable",
+  group: "Tables",
   method: "get",
   path: "/editions/{edition}/table.csv",
   summary: "The whole edition as CSV",
@@ -363,10 +378,13 @@ export const downloadTable = operation({
   query: NONE,
   answer: { description: "The table.", mediaType: "text/csv", schema: z.string() },
   otherStatuses: [304, 400, 404],
+  headers: ["Link", "Content-Disposition", "Content-Location"],
+  scope: "read",
 });
 
 export const describeTable = operation({
   id: "describeTable",
+  group: "Tables",
   method: "get",
   path: "/editions/{edition}/table.csv-metadata.json",
   summary: "What the columns of table.csv mean",
@@ -379,10 +397,13 @@ export const describeTable = operation({
     schema: z.record(z.string(), z.unknown()),
   },
   otherStatuses: [304, 400, 404],
+  headers: ["Content-Location"],
+  scope: "read",
 });
 
 export const compareEditions = operation({
   id: "compareEditions",
+  group: "Editions",
   method: "get",
   path: "/editions/{a}/compare/{b}",
   summary: "What came, went and changed from one edition to another",
@@ -390,15 +411,18 @@ export const compareEditions = operation({
     "Net: a value that was changed and set back is unchanged. b may be the older one; then everything is turned round.",
   parameters: z.object({
     a: z.string().meta({ description: "Number of the first edition, or current.", example: "1" }),
-    b: z.string().meta({ description: "Number of the second edition, or current.", example: "2" }),
+    b: z.string().meta({ description: "Number of the second edition, or current.", example: "current" }),
   }),
   query: z.object({ limit, cursor }),
   answer: { description: "The comparison.", mediaType: "application/json", schema: comparison },
   otherStatuses: [304, 400, 404, 422],
+  headers: ["Link", "Content-Location"],
+  scope: "read",
 });
 
 export const readContract = operation({
   id: "readContract",
+  group: "Contract",
   method: "get",
   path: "/openapi.json",
   summary: "This contract",
@@ -407,7 +431,7 @@ export const readContract = operation({
   query: NONE,
   answer: { description: "The contract.", mediaType: "application/json", schema: z.record(z.string(), z.unknown()) },
   otherStatuses: [304, 400],
-  open: true,
+  scope: null,
 });
 
 /** Every operation by which editions are read. */

@@ -28,7 +28,7 @@ describe("the reference in the guide", () => {
 
   test("names where a parameter stands and an example of it", () => {
     expect(endpoint("readSpecies")?.parameters).toMatchObject([
-      { name: "edition", where: "path", required: true, example: "3" },
+      { name: "edition", where: "path", required: true, example: "1" },
       { name: "key", where: "path", required: true, example: "H2O(l)" },
     ]);
     expect(endpoint("listSpecies")?.parameters.find((one) => one.name === "limit")).toMatchObject({
