@@ -425,6 +425,40 @@ CREATE FUNCTION public.tg_versioned_row() RETURNS trigger
 COMMENT ON FUNCTION public.tg_versioned_row() IS 'Keeps editions frozen. TW002: came in outside its edition; TW003: changed otherwise than going out; TW001: removed.';
 
 --
+-- Name: address_change; Type: TABLE; Schema: public; Owner: -
+--
+
+CREATE TABLE public.address_change (
+    id uuid DEFAULT gen_random_uuid() NOT NULL,
+    token_hash bytea NOT NULL,
+    person_id uuid NOT NULL,
+    email text NOT NULL,
+    made_at timestamp with time zone DEFAULT now() NOT NULL,
+    ends_at timestamp with time zone NOT NULL,
+    used_at timestamp with time zone,
+    CONSTRAINT address_change_email_form CHECK (((email = lower(email)) AND (email ~ '^[^@[:space:][:cntrl:]]+@[^@[:space:][:cntrl:]]+$'::text) AND (length(email) <= 254))),
+    CONSTRAINT address_change_token_is_sha256 CHECK ((octet_length(token_hash) = 32))
+);
+
+--
+-- Name: TABLE address_change; Type: COMMENT; Schema: public; Owner: -
+--
+
+COMMENT ON TABLE public.address_change IS 'Single-use links by which a person confirms that they read letters at a new address.';
+
+--
+-- Name: COLUMN address_change.email; Type: COMMENT; Schema: public; Owner: -
+--
+
+COMMENT ON COLUMN public.address_change.email IS 'The address that the account takes when the link is used.';
+
+--
+-- Name: COLUMN address_change.used_at; Type: COMMENT; Schema: public; Owner: -
+--
+
+COMMENT ON COLUMN public.address_change.used_at IS 'When the link was used, or voided by another change of the account.';
+
+--
 -- Name: api_key; Type: TABLE; Schema: public; Owner: -
 --
 
@@ -1659,6 +1693,20 @@ COMMENT ON COLUMN public.try_count.limit_name IS 'Which limit, a name of app/peo
 COMMENT ON COLUMN public.try_count.subject_hash IS 'SHA-256 of what the limit counts by: a source, an address, or both.';
 
 --
+-- Name: address_change address_change_pkey; Type: CONSTRAINT; Schema: public; Owner: -
+--
+
+ALTER TABLE ONLY public.address_change
+    ADD CONSTRAINT address_change_pkey PRIMARY KEY (id);
+
+--
+-- Name: address_change address_change_token_hash_key; Type: CONSTRAINT; Schema: public; Owner: -
+--
+
+ALTER TABLE ONLY public.address_change
+    ADD CONSTRAINT address_change_token_hash_key UNIQUE (token_hash);
+
+--
 -- Name: api_key api_key_pkey; Type: CONSTRAINT; Schema: public; Owner: -
 --
 
@@ -1939,10 +1987,22 @@ ALTER TABLE ONLY public.try_count
     ADD CONSTRAINT try_count_pkey PRIMARY KEY (limit_name, subject_hash);
 
 --
+-- Name: address_change_person; Type: INDEX; Schema: public; Owner: -
+--
+
+CREATE INDEX address_change_person ON public.address_change USING btree (person_id);
+
+--
 -- Name: api_key_person; Type: INDEX; Schema: public; Owner: -
 --
 
 CREATE INDEX api_key_person ON public.api_key USING btree (person_id);
+
+--
+-- Name: audit_entry_act; Type: INDEX; Schema: public; Owner: -
+--
+
+CREATE INDEX audit_entry_act ON public.audit_entry USING btree (act, number);
 
 --
 -- Name: audit_entry_actor; Type: INDEX; Schema: public; Owner: -
@@ -1991,6 +2051,12 @@ CREATE INDEX finding_examination ON public.finding USING btree (examination_id);
 --
 
 CREATE INDEX finding_line ON public.finding USING btree (line_id) WHERE (line_id IS NOT NULL);
+
+--
+-- Name: invitation_person; Type: INDEX; Schema: public; Owner: -
+--
+
+CREATE INDEX invitation_person ON public.invitation USING btree (person_id);
 
 --
 -- Name: letter_address; Type: INDEX; Schema: public; Owner: -
@@ -2075,6 +2141,12 @@ CREATE INDEX revision_state ON public.revision USING btree (state);
 --
 
 CREATE INDEX session_person ON public.session USING btree (person_id) WHERE (ended_at IS NULL);
+
+--
+-- Name: session_person_begun; Type: INDEX; Schema: public; Owner: -
+--
+
+CREATE INDEX session_person_begun ON public.session USING btree (person_id, begun_at DESC);
 
 --
 -- Name: sheet_repair_row; Type: INDEX; Schema: public; Owner: -
@@ -2369,6 +2441,13 @@ CREATE TRIGGER table_value_frozen BEFORE INSERT OR DELETE OR UPDATE ON public.ta
 --
 
 CREATE TRIGGER table_value_no_truncate BEFORE TRUNCATE ON public.table_value FOR EACH STATEMENT EXECUTE FUNCTION public.tg_forbid_change();
+
+--
+-- Name: address_change address_change_person_id_fkey; Type: FK CONSTRAINT; Schema: public; Owner: -
+--
+
+ALTER TABLE ONLY public.address_change
+    ADD CONSTRAINT address_change_person_id_fkey FOREIGN KEY (person_id) REFERENCES public.person(id) ON DELETE RESTRICT;
 
 --
 -- Name: api_key api_key_person_id_fkey; Type: FK CONSTRAINT; Schema: public; Owner: -
@@ -2814,6 +2893,18 @@ GRANT ALL ON FUNCTION public.open_edition(expected_previous integer, publisher u
 
 REVOKE ALL ON FUNCTION public.seal_edition(n integer) FROM PUBLIC;
 GRANT ALL ON FUNCTION public.seal_edition(n integer) TO tablewright_app;
+
+--
+-- Name: TABLE address_change; Type: ACL; Schema: public; Owner: -
+--
+
+GRANT SELECT,INSERT ON TABLE public.address_change TO tablewright_app;
+
+--
+-- Name: COLUMN address_change.used_at; Type: ACL; Schema: public; Owner: -
+--
+
+GRANT UPDATE(used_at) ON TABLE public.address_change TO tablewright_app;
 
 --
 -- Name: TABLE api_key; Type: ACL; Schema: public; Owner: -

@@ -5,8 +5,9 @@
 
 import type { ColumnType } from "kysely";
 
-export type Generated<T> =
-  T extends ColumnType<infer S, infer I, infer U> ? ColumnType<S, I | undefined, U> : ColumnType<T, T | undefined, T>;
+export type Generated<T> = T extends ColumnType<infer S, infer I, infer U>
+  ? ColumnType<S, I | undefined, U>
+  : ColumnType<T, T | undefined, T>;
 
 export type Int8 = ColumnType<string, bigint | number | string, bigint | number | string>;
 
@@ -23,6 +24,22 @@ export type JsonPrimitive = boolean | number | string | null;
 export type JsonValue = JsonArray | JsonObject | JsonPrimitive;
 
 export type Timestamp = ColumnType<Date, Date | string, Date | string>;
+
+export interface AddressChange {
+  /**
+   * The address that the account takes when the link is used.
+   */
+  email: string;
+  ends_at: Timestamp;
+  id: Generated<string>;
+  made_at: Generated<Timestamp>;
+  person_id: string;
+  token_hash: Buffer;
+  /**
+   * When the link was used, or voided by another change of the account.
+   */
+  used_at: Timestamp | null;
+}
 
 export interface ApiKey {
   ends_at: Timestamp;
@@ -528,6 +545,7 @@ export interface TryCount {
 }
 
 export interface DB {
+  address_change: AddressChange;
   api_key: ApiKey;
   audit_entry: AuditEntry;
   column_plan: ColumnPlan;
