@@ -51,7 +51,15 @@ export const paths = {
 
   // Where the numbers come from, and what they mean
   sources: () => "/sources",
+  newSource: () => "/sources/new",
+  /** A source as the newest edition cites it; or, while none does, where it is proposed. */
   source: (source: string) => `/sources/${segment(source)}`,
+  mendSource: (source: string) => `/sources/${segment(source)}/mend`,
+  sourcesIn: (edition: EditionInPath, query?: Query) => `/editions/${edition}/sources${queryString(query)}`,
+  sourceIn: (edition: EditionInPath, source: string, query?: Query) =>
+    `/editions/${edition}/sources/${segment(source)}${queryString(query)}`,
+  sourceValues: (edition: EditionInPath, source: string) =>
+    `/editions/${edition}/sources/${segment(source)}/values.csv`,
   conventions: () => "/conventions",
   conventionsCheck: (check: string) => `/conventions/checks/${segment(check)}`,
 
@@ -61,9 +69,11 @@ export const paths = {
   forgotten: () => "/forgotten",
   reset: (token: string) => `/reset/${segment(token)}`,
   invitation: (token: string) => `/invitation/${segment(token)}`,
+  newAddress: (token: string) => `/address/${segment(token)}`,
   account: () => "/account",
   keys: () => "/account/keys",
-  people: () => "/people",
+  people: (query?: Query) => `/people${queryString(query)}`,
+  person: (person: string) => `/people/${segment(person)}`,
   record: (query?: Query) => `/record${queryString(query)}`,
   inbox: () => "/inbox",
 

@@ -35,7 +35,12 @@ export default [
 
   // Sources and conventions
   route("sources", "routes/sources.tsx"),
-  route("sources/:source", "routes/source.tsx"),
+  route("sources/new", "routes/sources.new.tsx"),
+  route("sources/:source", "routes/source.ts"),
+  route("sources/:source/mend", "routes/source.mend.tsx"),
+  route("editions/:edition/sources", "routes/edition.sources.tsx"),
+  route("editions/:edition/sources/:source", "routes/edition.source.tsx"),
+  route("editions/:edition/sources/:source/values.csv", "routes/edition.source.values.ts"),
   route("conventions", "routes/conventions.tsx"),
   route("conventions/checks/:check", "routes/conventions.check.tsx"),
 
@@ -45,9 +50,11 @@ export default [
   route("forgotten", "routes/forgotten.tsx"),
   route("reset/:token", "routes/reset.tsx"),
   route("invitation/:token", "routes/invitation.tsx"),
+  route("address/:token", "routes/address.tsx"),
   route("account", "routes/account.tsx"),
   route("account/keys", "routes/account.keys.tsx"),
   route("people", "routes/people.tsx"),
+  route("people/:person", "routes/person.tsx"),
   route("inbox", "routes/inbox.tsx"),
 
   // For programs: the API and its guide
@@ -68,6 +75,7 @@ export default [
   route("resources/sheets/:sheet/progress", "routes/resources.sheet.progress.ts"),
   route("resources/sheets/:sheet/repair", "routes/resources.sheet.repair.ts"),
   route("resources/revisions/:revision/act", "routes/resources.revision.act.ts"),
+  route("resources/record/export", "routes/resources.record.export.ts"),
 
   // Development and tests
   route("ui", "routes/ui.tsx"),

@@ -38,6 +38,8 @@ export async function findComparePage(acting: Acting, from: Edition, to: Edition
     sources: net.sources.map(({ what, before, after, texts }) => ({
       what,
       id: (after ?? before)?.sourceId ?? "",
+      /** Whether the second edition has it. */
+      after: after !== null,
       citation: shortCitation((after ?? before)?.citation ?? {}),
       texts: texts.map((text) => ({ field: text.field, runs: wordRuns(text) })),
     })),

@@ -13,7 +13,7 @@ import type { Search, SpeciesFilter } from "./search.ts";
  */
 
 /** The rows of a versioned table that stand in edition n. */
-function standsIn(n: number, since: Expression<number>, until: Expression<number | null>): Expression<SqlBool> {
+export function standsIn(n: number, since: Expression<number>, until: Expression<number | null>): Expression<SqlBool> {
   return sql<SqlBool>`(${since} <= ${n} and (${until} is null or ${until} > ${n}))`;
 }
 
@@ -237,7 +237,7 @@ function untilAsOf(n: number) {
 }
 
 /** Who accepted the version `lv` of a line: the newest decision on it that did. */
-function acceptedBy() {
+export function acceptedBy() {
   return sql<string | null>`(select p.name from line_decision d join person p on p.id = d.decided_by
     where d.line_version_id = lv.id and d.decision = 'accept' order by d.id desc limit 1)`;
 }

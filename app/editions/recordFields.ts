@@ -15,8 +15,11 @@ export const detailFields: readonly { name: string; text: (row: DetailTexts) => 
   { name: "other names", text: (row) => row.synonyms.join("; ") },
 ];
 
+/** The parts of a source's record. */
+export type SourceTexts = Pick<SourceAsOf, "citation" | "doi" | "kind" | "notice">;
+
 /** The parts of a source, as text, in the order they are compared and shown. */
-export const sourceFields: readonly { name: string; text: (row: SourceAsOf) => string }[] = [
+export const sourceFields: readonly { name: string; text: (row: SourceTexts) => string }[] = [
   { name: "citation", text: (row) => fullCitation(row.citation) },
   { name: "note", text: (row) => noteOf(row.citation) },
   { name: "DOI", text: (row) => row.doi ?? "" },

@@ -56,7 +56,11 @@ export async function digestTableFile(edition: Edition): Promise<FileDigest> {
 
 /** The edition's CSV as a stream of bytes. */
 export function streamTableFile(edition: Edition): ReadableStream<Uint8Array> {
-  const source = tableFilePortions(edition.number);
+  return streamOf(tableFilePortions(edition.number));
+}
+
+/** Portions of a file as a stream, each made when it is asked for. */
+export function streamOf(source: AsyncGenerator<Buffer>): ReadableStream<Uint8Array> {
   return new ReadableStream<Uint8Array>({
     async pull(controller) {
       const { done, value } = await source.next();

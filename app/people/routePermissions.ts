@@ -73,10 +73,16 @@ export const routePermissions: Readonly<Record<string, RouteDoors>> = {
   "/resources/revisions/:revision/act": revisionForms,
   "/publish": both("edition:publish"),
   "/record": reads("record:read"),
+  "/resources/record/export": both("record:read"),
 
   // Sources and conventions
   "/sources": reads("table:read"),
+  "/sources/new": both("revision:write"),
   "/sources/:source": reads("table:read"),
+  "/sources/:source/mend": both("revision:write"),
+  "/editions/:edition/sources": reads("table:read"),
+  "/editions/:edition/sources/:source": reads("table:read"),
+  "/editions/:edition/sources/:source/values.csv": reads("table:read"),
   "/conventions": reads("public"),
   "/conventions/checks/:check": reads("public"),
 
@@ -86,9 +92,11 @@ export const routePermissions: Readonly<Record<string, RouteDoors>> = {
   "/forgotten": both("public"),
   "/reset/:token": both("public"),
   "/invitation/:token": both("public"),
+  "/address/:token": both("public"),
   "/account": both("account:own"),
   "/account/keys": both("key:own"),
   "/people": both("people:manage"),
+  "/people/:person": both("people:manage"),
   // The demo's only; anywhere else there is nothing at its address.
   "/inbox": reads("public"),
 

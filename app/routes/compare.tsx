@@ -1,6 +1,6 @@
 import { Link, redirect } from "react-router";
 import { type ComparePage, findComparePage } from "#app/editions/comparePage.server.ts";
-import type { ShownChange, TextRun } from "#app/editions/comparePage.ts";
+import type { ShownChange } from "#app/editions/comparePage.ts";
 import type { EditionFrame } from "#app/editions/frame.server.ts";
 import { resolveEdition } from "#app/editions/resolve.server.ts";
 import { forPage } from "#app/http/respond.server.ts";
@@ -8,6 +8,7 @@ import { paths } from "#app/paths.ts";
 import { requireActing } from "#app/people/visitor.server.ts";
 import { propertyInfo } from "#app/thermo/property.ts";
 import { Caution } from "#app/ui/Caution.tsx";
+import { ChangedWords } from "#app/ui/ChangedWords.tsx";
 import { type Column, DataTable } from "#app/ui/DataTable.tsx";
 import { DifferencePlot } from "#app/ui/DifferencePlot.tsx";
 import { Ribbon } from "#app/ui/EditionLine.tsx";
@@ -182,7 +183,9 @@ function CompareRibbon({ from, to, newest }: { from: EditionFrame; to: EditionFr
 }
 
 function changeColumns({ from, to, citations }: ComparePage): Column<ShownChange>[] {
-  const cited = (sourceId: string) => <Link to={paths.source(sourceId)}>{citations[sourceId] ?? sourceId}</Link>;
+  const cited = (sourceId: string, edition = to.number) => (
+    <Link to={paths.sourceIn(edition, sourceId)}>{citations[sourceId] ?? sourceId}</Link>
+  );
   return [
     {
       id: "species",
@@ -247,7 +250,7 @@ function changeColumns({ from, to, citations }: ComparePage): Column<ShownChange
             <span className="fine block">was {citations[before.sourceId] ?? before.sourceId}</span>
           </>
         ) : (
-          cited((after ?? before)?.sourceId ?? "")
+          cited((after ?? before)?.sourceId ?? "", after ? to.number : from.number)
         ),
     },
   ];
@@ -291,7 +294,7 @@ function Texts({ page: { species, sources, from, to } }: { page: ComparePage }) 
                     />
                   </th>
                   <td className="tight">{what === "changed" ? "called otherwise" : what}</td>
-                  <td>{texts.length > 0 ? <Fields texts={texts} /> : name}</td>
+                  <td>{texts.length > 0 ? <ChangedWords texts={texts} /> : name}</td>
                 </tr>
               ))}
             </tbody>
@@ -309,14 +312,14 @@ function Texts({ page: { species, sources, from, to } }: { page: ComparePage }) 
               </tr>
             </thead>
             <tbody>
-              {sources.map(({ id, what, citation, texts }) => (
+              {sources.map(({ id, what, after, citation, texts }) => (
                 <tr key={id}>
                   <th scope="row">
-                    <Link to={paths.source(id)}>{citation}</Link>
+                    <Link to={paths.sourceIn(after ? to.number : from.number, id)}>{citation}</Link>
                   </th>
                   <td className="tight">{what === "changed" ? "cited otherwise" : what}</td>
                   <td>
-                    <Fields texts={texts} />
+                    <ChangedWords texts={texts} />
                   </td>
                 </tr>
               ))}
@@ -326,17 +329,4 @@ function Texts({ page: { species, sources, from, to } }: { page: ComparePage }) 
       )}
     </>
   );
-}
-
-function Fields({ texts }: { texts: readonly { field: string; runs: readonly TextRun[] }[] }) {
-  return texts.map(({ field, runs }) => (
-    <div key={field}>
-      <span className="text-soft">{field}: </span>
-      {runs.map(({ kind, text }, index) => {
-        if (kind === "went") return <del key={index}>{text}</del>;
-        if (kind === "came") return <ins key={index}>{text}</ins>;
-        return <span key={index}>{text}</span>;
-      })}
-    </div>
-  ));
 }

@@ -1,51 +1,30 @@
-import { Link } from "react-router";
-import { findSourcesPage } from "#app/editions/sourcesPage.server.ts";
+import { redirect } from "react-router";
+import { findCurrentEdition } from "#app/editions/editions.server.ts";
 import { forPage } from "#app/http/respond.server.ts";
 import { paths } from "#app/paths.ts";
+import { may } from "#app/people/permissions.ts";
 import { requireActing } from "#app/people/visitor.server.ts";
-import { fullCitation } from "#app/sources/citation.ts";
-import { type Column, DataTable } from "#app/ui/DataTable.tsx";
+import { ButtonLink } from "#app/ui/Button.tsx";
 import { EmptyPage } from "#app/ui/EmptyPage.tsx";
-import { count } from "#app/ui/figure.ts";
 import { Leaf } from "#app/ui/Leaf.tsx";
 import type { Route } from "./+types/sources";
-import { sourceKindWords } from "./source/words.ts";
 
 export const meta: Route.MetaFunction = () => [{ title: "Sources · Tablewright" }];
 
-export const loader = forPage(async ({ request }: Route.LoaderArgs) =>
-  findSourcesPage(await requireActing(request, "table:read")),
-);
+/** Leads to the sources of the newest edition; there is something to say here only while there is none. */
+export const loader = forPage(async ({ request }: Route.LoaderArgs) => {
+  const { person } = await requireActing(request, "table:read");
+  const newest = await findCurrentEdition();
+  if (newest !== null) throw redirect(paths.sourcesIn(newest) + new URL(request.url).search);
+  return { writes: may(person.roles, "revision:write") };
+});
 
-type Source = Route.ComponentProps["loaderData"]["sources"][number];
-
-const columns: Column<Source>[] = [
-  {
-    id: "citation",
-    head: "Source",
-    rowHead: true,
-    wraps: true,
-    cell: (source) => (
-      <Link to={paths.source(source.sourceId)}>{fullCitation(source.citation) || source.sourceId}</Link>
-    ),
-  },
-  { id: "kind", head: "Kind", cell: (source) => sourceKindWords[source.kind] },
-  { id: "values", head: "Values", figure: true, cell: (source) => count(source.values) },
-];
-
-export default function SourcesPage({ loaderData: { sources } }: Route.ComponentProps) {
+export default function SourcesPage({ loaderData: { writes } }: Route.ComponentProps) {
   return (
-    <Leaf heading="Sources" section="sources" lede="Where the numbers of the newest edition come from.">
-      <DataTable
-        caption="Sources of the newest edition"
-        rows={sources}
-        columns={columns}
-        rowKey={(source) => source.sourceId}
-        even
-        empty={
-          <EmptyPage>No edition holds a source yet. A source comes in with the sheet that brings its values.</EmptyPage>
-        }
-      />
+    <Leaf heading="Sources" section="sources" lede="Where the numbers of the table come from.">
+      <EmptyPage start={writes && <ButtonLink to={paths.newSource()}>Add a source</ButtonLink>}>
+        No edition holds a source yet. A source comes in with the sheet that brings its values, or is added by hand.
+      </EmptyPage>
     </Leaf>
   );
 }

@@ -181,7 +181,7 @@ function Values({ page }: { page: SpeciesPage }) {
               </td>
               <td>{value.origin}</td>
               <td>
-                <Link to={paths.source(value.sourceId)}>{shortOf(value.sourceId)}</Link>
+                <Link to={paths.sourceIn(frame.number, value.sourceId)}>{shortOf(value.sourceId)}</Link>
               </td>
               <td className="tight">
                 <Link to={paths.edition(value.since)}>edition {value.since}</Link>
@@ -328,7 +328,7 @@ function historyColumns(page: SpeciesPage): Column<HistoryEntry>[] {
         sentence !== null ? (
           <Prose text={sentence} />
         ) : (
-          sourceId && <Link to={paths.source(sourceId)}>{shortOf(sourceId)}</Link>
+          sourceId && <Link to={paths.sourceIn(page.frame.number, sourceId)}>{shortOf(sourceId)}</Link>
         ),
     },
     {

@@ -95,7 +95,7 @@ function TableOfEdition({ page }: { page: TablePage }) {
         <ol className="fine mt-3" aria-label="Sources of this page">
           {sources.map(({ number, sourceId, citation, notice }) => (
             <li key={sourceId} id={`source-${number}`}>
-              {number} · <Link to={paths.source(sourceId)}>{citation}</Link>
+              {number} · <Link to={paths.sourceIn(frame.number, sourceId)}>{citation}</Link>
               {notice && <span className="is-look"> · {notice}</span>}
             </li>
           ))}

@@ -49,3 +49,16 @@ export async function countValuesBySource(edition: number, db: Database): Promis
 export async function insertSource(id: string, trx: Database): Promise<void> {
   await trx.insertInto("source").values({ id }).execute();
 }
+
+/** The newest open revision that proposes a source; undefined where none does. */
+export async function findProposalOfSource(sourceId: string, db: Database): Promise<number | undefined> {
+  const row = await db
+    .selectFrom("revision_line")
+    .where("source_id", "=", sourceId)
+    .where("state", "in", ["open", "accepted"])
+    .select("revision_id as revisionId")
+    .orderBy("id", "desc")
+    .limit(1)
+    .executeTakeFirst();
+  return row?.revisionId;
+}
