@@ -6,6 +6,7 @@ import { demand } from "#app/people/permissions.ts";
 import type { Acting } from "#app/people/person.ts";
 import { findWaitingLines } from "#app/review/review.queries.server.ts";
 import { insertRevisionWithLines } from "#app/review/revise.server.ts";
+import { newSourceId } from "#app/sources/newId.server.ts";
 import { describedSource } from "#app/sources/sourceForm.ts";
 import { findChoosableSources, insertSource } from "#app/sources/sources.queries.server.ts";
 import {
@@ -169,7 +170,7 @@ async function sourceOf(
   if (!choice) throw new Refused("No source was chosen for this sheet. Go back to the columns and choose it.");
   const { source } = choice;
   return {
-    id: `src_${randomUUID().replaceAll("-", "")}`,
+    id: newSourceId(),
     exists: false,
     isNew: { kind: "source", ...describedSource(source) },
   };

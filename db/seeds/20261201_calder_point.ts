@@ -23,11 +23,13 @@ import type { NewSource } from "#app/sources/sourceForm.ts";
  */
 
 const codata: NewSource = {
+  work: "book",
   title: "CODATA Key Values for Thermodynamics",
   authors: "Cox, J. D.\nWagman, D. D.\nMedvedev, V. A.",
   year: "1989",
   container: "",
-  publisher: "Hemisphere, New York",
+  publisher: "Hemisphere",
+  place: "New York",
   doi: "",
   sourceKind: "evaluation",
   note:
@@ -36,10 +38,14 @@ const codata: NewSource = {
 };
 
 const nbs: NewSource = {
+  work: "article",
   title: "The NBS Tables of Chemical Thermodynamic Properties",
-  authors: "Wagman, D. D.\nothers",
+  authors:
+    "Wagman, D. D.\nEvans, W. H.\nParker, V. B.\nSchumm, R. H.\nHalow, I.\nBailey, S. M.\nChurney, K. L.\nNuttall, R. L.",
   year: "1982",
-  container: "Journal of Physical and Chemical Reference Data 11, Supplement 2",
+  container: "Journal of Physical and Chemical Reference Data",
+  volume: "11",
+  issue: "Supplement 2",
   publisher: "",
   doi: "",
   sourceKind: "evaluation",
@@ -47,6 +53,7 @@ const nbs: NewSource = {
 };
 
 const notebook = (title: string): NewSource => ({
+  work: "inhouse",
   title,
   authors: "Calder Point Laboratory",
   year: "2026",
