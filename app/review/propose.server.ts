@@ -11,6 +11,7 @@ import type { Phase } from "#app/thermo/phase.ts";
 import { propertyInfo } from "#app/thermo/property.ts";
 import type { LineContent } from "./content.ts";
 import { examineRevision } from "./examine.server.ts";
+import { lineSays } from "./lineWords.ts";
 import { findKeyHolders, findKnownSourceIds } from "./propose.queries.server.ts";
 import {
   findLineBases,
@@ -71,8 +72,9 @@ export async function insertProposal(acting: Acting, proposal: Proposal, { trx, 
   const { lines } = proposal;
   if (lines.length === 0) throw new Invalid("Nothing is proposed: there is no line to write.");
   const title = proposal.revisionId === null ? titleOf(proposal.title) : "";
-  if (proposal.revisionId !== null) await findWritable(acting, proposal.revisionId, trx);
+  // Names before revisions, as everywhere, so that two people never wait for each other.
   if (lines.some((line) => line.kind === "detail")) await lockNaming(trx);
+  if (proposal.revisionId !== null) await findWritable(acting, proposal.revisionId, trx);
   for (const id of proposal.newSources ?? []) await insertSource(id, trx);
   await insertSpecies(proposal.newSpecies ?? [], trx);
   await demandSubjects(lines, trx);
@@ -140,7 +142,7 @@ async function refuseDoubledPlaces({ revisionId, lines }: Proposal, trx: ActScop
     const other = taken.get(place);
     if (other && revisionId !== null) {
       throw new Refused(
-        `Revision ${revisionId} already has a line for ${await nameOf(line, lines, trx)}: ${saysOf(other.content, other)}. Change that line, or take it out first.`,
+        `Revision ${revisionId} already has a line for ${await nameOf(line, lines, trx)}: ${lineSays(other.content, other.property)}. Change that line, or take it out first.`,
       );
     }
     if (places.has(place))
@@ -157,19 +159,6 @@ async function nameOf(line: ProposedLine, lines: readonly ProposedLine[], trx: A
   const [standing] = await findDetailsAsOf(edition, { speciesIds: line.speciesId ? [line.speciesId] : [] }, trx);
   const key = standing?.key ?? (beside?.kind === "detail" ? beside.key : "this species");
   return line.property === null ? `what ${key} is called` : `${propertyInfo[line.property].symbol} of ${key}`;
-}
-
-function saysOf(content: LineContent, line: Pick<ProposedLine, "property">): string {
-  switch (content.kind) {
-    case "value":
-      return `${content.digits.replace("-", "−")} ${line.property ? propertyInfo[line.property].unit : ""}`.trim();
-    case "withdrawal":
-      return "its withdrawal";
-    case "detail":
-      return [content.key, content.name].filter((part) => part !== "").join(", ");
-    case "source":
-      return shortCitation(content.citation);
-  }
 }
 
 /** A key is unique in an edition: it is refused while another species holds it for sure. */

@@ -27,6 +27,8 @@ export interface WrittenFigure {
   /** Which of its readings an ambiguous number is meant as, in digits; what fits none of them is not heeded. */
   valueIs?: string;
   uncertaintyIs?: string;
+  /** An empty uncertainty says that none is stated, whatever kind is chosen: one choice serves several values. */
+  mayStateNone?: boolean;
 }
 
 export type FigureField = "value" | "unit" | "uncertainty" | "k";
@@ -140,7 +142,7 @@ type Beside =
   | { outcome: "wrong"; field: "uncertainty" | "k"; sentence: string; readings?: readonly Digits[] };
 
 /** The uncertainty from the fields of its own. */
-function readBeside({ uncertainty: text, uncertaintyIs, kind, k }: WrittenFigure): Beside {
+function readBeside({ uncertainty: text, uncertaintyIs, kind, k, mayStateNone }: WrittenFigure): Beside {
   const wrong = (sentence: string, readings?: readonly Digits[]): Beside => ({
     outcome: "wrong",
     field: "uncertainty",
@@ -156,6 +158,7 @@ function readBeside({ uncertainty: text, uncertaintyIs, kind, k }: WrittenFigure
   if (kind === "exact") {
     return { outcome: "read", uncertainty: { digits: digits("0"), kind: "exact", coverageFactor: null } };
   }
+  if (empty && mayStateNone) return { outcome: "read", uncertainty: null };
   if (empty) return wrong("Give the uncertainty, or choose “none stated”.");
   const reading = number(text, uncertaintyIs);
   if (reading.outcome === "wrong") return wrong(reading.sentence, reading.readings);
