@@ -66,6 +66,7 @@ export default [
   route("api/v1/editions/:edition/species", "routes/api.edition.species.ts"),
   route("api/v1/editions/:edition/species/:key", "routes/api.edition.species.key.ts"),
   route("api/v1/editions/:edition/values", "routes/api.edition.values.ts"),
+  route("api/v1/editions/:edition/lookup", "routes/api.edition.lookup.ts"),
   route("api/v1/editions/:edition/table.csv", "routes/api.edition.table.ts"),
   route("api/v1/editions/:edition/table.csv-metadata.json", "routes/api.edition.table.description.ts"),
   route("api/v1/editions/:a/compare/:b", "routes/api.edition.compare.ts"),

@@ -62,11 +62,32 @@ export function keptAnswer(
   return new Response(request.method === "HEAD" ? null : body(), { status: 200, headers: head });
 }
 
+function digestOf(bytes: Buffer): BodyDigest {
+  return bodyDigest(createHash("sha256").update(bytes).digest(), bytes.length);
+}
+
+/**
+ * The JSON answer to something that was sent. HTTP's caches keep nothing by the body of a request, so it tells them to
+ * keep nothing; the hash of its bytes still shows that the same question got the same answer.
+ */
+export function sentAnswer(body: unknown, status: 200 | 201, headers: Readonly<Record<string, string>> = {}): Response {
+  const bytes = Buffer.from(JSON.stringify(body), "utf8");
+  return new Response(new Uint8Array(bytes), {
+    status,
+    headers: {
+      "Content-Type": "application/json",
+      "Content-Length": String(bytes.length),
+      "Cache-Control": "private, no-store",
+      "Repr-Digest": digestOf(bytes).reprDigest,
+      ...headers,
+    },
+  });
+}
+
 /** Text as a kept answer. */
 export function textAnswer(request: Request, text: string, head: AnswerHead): Response {
   const bytes = Buffer.from(text, "utf8");
-  const digest = bodyDigest(createHash("sha256").update(bytes).digest(), bytes.length);
-  return keptAnswer(request, head, digest, () => new Uint8Array(bytes));
+  return keptAnswer(request, head, digestOf(bytes), () => new Uint8Array(bytes));
 }
 
 /** JSON as a kept answer. The order of members is the order in which they were put in, so equal bodies have equal bytes. */

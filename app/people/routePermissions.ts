@@ -109,6 +109,7 @@ export const routePermissions: Readonly<Record<string, RouteDoors>> = {
   "/api/v1/editions/:edition/species": reads({ scope: "read" }),
   "/api/v1/editions/:edition/species/:key": reads({ scope: "read" }),
   "/api/v1/editions/:edition/values": reads({ scope: "read" }),
+  "/api/v1/editions/:edition/lookup": { read: null, change: { scope: "read" } },
   "/api/v1/editions/:edition/table.csv": reads({ scope: "read" }),
   "/api/v1/editions/:edition/table.csv-metadata.json": reads({ scope: "read" }),
   "/api/v1/editions/:a/compare/:b": reads({ scope: "read" }),

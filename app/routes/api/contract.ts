@@ -198,6 +198,7 @@ export type ApiSpecies = z.output<typeof speciesShape>;
 export type ApiEdition = z.output<typeof editionShape>;
 export type ApiValueChange = z.output<typeof valueChangeShape>;
 export type ApiComparison = z.output<typeof comparison>;
+export type ApiLookupEntry = z.output<typeof lookupEntry>;
 
 // --- What a request may say ---------------------------------------------------
 
@@ -366,6 +367,79 @@ export const listValues = operation({
   scope: "read",
 });
 
+/** Most items of one question. */
+export const MOST_ASKED = 1000;
+const LONGEST_ASKED = 300;
+
+const askedText = z
+  .string("Give a text: a key, a name or a CAS number.")
+  .max(LONGEST_ASKED, `Give at most ${LONGEST_ASKED} characters.`)
+  .refine(
+    (text) => !/[\p{Cc}\p{Surrogate}]/u.test(text),
+    "The text holds a character that no name or key has, such as a line end or half of a surrogate pair.",
+  );
+
+export const lookupQuestion = z
+  .strictObject({
+    species: z
+      .array(askedText, "Give a list of texts.")
+      .min(1, "Ask for at least one species.")
+      .max(MOST_ASKED, `Ask for at most ${MOST_ASKED} species at a time.`)
+      .meta({
+        description: "Keys in any usual spelling, names or CAS numbers, each by itself.",
+        example: ["H2O(l)", "SO4 2-(aq)", "7732-18-5"],
+      }),
+    phase: phase.optional().meta({ description: "Only species in this phase, where a name or number has several." }),
+    properties: z
+      .array(property)
+      .min(1, "Name at least one property, or leave the list out.")
+      .max(20)
+      .optional()
+      .meta({ description: "Values wanted; all when left out." }),
+  })
+  .meta({ id: "LookupQuestion" });
+
+const candidate = z.object({ id: speciesId, key, name: z.string(), cas: z.string().nullable() });
+const sentence = z.string().meta({ description: "What is the matter, and what to do." });
+const askedBack = z.string().meta({ description: "The item as it was sent." });
+
+const lookupEntry = z
+  .discriminatedUnion("outcome", [
+    z.object({
+      asked: askedBack,
+      outcome: z.literal("found"),
+      species: speciesShape,
+      missing: z.array(property).meta({ description: "Properties asked for that have no value in this edition." }),
+    }),
+    z.object({ asked: askedBack, outcome: z.literal("ambiguous"), sentence, candidates: z.array(candidate).min(1) }),
+    z.object({ asked: askedBack, outcome: z.literal("unknown"), sentence }),
+  ])
+  .meta({
+    id: "LookupEntry",
+    description:
+      "found with the species and its values; ambiguous with all that it may be; or unknown. One for each item, in the order asked.",
+  });
+
+export const lookUpSpecies = operation({
+  id: "lookUpSpecies",
+  group: "Species",
+  method: "post",
+  path: "/editions/{edition}/lookup",
+  summary: "Many species by name, key or CAS number at once",
+  description: `Up to ${MOST_ASKED} items, by what they are called in that edition, whatever the case of a name. The answer has one entry for each, in order; nothing is left out and nothing guessed: what may be two species is ambiguous. Under a number the same question has the same answer, byte for byte, for ever.`,
+  parameters: editionParameter,
+  query: NONE,
+  body: { description: "What is asked.", content: { "application/json": { schema: lookupQuestion } } },
+  answer: {
+    description: "One entry for each item asked.",
+    mediaType: "application/json",
+    schema: z.object({ edition: editionNumber, entries: z.array(lookupEntry) }),
+  },
+  otherStatuses: [400, 404, 413, 415, 422],
+  headers: ["Content-Location"],
+  scope: "read",
+});
+
 export const downloadTable = operation({
   id: "downloadTable",
   group: "Tables",
@@ -441,6 +515,7 @@ export const readingOperations = [
   listSpecies,
   readSpecies,
   listValues,
+  lookUpSpecies,
   downloadTable,
   describeTable,
   compareEditions,

@@ -16,6 +16,7 @@ export const apiPaths = {
   oneSpecies: (edition: number | string, key: string) =>
     `${API_BASE}/editions/${edition}/species/${encodeURIComponent(key)}`,
   values: (edition: number | string) => `${API_BASE}/editions/${edition}/values`,
+  lookup: (edition: number | string) => `${API_BASE}/editions/${edition}/lookup`,
   table: (edition: number | string) => `${API_BASE}/editions/${edition}/table.csv`,
   tableDescription: (edition: number | string) => `${API_BASE}/editions/${edition}/table.csv-metadata.json`,
   compare: (a: number | string, b: number | string) => `${API_BASE}/editions/${a}/compare/${b}`,
