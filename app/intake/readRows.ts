@@ -2,7 +2,7 @@ import { compare, digits, type Digits, isZero } from "#app/thermo/digits.ts";
 import { type Formula, readFormula } from "#app/thermo/formula.ts";
 import { readCas } from "#app/thermo/cas.ts";
 import { normalizeLabel } from "#app/thermo/label.ts";
-import { type NumberOptions, readNumber, type ReadNumber } from "#app/thermo/number.ts";
+import { type NumberOptions, readNumber, type ReadNumber, spellNumber } from "#app/thermo/number.ts";
 import { type Phase, readPhase } from "#app/thermo/phase.ts";
 import { type Property, propertyInfo } from "#app/thermo/property.ts";
 import { quote, type Reading } from "#app/thermo/reading.ts";
@@ -404,7 +404,7 @@ function readValue(
 
 const ZERO = digits("0");
 
-/** A number, or its problem with a repair where a footnote mark is all that is in the way. */
+/** A number, or its problem with each reading as a repair. */
 function readCell(
   text: string,
   column: number,
@@ -412,14 +412,7 @@ function readCell(
   problems: CellProblem[],
   notes: string[],
 ): ReadNumber | null {
-  const reading = readNumber(text, options);
-  const marked = reading.outcome === "refused" ? /^(.*?\d\)?)\s*[*†‡§#]+$|^(.*?\d)\s+[a-d]\)?$/.exec(text) : null;
-  const bare = marked ? (marked[1] ?? marked[2] ?? "") : "";
-  if (reading.outcome === "refused" && bare !== "" && readNumber(bare, options).outcome === "read") {
-    problems.push(problem(column, reading.sentence, [{ label: `Take ${minus(bare)}`, column, text: bare }]));
-    return null;
-  }
-  return take(reading, column, problems, notes, (one) => one.digits);
+  return take(readNumber(text, options), column, problems, notes, spellNumber);
 }
 
 /** Third law: a pure substance has a positive entropy; so is its heat capacity and its enthalpy increment. */
@@ -475,7 +468,7 @@ function readSpread(
   if (isAbsent(cell.text)) {
     if (!inCell) return conventional ? exact : null;
     if (isZero(inCell.digits) && conventional) return exact;
-    return inTableUnit(inCell.digits, inCell.kind === "standard" ? "standard" : kindOf(frame), slot);
+    return inTableUnit(inCell.digits, inCell.kind === "unstated" ? kindOf(frame) : inCell.kind, slot);
   }
 
   // A bare ± before the number in a column of its own says nothing new.
@@ -520,5 +513,3 @@ function inTableUnit(value: Digits, kind: "standard" | "expanded" | "unstated", 
     coverageFactor: kind === "expanded" ? 2 : null,
   };
 }
-
-const minus = (text: string): string => text.replace(/^-/, "−");

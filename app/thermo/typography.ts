@@ -134,6 +134,7 @@ function withoutTex(text: string): string {
   return plain
     .replace(/\\textsuperscript\{([^{}]*)\}/g, "^{$1}")
     .replace(/\\textsubscript\{([^{}]*)\}/g, "_{$1}")
+    .replace(/\\[()[\]]/g, "")
     .replace(/\\[,;:! ]/g, " ");
 }
 
