@@ -1374,7 +1374,7 @@ COMMENT ON COLUMN public.sheet_row.number IS 'Row number as a person counts in t
 -- Name: COLUMN sheet_row.cells; Type: COMMENT; Schema: public; Owner: -
 --
 
-COMMENT ON COLUMN public.sheet_row.cells IS 'The cells as uploaded, to the letter. Repairs are sheet_repair.';
+COMMENT ON COLUMN public.sheet_row.cells IS 'The cells as uploaded, to the letter, in the encoding the sheet is read in. Repairs are sheet_repair.';
 
 --
 -- Name: COLUMN sheet_row.left_out_at; Type: COMMENT; Schema: public; Owner: -
@@ -3259,6 +3259,12 @@ GRANT SELECT,INSERT ON TABLE public.sheet_repair TO tablewright_app;
 --
 
 GRANT SELECT,INSERT ON TABLE public.sheet_row TO tablewright_app;
+
+--
+-- Name: COLUMN sheet_row.cells; Type: ACL; Schema: public; Owner: -
+--
+
+GRANT UPDATE(cells) ON TABLE public.sheet_row TO tablewright_app;
 
 --
 -- Name: COLUMN sheet_row.outcome; Type: ACL; Schema: public; Owner: -

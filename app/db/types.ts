@@ -398,7 +398,7 @@ export interface SheetRepair {
 
 export interface SheetRow {
   /**
-   * The cells as uploaded, to the letter. Repairs are sheet_repair.
+   * The cells as uploaded, to the letter, in the encoding the sheet is read in. Repairs are sheet_repair.
    */
   cells: string[];
   /**

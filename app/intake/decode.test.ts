@@ -16,6 +16,72 @@ function refusal(input: string | Uint8Array): string {
   return result.sentence;
 }
 
+const inUtf16 = (text: string): number[] =>
+  Array.from(text).flatMap((sign) => [sign.charCodeAt(0) & 0xff, sign.charCodeAt(0) >> 8]);
+const swapped = (list: readonly number[]): number[] => list.map((_, index) => list[index ^ 1] ?? 0);
+
+describe("encodings", () => {
+  // The Windows code page: ± is B1, · is B7, the en dash 96, ° B0, Δ is not in it (the Unicode Consortium's CP1252 table).
+  const text = "formula,S,remark\nH2O,69.95 ± 0.03,–20 °C\n";
+  const cells = ["H2O", "69.95 ± 0.03", "–20 °C"];
+  const ansi = Array.from(text, (sign) => (sign === "–" ? 0x96 : sign.charCodeAt(0)));
+
+  test.each<[string, number[], string, boolean]>([
+    ["UTF-8", [...bytes(text)], "UTF-8", false],
+    ["UTF-8 with its mark", [0xef, 0xbb, 0xbf, ...bytes(text)], "UTF-8", true],
+    ["UTF-16, low byte first, with its mark", [0xff, 0xfe, ...inUtf16(text)], "UTF-16LE", true],
+    ["UTF-16, high byte first, with its mark", [0xfe, 0xff, ...swapped(inUtf16(text))], "UTF-16BE", true],
+    ["UTF-16, low byte first", inUtf16(text), "UTF-16LE", false],
+    ["UTF-16, high byte first", swapped(inUtf16(text)), "UTF-16BE", false],
+    ["Windows-1252", ansi, "Windows-1252", false],
+  ])("%s is told from its bytes", (_what, list, encoding, byteOrderMark) => {
+    const sheet = decoded(Uint8Array.from(list));
+    expect(sheet.dialect).toMatchObject({ encoding, byteOrderMark });
+    expect(sheet.heads).toEqual(["formula", "S", "remark"]);
+    expect(sheet.rows).toEqual([{ number: 2, cells }]);
+  });
+
+  test("a guess says why it was made and shows what it can be judged by; a proof says nothing", () => {
+    expect(decoded(Uint8Array.from(ansi)).dialect.guessed).toEqual({
+      why: "row 2 is not valid UTF-8",
+      signs: [
+        { sign: "±", row: 2 },
+        { sign: "–", row: 2 },
+        { sign: "°", row: 2 },
+      ],
+    });
+    expect(decoded(text).dialect.guessed).toBeUndefined();
+  });
+
+  test("every byte from 80 to 9F is what the code page says, or refused", () => {
+    // The Unicode Consortium's CP1252 table, 80 to 9F, with a space where it defines nothing.
+    const table = "€ ‚ƒ„…†‡ˆ‰Š‹Œ Ž  ‘’“”•–—˜™š›œ žŸ";
+    for (const [index, sign] of Array.from(table).entries()) {
+      const list = Uint8Array.from([...bytes("formula,S\nH2O,"), 0x80 + index, 0x0a]);
+      if (sign === " ") expect(refusal(list)).toMatch(/stands for no character/);
+      else expect(decoded(list).rows[0]?.cells[1]).toBe(sign);
+    }
+  });
+
+  test("the encoding can be chosen against the guess", () => {
+    const latin = decodeSheet(bytes(text), "Windows-1252");
+    expect(latin).toMatchObject({ sheet: { rows: [{ cells: ["H2O", "69.95 Â± 0.03", "â€“20 Â°C"] }] } });
+    expect(decodeSheet(Uint8Array.from(ansi), "UTF-8")).toMatchObject({ outcome: "refused" });
+  });
+
+  test("a first row that names the delimiter is followed", () => {
+    const sheet = decoded("sep=;\nformula;remark;S\nH2O;a,b;69,95\n");
+    expect(sheet.dialect).toMatchObject({ delimiter: ";", decimalComma: true });
+    expect(sheet.headRow).toBe(2);
+    expect(sheet.rows.map((row) => row.number)).toEqual([1, 3]);
+  });
+
+  test("comments are no heads", () => {
+    const sheet = decoded("# formula,phase of old\nformula,phase,S\nH2O,l,69.95\n");
+    expect(sheet.headRow).toBe(2);
+  });
+});
+
 describe("delimiter and decimal sign", () => {
   test.each([
     ["commas and points", "formula,phase,S\nH2O,l,69.95\n", ",", false],
@@ -73,14 +139,26 @@ test("heads that are names of the language's own are only texts", () => {
 });
 
 describe("what is not a sheet is refused with a sentence", () => {
-  const utf16 = Uint8Array.from(Array.from("formula,S\nH2O,69.95", (c) => [c.charCodeAt(0), 0]).flat());
   test.each<[string, string | Uint8Array, RegExp]>([
     ["a zip archive", Uint8Array.from([0x50, 0x4b, 3, 4, 20, 0]), /zip archive.*CSV in UTF-8/],
     ["a picture", Uint8Array.from([0x89, 0x50, 0x4e, 0x47, 13, 10, 26, 10]), /picture/],
-    ["UTF-16 with its mark", Uint8Array.from([0xff, 0xfe, ...utf16]), /UTF-16/],
-    ["UTF-16 without its mark", utf16, /UTF-16/],
+    [
+      "UTF-16 cut off",
+      Uint8Array.from([0xff, 0xfe, ...inUtf16("formula,S\nH2O,69.95"), 0x31]),
+      /middle of a character/,
+    ],
+    ["half a character of UTF-16", Uint8Array.from([0xff, 0xfe, 0x00, 0xd8, 0x2c, 0x00]), /half of a character/],
+    ["a NUL in UTF-16", Uint8Array.from([0xff, 0xfe, ...inUtf16("formula,S\nH2O,6\0")]), /Row 2 holds a NUL/],
+    [
+      "the mark of UTF-8 before other bytes",
+      Uint8Array.from([0xef, 0xbb, 0xbf, ...bytes("a,b\n"), 0xb0]),
+      /Row 2 is not/,
+    ],
+    ["a delimiter that is not read", "sep=|\nformula|S\nH2O|69.95\n", /names a delimiter/],
     ["a NUL byte", "formula,S\nH2O,69\u0000.95\n", /Row 2 holds a NUL byte/],
-    ["invalid UTF-8", Uint8Array.from([...bytes("formula,S\nH2O,1\nX"), 0xb0, 0x43]), /Row 3 is not valid UTF-8/],
+    // Windows-1252 defines no character at 81, 8D, 8F, 90 and 9D (hexadecimal).
+    ["bytes of no encoding", Uint8Array.from([...bytes("formula,S\nH2O,1\nX"), 0xb0, 0x9d]), /row 3 holds the byte 9D/],
+    ["control characters", Uint8Array.from([...bytes("formula,S\nH2O,1"), 0x07, 0xb1]), /row 2 holds the byte 07/],
     ["nothing", "", /empty/],
     ["blank lines", "\n \n", /empty/],
     ["heads only", "formula,phase,S\n", /heads and no rows/],

@@ -1,4 +1,7 @@
+import iconv from "iconv-lite";
 import Papa from "papaparse";
+import { isComment } from "./cells.ts";
+import type { Encoding } from "./encodings.ts";
 import { readHead } from "./head.ts";
 
 /**
@@ -18,11 +21,16 @@ export type Delimiter = "," | ";" | "\t";
 
 /** How the bytes were written. */
 export interface Dialect {
-  readonly encoding: "UTF-8";
+  readonly encoding: Encoding;
   readonly byteOrderMark: boolean;
   readonly delimiter: Delimiter;
   /** Numbers are written 12,5 rather than 12.5. */
   readonly decimalComma: boolean;
+  /**
+   * Set where the bytes do not prove their encoding: why it was taken, and what the steward can see by whether it is the
+   * right one. Every sign beyond ASCII with the line where it stands first.
+   */
+  readonly guessed?: { readonly why: string; readonly signs: readonly { sign: string; row: number }[] };
 }
 
 export interface DecodedRow {
@@ -51,17 +59,25 @@ const SAVE_AS = "Save the sheet as CSV in UTF-8 and send that file.";
 /**
  * From the bytes of a file to rows of cells with their line numbers. What a file is, its bytes say, not its name.
  * Nothing is repaired here: cells keep their text to the letter (line ends inside a cell become a plain line feed).
+ *
+ * @param chosen the encoding a person chose; left out, it is told from the bytes
  */
-export function decodeSheet(bytes: Uint8Array): Decoding {
+export function decodeSheet(bytes: Uint8Array, chosen?: Encoding): Decoding {
   if (bytes.length > SHEET_LIMITS.bytes) return refused(tooManyBytes());
   const foreign = foreignContent(bytes);
   if (foreign) return refused(`This is ${foreign}, not a table in plain text. ${SAVE_AS}`);
-  const text = decodeUtf8(bytes);
+  const text = decodeText(bytes, chosen);
   if (text.outcome === "refused") return text;
   if (text.value.trim() === "")
     return refused("The file is empty. Send a sheet with a row of heads and rows below it.");
 
-  const delimiter = guessDelimiter(text.value);
+  const named = namedDelimiter(text.value);
+  if (named === null) {
+    return refused(
+      "The first row names a delimiter that is not read here. Separate the columns by commas, semicolons or tabs.",
+    );
+  }
+  const delimiter = named ?? guessDelimiter(text.value);
   if (delimiter === null) {
     return refused(
       "No row of this file is divided into columns. Separate the columns by commas, semicolons or tabs, with one row of heads.",
@@ -87,10 +103,11 @@ export function decodeSheet(bytes: Uint8Array): Decoding {
     outcome: "decoded",
     sheet: {
       dialect: {
-        encoding: "UTF-8",
+        encoding: text.encoding,
         byteOrderMark: text.byteOrderMark,
         delimiter,
         decimalComma: guessDecimalComma(rows, delimiter),
+        ...(text.why === null ? {} : { guessed: { why: text.why, signs: signsBeyondAscii(parsed.rows) } }),
       },
       heads,
       headRow: headRow.number,
@@ -127,64 +144,177 @@ function foreignContent(bytes: Uint8Array): string | null {
   return null;
 }
 
-type Decoded = { outcome: "decoded"; value: string; byteOrderMark: boolean } | { outcome: "refused"; sentence: string };
+type Decoded =
+  | {
+      outcome: "decoded";
+      /** Line ends are plain line feeds, the byte order mark is taken off. */
+      value: string;
+      encoding: Encoding;
+      byteOrderMark: boolean;
+      /** Why this encoding was taken, where the bytes do not prove it. */
+      why: string | null;
+    }
+  | { outcome: "refused"; sentence: string };
 
-function decodeUtf8(bytes: Uint8Array): Decoded {
-  const utf16 = (bytes[0] === 0xff && bytes[1] === 0xfe) || (bytes[0] === 0xfe && bytes[1] === 0xff);
-  if (utf16 || looksLikeUtf16(bytes)) {
-    return { outcome: "refused", sentence: `This file is written in UTF-16, and sheets are read in UTF-8. ${SAVE_AS}` };
+/** Byte order marks and what they prove. */
+const MARKS: readonly (readonly [mark: readonly number[], encoding: Encoding])[] = [
+  [[0xef, 0xbb, 0xbf], "UTF-8"],
+  [[0xff, 0xfe], "UTF-16LE"],
+  [[0xfe, 0xff], "UTF-16BE"],
+];
+
+/**
+ * The text of the bytes: in the encoding their mark names, else in UTF-16 where every second byte is zero, else in UTF-8
+ * if they are valid UTF-8, else in Windows-1252, which no byte order mark and no rule of form can prove.
+ */
+function decodeText(bytes: Uint8Array, chosen: Encoding | undefined): Decoded {
+  const marked = MARKS.find(([mark]) => mark.every((byte, index) => bytes[index] === byte));
+  const body = marked && (chosen === undefined || chosen === marked[1]) ? bytes.subarray(marked[0].length) : bytes;
+  const byteOrderMark = body !== bytes;
+  const encoding = chosen ?? marked?.[1] ?? guessUtf16(bytes);
+  const why = chosen
+    ? `chosen by hand`
+    : encoding && !marked
+      ? "every second byte is zero, as in no other encoding"
+      : null;
+  switch (encoding) {
+    case "UTF-16LE":
+    case "UTF-16BE":
+      return decodeUtf16(body, encoding, byteOrderMark, why);
+    case "Windows-1252":
+      return decodeWindows1252(body, "chosen by hand");
+    case "UTF-8":
+    case null:
+      break;
   }
-  const nul = bytes.indexOf(0);
-  if (nul !== -1) {
-    return {
-      outcome: "refused",
-      sentence: `Row ${lineOf(bytes, nul)} holds a NUL byte, which no text file does: this is not a table in plain text, or it was damaged on the way. ${SAVE_AS}`,
-    };
-  }
-  const byteOrderMark = bytes[0] === 0xef && bytes[1] === 0xbb && bytes[2] === 0xbf;
+  const nul = body.indexOf(0);
+  if (nul !== -1) return { outcome: "refused", sentence: nulSentence(lineOf(body, nul)) };
   try {
-    const value = new TextDecoder("utf-8", { fatal: true }).decode(bytes);
-    return { outcome: "decoded", value: value.replace(/\r\n?/g, "\n"), byteOrderMark };
+    const value = new TextDecoder("utf-8", { fatal: true, ignoreBOM: true }).decode(body);
+    return { outcome: "decoded", value: plainLineEnds(value), encoding: "UTF-8", byteOrderMark, why };
   } catch {
-    return {
-      outcome: "refused",
-      sentence: `Row ${firstBadLine(bytes)} is not valid UTF-8 (the file may be in an older encoding such as Windows-1252). ${SAVE_AS}`,
-    };
+    const row = firstBadLine(body);
+    if (chosen || byteOrderMark) {
+      const told = chosen ? "" : ", although the file begins with the mark of UTF-8: it was damaged on the way";
+      return { outcome: "refused", sentence: `Row ${row} is not valid UTF-8${told}. ${SAVE_AS}` };
+    }
+    return decodeWindows1252(body, `row ${row} is not valid UTF-8`);
   }
 }
 
-/** Text in the Latin alphabet written as UTF-16 without its mark has a zero in nearly every second byte. */
-function looksLikeUtf16(bytes: Uint8Array): boolean {
-  const sample = bytes.subarray(0, 400);
-  if (sample.length < 8) return false;
-  const zeros = [0, 0];
-  for (const [index, byte] of sample.entries()) {
-    if (byte === 0) zeros[index % 2] = (zeros[index % 2] ?? 0) + 1;
+const plainLineEnds = (text: string): string => text.replace(/\r\n?/g, "\n");
+
+const nulSentence = (row: number): string =>
+  `Row ${row} holds a NUL byte, which no text file does: this is not a table in plain text, or it was damaged on the way. ${SAVE_AS}`;
+
+function decodeUtf16(
+  bytes: Uint8Array,
+  encoding: "UTF-16LE" | "UTF-16BE",
+  byteOrderMark: boolean,
+  why: string | null,
+): Decoded {
+  if (bytes.length % 2 !== 0) {
+    return {
+      outcome: "refused",
+      sentence: `The file ends in the middle of a character of ${encoding}: it was cut off on the way. Send it again.`,
+    };
   }
-  return Math.max(...zeros) > 0.35 * sample.length && Math.min(...zeros) < 0.05 * sample.length;
+  let value: string;
+  try {
+    value = new TextDecoder(encoding, { fatal: true, ignoreBOM: true }).decode(bytes);
+  } catch {
+    return {
+      outcome: "refused",
+      sentence: `These bytes are not valid ${encoding}: half of a character stands alone. ${SAVE_AS}`,
+    };
+  }
+  const nul = value.indexOf("\0");
+  if (nul !== -1) {
+    return { outcome: "refused", sentence: nulSentence(plainLineEnds(value.slice(0, nul)).split("\n").length) };
+  }
+  return { outcome: "decoded", value: plainLineEnds(value), encoding, byteOrderMark, why };
+}
+
+/** The five bytes that Windows-1252 does not define; what stands there cannot be said. */
+const UNDEFINED_IN_1252: ReadonlySet<number> = new Set([0x81, 0x8d, 0x8f, 0x90, 0x9d]);
+
+/**
+ * The package decodes, because `TextDecoder` of Node.js 20 takes windows-1252 for ISO 8859-1 and makes control characters
+ * of the dashes and quotation marks at 0x80 to 0x9F. Bytes without a meaning are refused and not made up.
+ */
+function decodeWindows1252(bytes: Uint8Array, why: string): Decoded {
+  const bad = bytes.findIndex((byte) => UNDEFINED_IN_1252.has(byte) || isControl(byte));
+  if (bad !== -1) {
+    const byte = (bytes[bad] ?? 0).toString(16).toUpperCase().padStart(2, "0");
+    return {
+      outcome: "refused",
+      sentence: `The file is neither UTF-8 nor Windows-1252: row ${lineOf(bytes, bad)} holds the byte ${byte} (hexadecimal), which stands for no character. ${SAVE_AS}`,
+    };
+  }
+  const value = iconv.decode(Buffer.from(bytes), "windows-1252", { stripBOM: false });
+  return { outcome: "decoded", value: plainLineEnds(value), encoding: "Windows-1252", byteOrderMark: false, why };
+}
+
+/** Control characters that no text holds; tab, line feed, form feed and carriage return do occur. */
+function isControl(byte: number): boolean {
+  return byte < 0x20 && byte !== 0x09 && byte !== 0x0a && byte !== 0x0c && byte !== 0x0d;
+}
+
+/** Text in the Latin alphabet written as UTF-16 without its mark has a zero in nearly every second byte. */
+function guessUtf16(bytes: Uint8Array): "UTF-16LE" | "UTF-16BE" | null {
+  const sample = bytes.subarray(0, 400);
+  if (sample.length < 8) return null;
+  const zeros: [even: number, odd: number] = [0, 0];
+  for (const [index, byte] of sample.entries()) if (byte === 0) zeros[index % 2 === 0 ? 0 : 1] += 1;
+  const telling = Math.max(...zeros) > 0.35 * sample.length && Math.min(...zeros) < 0.05 * sample.length;
+  if (!telling) return null;
+  return zeros[0] > zeros[1] ? "UTF-16BE" : "UTF-16LE";
+}
+
+/** As many different signs are shown; a sheet in the Latin alphabet has fewer. */
+const SIGNS_SHOWN = 24;
+
+/** Every sign beyond ASCII with the row where it stands first: by these a person sees whether the encoding is right. */
+function signsBeyondAscii(rows: readonly DecodedRow[]): { sign: string; row: number }[] {
+  const seen = new Map<string, number>();
+  for (const row of rows) {
+    for (const cell of row.cells) {
+      for (const sign of cell.match(/[^\0-\x7f]/gu) ?? []) if (!seen.has(sign)) seen.set(sign, row.number);
+    }
+    if (seen.size >= SIGNS_SHOWN) break;
+  }
+  return [...seen].slice(0, SIGNS_SHOWN).map(([sign, row]) => ({ sign, row }));
+}
+
+/** The delimiter that a first line `sep=;` names; undefined when there is no such line, null when it names another. */
+function namedDelimiter(text: string): Delimiter | null | undefined {
+  const named = /^"?sep=(.?)"?[\t ]*(?:\n|$)/i.exec(text);
+  if (!named) return undefined;
+  return ([",", ";", "\t"] as const).find((one) => one === named[1]) ?? null;
 }
 
 function lineOf(bytes: Uint8Array, position: number): number {
   let line = 1;
-  for (let index = 0; index < position; index += 1) if (bytes[index] === 0x0a) line += 1;
+  for (let index = 0; index < position; index += 1) {
+    if (bytes[index] === 0x0a || (bytes[index] === 0x0d && bytes[index + 1] !== 0x0a)) line += 1;
+  }
   return line;
 }
 
 /** A line feed is never part of a longer UTF-8 sequence, so lines can be tried one by one. */
 function firstBadLine(bytes: Uint8Array): number {
   const decoder = new TextDecoder("utf-8", { fatal: true });
-  let line = 1;
-  for (let start = 0; start < bytes.length; line += 1) {
-    const feed = bytes.indexOf(0x0a, start);
-    const end = feed === -1 ? bytes.length : feed;
+  for (let start = 0; start < bytes.length;) {
+    const feed = bytes.subarray(start).findIndex((byte) => byte === 0x0a || byte === 0x0d);
+    const end = feed === -1 ? bytes.length : start + feed;
     try {
       decoder.decode(bytes.subarray(start, end));
     } catch {
-      return line;
+      return lineOf(bytes, start);
     }
     start = end + 1;
   }
-  return line;
+  return lineOf(bytes, bytes.length);
 }
 
 /**
@@ -266,7 +396,7 @@ function findHeads(rows: readonly DecodedRow[]): number {
   let wordsOnly = -1;
   for (const [index, row] of rows.slice(0, TITLES_AT_MOST).entries()) {
     const filled = row.cells.filter((cell) => cell.trim() !== "");
-    if (filled.length < 2) continue;
+    if (filled.length < 2 || isComment(row.cells)) continue;
     if (filled.some((cell) => /^[-−+±]?\s*\d+(?:[.,]\d+)?$/.test(cell.trim()))) break;
     if (filled.filter((cell) => readHead(cell).means !== null).length >= 2) return index;
     if (wordsOnly === -1) wordsOnly = index;

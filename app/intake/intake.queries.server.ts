@@ -232,7 +232,7 @@ function rows(sheetId: number, db: Database) {
     .orderBy("r.number");
 }
 
-/** Writes what became of rows; a row read before is read anew, its cells stay as uploaded. */
+/** Writes what became of rows; a row read before is read anew. Its cells are those of the bytes, never repaired ones. */
 export async function upsertRows(sheetId: number, read: readonly StoredRow[], trx: Database): Promise<void> {
   for (let start = 0; start < read.length; start += ROW_BATCH) {
     await trx
@@ -249,6 +249,7 @@ export async function upsertRows(sheetId: number, read: readonly StoredRow[], tr
       )
       .onConflict((oc) =>
         oc.columns(["sheet_id", "number"]).doUpdateSet((eb) => ({
+          cells: eb.ref("excluded.cells"),
           outcome: eb.ref("excluded.outcome"),
           problems: eb.ref("excluded.problems"),
           reading: eb.ref("excluded.reading"),

@@ -24,7 +24,7 @@ import { frameOf, readAndMatch, repairsByRow, settleStored } from "./rereadRows.
 export async function readSheet(sheetId: number): Promise<void> {
   const sheet = await findSheet(sheetId, database());
   if (sheet?.state !== "reading") return;
-  const decoding = decodeSheet(await findSheetBytes(sheetId, database()));
+  const decoding = decodeSheet(await findSheetBytes(sheetId, database()), sheet.dialect?.encoding);
   if (decoding.outcome === "refused") {
     await fail(sheetId, decoding.sentence);
     return;

@@ -64,27 +64,32 @@ export async function receiveSheet(acting: Acting, upload: UploadedSheet): Promi
       objectId: id,
       detail: { name, bytes: upload.bytes.length, sha256: sha256.toString("hex") },
     });
-    const guess = await rememberedOrGuessed(sheet, trx);
-    await updateSheetPlanned(
-      id,
-      {
-        dialect: sheet.dialect,
-        heads: sheet.heads,
-        plan: {
-          columns: guess.plan,
-          notices: guess.notices,
-          headRow: sheet.headRow,
-          samples: firstValues(sheet),
-          bareSolid: hasBareSolid(sheet),
-        },
-        settings: guess.settings,
-        rowsTotal: sheet.rows.length,
-      },
-      trx,
-    );
+    await planSheet(id, sheet, trx);
     record({ act: "sheet.planned", objectId: id, detail: { rows: sheet.rows.length, columns: sheet.heads.length } });
     return id;
   });
+}
+
+/** Writes down how a sheet was decoded and what its columns seem to hold; the steward is to confirm it. */
+export async function planSheet(id: number, sheet: DecodedSheet, trx: Database): Promise<void> {
+  const guess = await rememberedOrGuessed(sheet, trx);
+  await updateSheetPlanned(
+    id,
+    {
+      dialect: sheet.dialect,
+      heads: sheet.heads,
+      plan: {
+        columns: guess.plan,
+        notices: guess.notices,
+        headRow: sheet.headRow,
+        samples: firstValues(sheet),
+        bareSolid: hasBareSolid(sheet),
+      },
+      settings: guess.settings,
+      rowsTotal: sheet.rows.length,
+    },
+    trx,
+  );
 }
 
 /** SHA-256 of the heads: what a remembered plan is found by. */

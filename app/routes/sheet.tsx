@@ -17,6 +17,7 @@ import { Section } from "#app/ui/Section.tsx";
 import { Time } from "#app/ui/Time.tsx";
 import type { Route } from "./+types/sheet";
 import { actOnSheet } from "./sheet/act.server.ts";
+import { EncodingChoice } from "./sheet/EncodingChoice.tsx";
 import { PlanForm, PlanShown } from "./sheet/Plan.tsx";
 import { Reading } from "./sheet/Reading.tsx";
 import { Rows } from "./sheet/Rows.tsx";
@@ -80,7 +81,10 @@ export default function SheetPageView({ loaderData: page, actionData: failed }: 
         </p>
       )}
       {sheet.state === "planned" && page.mayWork ? (
-        <PlanForm page={page} failed={failed?.intent === "confirm" ? failed : undefined} />
+        <>
+          <EncodingChoice page={page} />
+          <PlanForm page={page} failed={failed?.intent === "confirm" ? failed : undefined} />
+        </>
       ) : (
         <Section head="Columns">
           <PlanShown page={page} />

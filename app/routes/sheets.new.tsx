@@ -40,7 +40,10 @@ export default function NewSheetPage({ actionData }: Route.ComponentProps) {
       <UploadForm wrong={actionData?.sentence} />
       <Section head="What can be read">
         <ul className="list-disc pl-5 max-w-[68ch]">
-          <li>Text in UTF-8, columns separated by commas, semicolons or tabs, one row of heads.</li>
+          <li>
+            Text in UTF-8, UTF-16 or Windows-1252, columns separated by commas, semicolons or tabs, one row of heads;
+            titles may stand above it, a row of units below it, comments behind #.
+          </li>
           <li>One species a row with its values side by side, or one value a row.</li>
           <li>
             Numbers with a point or a decimal comma, with an uncertainty in a column of its own, in brackets or after ±.

@@ -32,7 +32,11 @@ export function UploadForm({ wrong }: { wrong?: string | undefined }) {
           if (event.dataTransfer.files.length === 1) input.form?.requestSubmit();
         }}
       >
-        <FieldFrame field={field} label="Sheet" hint="Choose the file, or drop it here. CSV in UTF-8, at most 10 MB.">
+        <FieldFrame
+          field={field}
+          label="Sheet"
+          hint="Choose the file, or drop it here. A table in plain text (CSV), at most 10 MB."
+        >
           <input
             ref={picker}
             id={field.id}

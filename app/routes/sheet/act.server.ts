@@ -1,5 +1,6 @@
 import { BadRequest, DomainError, Invalid, NotFound } from "#app/http/errors.ts";
 import { buildRevision } from "#app/intake/buildRevision.server.ts";
+import { chooseEncoding } from "#app/intake/chooseEncoding.server.ts";
 import { confirmPlan, reopenPlan, stopReading } from "#app/intake/confirmPlan.server.ts";
 import { readPlanForm } from "#app/intake/planForm.ts";
 import { leaveRowsOut, repairCell } from "#app/intake/repairCell.server.ts";
@@ -69,6 +70,9 @@ async function perform(acting: Acting, sheetId: number, intent: string, form: Fo
       await confirmPlan(acting, sheetId, plan);
       return page;
     }
+    case "encoding":
+      await chooseEncoding(acting, sheetId, textOf(form, "encoding"));
+      return page;
     case "stop":
       await stopReading(acting, sheetId);
       return page;
