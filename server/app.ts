@@ -32,6 +32,24 @@ function loggedPath(path: string): string {
   return path.replace(/^\/(reset|invitation)\/[^/.]+/, "/$1/(left out)");
 }
 
+/** What a client may go on sending after it was answered, in bytes. */
+const MOST_UNREAD = 32 * 1024 * 1024;
+
+/**
+ * A request may be answered before its body was read: a wrong key, a body that is too large. What is left of it is let run
+ * out unread, because it stands in the way of the next request on the same connection; beyond the limit the connection
+ * ends.
+ */
+function letRunOut(request: Request): void {
+  if (request.complete || request.destroyed) return;
+  let left = MOST_UNREAD;
+  request.removeAllListeners("data").on("data", (portion: Buffer) => {
+    left -= portion.length;
+    if (left < 0) request.destroy();
+  });
+  request.resume();
+}
+
 /** First step: gives the request its id, the answer its headers, and writes one line in the log when it is over. */
 const receive: RequestHandler = (request, response, next) => {
   const begun = performance.now();
@@ -51,6 +69,7 @@ const receive: RequestHandler = (request, response, next) => {
     requestId: known.id,
     nonce: isPage ? known.nonce : null,
   });
+  response.on("finish", () => letRunOut(request));
   const { method, path: requested } = request;
   // A balancer asks every few seconds; that is not worth a line.
   if (isHealth) return next();
