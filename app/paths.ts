@@ -47,6 +47,9 @@ export const paths = {
   // Review
   revisions: () => "/revisions",
   revision: (revision: string | number) => `/revisions/${segment(revision)}`,
+  revisionLine: (revision: string | number, line: string) => `/revisions/${segment(revision)}/lines/${segment(line)}`,
+  propose: (query?: { species?: string; what?: string; property?: string; revision?: number | null }) =>
+    `/propose${queryString(query)}`,
   publish: () => "/publish",
 
   // Where the numbers come from, and what they mean

@@ -30,6 +30,8 @@ export default [
   // Review
   route("revisions", "routes/revisions.tsx"),
   route("revisions/:revision", "routes/revision.tsx"),
+  route("revisions/:revision/lines/:line", "routes/revision.line.tsx"),
+  route("propose", "routes/propose.tsx"),
   route("publish", "routes/publish.tsx"),
   route("record", "routes/record.tsx"),
 

@@ -70,6 +70,8 @@ export const routePermissions: Readonly<Record<string, RouteDoors>> = {
   // Review
   "/revisions": reads("revision:read"),
   "/revisions/:revision": revisionForms,
+  "/revisions/:revision/lines/:line": both("revision:write"),
+  "/propose": both("revision:write"),
   "/resources/revisions/:revision/act": revisionForms,
   "/publish": both("edition:publish"),
   "/record": reads("record:read"),

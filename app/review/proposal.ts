@@ -2,6 +2,7 @@ import type { FieldError } from "#app/http/errors.ts";
 import { readIdentity } from "#app/species/identityForm.ts";
 import { readCas } from "#app/thermo/cas.ts";
 import { digits } from "#app/thermo/digits.ts";
+import { showDigits } from "#app/thermo/notation.ts";
 import { type Property, PROPERTIES, propertyInfo } from "#app/thermo/property.ts";
 import { formatKey, isSolute, type SpeciesIdentity } from "#app/thermo/speciesKey.ts";
 import { printedAtBar } from "#app/thermo/standardState.ts";
@@ -136,6 +137,23 @@ export function readValues(typed: Typed, identity: SpeciesIdentity, trouble: For
     });
   }
   return values;
+}
+
+/** How a value is filled into the form that writes it anew: in the table's unit, as the line says it now. */
+export function typedValue(content: ValueContent, property: Property): Record<string, string> {
+  const { uncertainty } = content;
+  return {
+    [valueField(property, "value")]: showDigits(content.digits),
+    [valueField(property, "unit")]: propertyInfo[property].unit,
+    [valueField(property, "uncertainty")]: uncertainty && uncertainty.kind !== "exact" ? uncertainty.digits : "",
+    kind: uncertainty?.kind ?? "none",
+    k: uncertainty?.coverageFactor ? String(uncertainty.coverageFactor) : "",
+    pressure: "100000",
+    basis: content.basis ?? "",
+    method: content.method ?? "",
+    remark: content.remark ?? "",
+    source: content.sourceId,
+  };
 }
 
 // --- What a species is called ---------------------------------------------------

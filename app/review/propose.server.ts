@@ -162,7 +162,10 @@ async function nameOf(line: ProposedLine, lines: readonly ProposedLine[], trx: A
 }
 
 /** A key is unique in an edition: it is refused while another species holds it for sure. */
-async function refuseTakenKeys(lines: readonly ProposedLine[], trx: ActScope["trx"]): Promise<void> {
+export async function refuseTakenKeys(
+  lines: readonly Pick<ProposedLine, "speciesId" | "content">[],
+  trx: ActScope["trx"],
+): Promise<void> {
   const wanted = new Map<string, string>();
   for (const line of lines) {
     if (line.content.kind !== "detail" || line.speciesId === null) continue;

@@ -42,7 +42,8 @@ export type ProposeOutcome =
       questions: FormQuestions | null;
     };
 
-function held(trouble: FormTrouble, questions: FormQuestions | null = null): ProposeOutcome {
+/** A form that is held, with everything that keeps it. */
+export function held(trouble: FormTrouble, questions: FormQuestions | null = null): ProposeOutcome {
   return { ok: false, errors: trouble.errors, readings: trouble.readings, questions };
 }
 
@@ -246,7 +247,7 @@ export async function proposeNames(acting: Acting, key: string, typed: Typed): P
 }
 
 /** Asks about names and numbers that another species carries; only those that the proposal changes. */
-async function asksAboutNames(
+export async function asksAboutNames(
   typed: Typed,
   detail: DetailContent,
   identity: SpeciesIdentity,

@@ -7,7 +7,7 @@ import { revisionSentLetter } from "#app/notify/reviewLetters.ts";
 import { demand } from "#app/people/permissions.ts";
 import { findPeopleWithRole } from "#app/people/people.queries.server.ts";
 import type { Acting } from "#app/people/person.ts";
-import type { LineContent } from "./content.ts";
+import { contentHash, type LineContent } from "./content.ts";
 import { examineRevision } from "./examine.server.ts";
 import {
   findLine,
@@ -81,43 +81,52 @@ async function findOwnLine(revisionId: number, lineId: string, trx: ActScope["tr
  * revision is examined again. `expectedVersion` is the version the person saw.
  * @throws Refused when the line was edited in the meantime; Invalid when nothing changes.
  */
-export async function rewriteLine(
-  acting: Acting,
-  change: { revisionId: number; lineId: string; expectedVersion: number; content: LineContent; reason: string },
-): Promise<void> {
+export async function rewriteLine(acting: Acting, change: LineChange): Promise<void> {
+  await act(acting, (scope) => writeLine(acting, change, scope));
+}
+
+/** What a line shall say, and which version of it the person saw. */
+export interface LineChange {
+  revisionId: number;
+  lineId: string;
+  expectedVersion: number;
+  content: LineContent;
+  reason: string;
+}
+
+/** The same inside a caller's act. */
+export async function writeLine(acting: Acting, change: LineChange, { trx, record }: ActScope): Promise<void> {
   demandReason(change.reason, "Say why the line is changed.");
-  await act(acting, async ({ trx, record }) => {
-    await findWritable(acting, change.revisionId, trx);
-    const line = await findOwnLine(change.revisionId, change.lineId, trx);
-    if (line.version !== change.expectedVersion) {
-      throw new Refused("This line was edited in the meantime. Look at what it says now, then change it.");
-    }
-    if (change.content.kind !== line.kind) throw new Invalid("A line keeps its kind; take it out and write another.");
-    if (JSON.stringify(change.content) === JSON.stringify(line.content)) {
-      throw new Invalid("Nothing would change: the line says this already.");
-    }
-    await insertLineVersion(
-      {
-        id: line.id,
-        version: line.version + 1,
-        content: change.content,
-        madeBy: acting.person.id,
-        reason: change.reason,
-      },
-      trx,
-    );
-    await examineRevision(change.revisionId, "edit", trx);
-    record({
-      act: "revision.line-written",
-      objectId: change.revisionId,
-      detail: {
-        line: line.id,
-        version: line.version + 1,
-        before: line.content,
-        after: change.content,
-        reason: change.reason,
-      },
-    });
+  await findWritable(acting, change.revisionId, trx);
+  const line = await findOwnLine(change.revisionId, change.lineId, trx);
+  if (line.version !== change.expectedVersion) {
+    throw new Refused("This line was edited in the meantime. Look at what it says now, then change it.");
+  }
+  if (change.content.kind !== line.kind) throw new Invalid("A line keeps its kind; take it out and write another.");
+  if (contentHash(change.content).equals(line.contentHash)) {
+    throw new Invalid("Nothing would change: the line says this already.");
+  }
+  await insertLineVersion(
+    {
+      id: line.id,
+      version: line.version + 1,
+      content: change.content,
+      madeBy: acting.person.id,
+      reason: change.reason,
+    },
+    trx,
+  );
+  await examineRevision(change.revisionId, "edit", trx);
+  record({
+    act: "revision.line-written",
+    objectId: change.revisionId,
+    detail: {
+      line: line.id,
+      version: line.version + 1,
+      before: line.content,
+      after: change.content,
+      reason: change.reason,
+    },
   });
 }
 

@@ -33,6 +33,8 @@ const samples: Record<keyof typeof paths, string> = {
   sheetFindings: paths.sheetFindings(21),
   revisions: paths.revisions(),
   revision: paths.revision(14),
+  revisionLine: paths.revisionLine(14, "417"),
+  propose: paths.propose({ species: "Na+(aq)", what: "names" }),
   publish: paths.publish(),
   sources: paths.sources(),
   newSource: paths.newSource(),

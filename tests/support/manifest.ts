@@ -20,6 +20,8 @@ const samples: Readonly<Record<string, string>> = {
   b: "999999",
   other: "999998",
   key: "H2O(l)",
+  line: "999999",
+  person: "00000000-0000-4000-8000-000000000000",
   revision: "999999",
   sheet: "999999",
   slug: "not-found",
