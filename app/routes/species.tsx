@@ -4,6 +4,7 @@ import { findSpeciesPage, type SpeciesPage } from "#app/editions/speciesPage.ser
 import { resolveSpecies } from "#app/editions/resolve.server.ts";
 import { forPage } from "#app/http/respond.server.ts";
 import { paths } from "#app/paths.ts";
+import { permissions } from "#app/people/permissions.ts";
 import { requireActing } from "#app/people/visitor.server.ts";
 import { propertyInfo } from "#app/thermo/property.ts";
 import { Caution } from "#app/ui/Caution.tsx";
@@ -20,9 +21,10 @@ import { SpeciesName } from "#app/ui/SpeciesName.tsx";
 import { Symbol } from "#app/ui/Symbol.tsx";
 import { Table } from "#app/ui/Table.tsx";
 import { UnitText } from "#app/ui/UnitText.tsx";
+import { useRootData } from "#app/ui/useRootData.ts";
 import { Figures } from "#app/ui/ValueCell.tsx";
 import type { Route } from "./+types/species";
-import { useEditionFrame, WithdrawnNotice } from "./edition/Frame.tsx";
+import { useEditionFrame, useNewest, WithdrawnNotice } from "./edition/Frame.tsx";
 import { keptByAddress } from "./edition/kept.ts";
 import { pinnedEdition } from "./edition/pin.server.ts";
 
@@ -62,6 +64,7 @@ export default function SpeciesRoute({ loaderData: page }: Route.ComponentProps)
           <Notice key={source.sourceId} word="source" text={`${source.short}: ${source.notice ?? ""}`} />
         ))}
       <Values page={page} />
+      <ProposeLink page={page} />
       {also.length > 0 && <Also page={page} />}
       <Columns>
         <Closure page={page} />
@@ -225,6 +228,19 @@ function Asides({ value: { given, basis, method, remark } }: { value: SpeciesPag
     <span className="fine block font-normal">
       <Prose text={asides.join("; ")} />
     </span>
+  );
+}
+
+/** The way to a change, for those who may propose one. It is always proposed against the newest edition. */
+function ProposeLink({ page: { frame, species } }: { page: SpeciesPage }) {
+  const { visitor } = useRootData();
+  const newest = useNewest(frame);
+  const writers: readonly string[] = permissions["revision:write"];
+  if (frame.number !== newest || !visitor?.roles.some((role) => writers.includes(role))) return null;
+  return (
+    <p className="actions">
+      <Link to={paths.propose({ species: species.key })}>Propose a change</Link>
+    </p>
   );
 }
 

@@ -347,6 +347,9 @@ function More({ line, page, anchor }: { line: LineView; page: RevisionPage; anch
             Comment
           </OpenLink>
         )}
+        {line.mayEdit && (
+          <Link to={paths.revisionLine(page.revision.id, line.id)}>Change source, method or remark</Link>
+        )}
       </p>
     </div>
   );

@@ -1,4 +1,5 @@
 import { Fragment } from "react";
+import { Link } from "react-router";
 import { paths } from "#app/paths.ts";
 import type { LineGroup, LineView, RevisionPage, TextChange } from "#app/review/revisionPage.ts";
 import { propertyInfo } from "#app/thermo/property.ts";
@@ -328,6 +329,11 @@ function LineActions({ line, page }: { line: LineView; page: RevisionPage }) {
         <OpenLink form={formKey("rewrite", line.id)} anchor={anchor}>
           Change<span className="said"> {line.about}</span>
         </OpenLink>
+      )}
+      {line.mayTakeOut && !line.mayEdit && (
+        <Link to={paths.revisionLine(page.revision.id, line.id)}>
+          Change<span className="said"> {line.about}</span>
+        </Link>
       )}
       {line.mayTakeOut && (
         <OpenLink form={formKey("take-out", line.id)} anchor={anchor}>
