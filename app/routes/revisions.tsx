@@ -131,6 +131,11 @@ export default function RevisionsPage({ loaderData: { lists, may, waiting } }: R
           <List name={name} head={head} items={items} />
         </Section>
       ))}
+      {may.write && (
+        <p className="actions mt-8">
+          <Link to={paths.propose()}>Propose a species that the table does not have</Link>
+        </p>
+      )}
       {may.publish && waiting === 0 && lists.length > 0 && (
         <p className="fine mt-8">Nothing waits for edition {(currentEdition ?? 0) + 1} yet.</p>
       )}
