@@ -6,6 +6,10 @@ export const acts = {
   "person.made": "person",
   "person.invited": "person",
   "person.invitation-taken": "person",
+  "person.invitation-withdrawn": "person",
+  "person.renamed": "person",
+  "person.address-asked": "person",
+  "person.address-changed": "person",
   "person.roles-changed": "person",
   "person.switched-off": "person",
   "person.switched-on": "person",
@@ -16,6 +20,7 @@ export const acts = {
   "person.signed-out": "person",
   "person.sessions-ended": "person",
   "key.made": "key",
+  "key.first-used": "key",
   "key.withdrawn": "key",
   "sheet.received": "sheet",
   "sheet.planned": "sheet",
@@ -39,6 +44,7 @@ export const acts = {
   "revision.decided": "revision",
   "revision.withdrawn": "revision",
   "edition.published": "edition",
+  "record.exported": "record",
 } as const;
 
 export type Act = keyof typeof acts;

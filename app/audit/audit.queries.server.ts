@@ -22,12 +22,7 @@ const CHAIN_LOCK = 7270918;
 export async function insertEntries(entries: readonly NewEntry[], trx: Database): Promise<void> {
   if (entries.length === 0) return;
   await sql`select pg_advisory_xact_lock(${CHAIN_LOCK})`.execute(trx);
-  const last = await trx
-    .selectFrom("audit_entry")
-    .select(["number", "hash"])
-    .orderBy("number", "desc")
-    .limit(1)
-    .executeTakeFirst();
+  const last = await findRecordHead(trx);
   const now = await sql<{ at: Date }>`select date_trunc('milliseconds', clock_timestamp()) as at`.execute(trx);
   const at = now.rows[0]?.at ?? new Date(0);
   let number = Number(last?.number ?? 0);
@@ -72,8 +67,8 @@ export interface RecordFilter {
   act?: string | undefined;
   objectKind?: string | undefined;
   objectId?: string | undefined;
-  /** Part of the actor's name or address. */
-  person?: string | undefined;
+  /** The id of who acted; null for the system itself and the command line. */
+  actor?: string | null | undefined;
   /** From the beginning of this day on, UTC ("2026-03-12"). */
   from?: string | undefined;
   /** Up to the end of this day, UTC. */
@@ -82,36 +77,91 @@ export interface RecordFilter {
   before?: string | undefined;
 }
 
-/** Entries with the names of who acted, newest first. */
-export function findRecord(filter: RecordFilter, limit: number, db: Database) {
-  let query = db
+function filtered(filter: RecordFilter, db: Database) {
+  const { act, objectKind, objectId, actor, from, to, before } = filter;
+  return db
     .selectFrom("audit_entry as e")
     .leftJoin("person as p", "p.id", "e.actor")
     .leftJoin("api_key as k", "k.id", "e.api_key_id")
+    .$if(act !== undefined, (query) => query.where("e.act", "=", act!))
+    .$if(objectKind !== undefined, (query) => query.where("e.object_kind", "=", objectKind!))
+    .$if(objectId !== undefined, (query) => query.where("e.object_id", "=", objectId!))
+    .$if(actor === null, (query) => query.where("e.actor", "is", null))
+    .$if(typeof actor === "string", (query) => query.where("e.actor", "=", actor!))
+    .$if(from !== undefined, (query) => query.where("e.at", ">=", sql<Date>`${from}::date at time zone 'UTC'`))
+    .$if(to !== undefined, (query) => query.where("e.at", "<", sql<Date>`(${to}::date + 1) at time zone 'UTC'`))
+    .$if(before !== undefined, (query) => query.where("e.number", "<", before!));
+}
+
+/** Entries with the names of who acted and of whom they acted on, newest first. */
+export function findRecord(filter: RecordFilter, limit: number, db: Database) {
+  return filtered(filter, db)
     .select((eb) => [
       "e.number",
       "e.at",
+      "e.actor",
       "e.act",
       "e.object_kind as objectKind",
       "e.object_id as objectId",
       "e.request_id as requestId",
       "p.name as person",
-      "p.email",
       "k.name as keyName",
       eb.ref("e.detail").$castTo<Record<string, unknown>>().as("detail"),
       eb.fn<string>("encode", ["e.hash", sql.lit("hex")]).as("hash"),
-    ]);
-  const { act, objectKind, objectId, person, from, to, before } = filter;
-  if (act) query = query.where("e.act", "=", act);
-  if (objectKind) query = query.where("e.object_kind", "=", objectKind);
-  if (objectId) query = query.where("e.object_id", "=", objectId);
-  if (person) {
-    // The text is looked for as it is: % and _ stand for themselves.
-    const part = `%${person.replace(/[\\%_]/g, "\\$&")}%`;
-    query = query.where((eb) => eb.or([eb("p.name", "ilike", part), eb("p.email", "ilike", part)]));
-  }
-  if (from) query = query.where("e.at", ">=", sql<Date>`${from}::date at time zone 'UTC'`);
-  if (to) query = query.where("e.at", "<", sql<Date>`(${to}::date + 1) at time zone 'UTC'`);
-  if (before) query = query.where("e.number", "<", before);
-  return query.orderBy("e.number", "desc").limit(limit).execute();
+      eb.fn<string>("encode", ["e.previous_hash", sql.lit("hex")]).as("previousHash"),
+      eb
+        .case()
+        .when("e.object_kind", "=", "person")
+        .then(
+          eb
+            .selectFrom("person as o")
+            .select("o.name")
+            .where(sql<string>`o.id::text`, "=", eb.ref("e.object_id")),
+        )
+        .when("e.object_kind", "=", "key")
+        .then(eb.selectFrom("api_key as o").select("o.name").whereRef("o.id", "=", "e.object_id"))
+        .end()
+        .as("objectName"),
+    ])
+    .orderBy("e.number", "desc")
+    .limit(limit)
+    .execute();
+}
+
+/** The newest entry's number and hash; undefined while the record is empty. */
+export function findRecordHead(db: Database): Promise<{ number: string; hash: Buffer } | undefined> {
+  return db.selectFrom("audit_entry").select(["number", "hash"]).orderBy("number", "desc").limit(1).executeTakeFirst();
+}
+
+/** How many entries fit. */
+export async function countRecord(filter: RecordFilter, db: Database): Promise<number> {
+  const { count } = await filtered(filter, db)
+    .select(({ fn }) => fn.countAll<string>().as("count"))
+    .executeTakeFirstOrThrow();
+  return Number(count);
+}
+
+/** Whole entries that fit, with the names of who acted, oldest first, after a number. */
+export function findRecordFrom(filter: RecordFilter, after: number, limit: number, db: Database) {
+  return filtered(filter, db)
+    .selectAll("e")
+    .select("p.name as person")
+    .where("e.number", ">", String(after))
+    .orderBy("e.number")
+    .limit(limit)
+    .execute();
+}
+
+/** Everybody who has an entry of their own doing, by name. */
+export function findActors(db: Database): Promise<{ id: string; name: string }[]> {
+  return db
+    .selectFrom("person")
+    .where(({ exists, selectFrom }) =>
+      exists(selectFrom("audit_entry").select("number").whereRef("audit_entry.actor", "=", "person.id")),
+    )
+    .select(["id", "name"])
+    .orderBy("name")
+    .orderBy("email")
+    .limit(1000)
+    .execute();
 }

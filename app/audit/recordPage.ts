@@ -18,6 +18,9 @@ export interface ReadRecordFilter {
   wrong: Partial<Record<(typeof RECORD_FIELDS)[number], string>>;
 }
 
+/** Stands for the service itself and the command line, where a person's id would stand. */
+export const SYSTEM = "system";
+const PERSON_ID = /^[0-9a-f]{8}-(?:[0-9a-f]{4}-){3}[0-9a-f]{12}$/i;
 const DAY = /^\d{4}-\d{2}-\d{2}$/;
 
 function isDay(text: string): boolean {
@@ -41,9 +44,10 @@ export function readRecordFilter(fields: RecordFields): ReadRecordFilter {
     if (id.length <= 100) filter.objectId = id.trim();
     else wrong.id = "No number or identifier is that long.";
   }
-  if (person) {
-    if (person.length <= 200) filter.person = person.trim();
-    else wrong.person = "No name is that long.";
+  if (person === SYSTEM) filter.actor = null;
+  else if (person) {
+    if (PERSON_ID.test(person)) filter.actor = person.toLowerCase();
+    else wrong.person = "The record knows no such person.";
   }
   for (const [name, text] of [
     ["from", from],
@@ -53,6 +57,7 @@ export function readRecordFilter(fields: RecordFields): ReadRecordFilter {
     if (safeDay(text)) filter[name] = text;
     else wrong[name] = "Write the day as 2026-03-12.";
   }
+  if (filter.from && filter.to && filter.from > filter.to) wrong.to = "This day is before the first one.";
   if (before) {
     if (/^[1-9]\d{0,17}$/.test(before)) filter.before = before;
     else wrong.before = "The address does not say where the page begins.";
@@ -67,9 +72,4 @@ function safeDay(text: string): boolean {
     // Date refuses months and days that do not exist.
     return false;
   }
-}
-
-/** How an act reads in the list: "lines accepted". */
-export function actInWords(act: string): string {
-  return act.slice(act.indexOf(".") + 1).replaceAll("-", " ");
 }

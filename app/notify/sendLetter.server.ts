@@ -6,7 +6,9 @@ import { LINK_LINE } from "./texts.ts";
 import { mailTransport, senderAddress } from "./transport.server.ts";
 
 /** Makes the secret link of a letter and stores its hash. Gives its path, or null when the link has become pointless. */
-export type LinkMaker = (letter: Pick<Letter, "kind" | "toPerson" | "fromPerson">) => Promise<string | null>;
+export type LinkMaker = (
+  letter: Pick<Letter, "kind" | "toPerson" | "toAddress" | "fromPerson">,
+) => Promise<string | null>;
 
 /**
  * Sends one letter of the outbox, unless it was sent before. A crash between the mail server's yes and ours sends it
@@ -20,9 +22,9 @@ export async function sendLetter(letterId: string, makeLink: LinkMaker): Promise
   try {
     const transport = mailTransport();
     const path = needsLink ? await makeLink(letter) : letter.path;
-    // Nobody is left to use the link: the account was switched off meanwhile.
+    // Nobody is left to use the link: the account was switched off or has another address meanwhile.
     if (needsLink && path === null) {
-      await updateFailed(letter.id, "The account was switched off before the letter was sent.", database());
+      await updateFailed(letter.id, "The account was changed before the letter was sent.", database());
       await updateSent(letter.id, new Date(), database());
       return;
     }

@@ -2,6 +2,8 @@ import { timingSafeEqual } from "node:crypto";
 import { act } from "#app/audit/act.server.ts";
 import { database } from "#app/db/database.server.ts";
 import { Forbidden, Invalid, NotFound, Refused, Unauthenticated } from "#app/http/errors.ts";
+import { enqueueLetter } from "#app/notify/letters.server.ts";
+import { keyWithdrawnLetter } from "#app/notify/texts.ts";
 import { readEmail } from "./email.ts";
 import {
   formatApiKey,
@@ -19,9 +21,11 @@ import {
   findKeys,
   insertKey,
   type ListedKey,
+  updateFirstUsed,
   updateLastUsed,
   updateWithdrawn,
 } from "./keys.queries.server.ts";
+import { findKnownAccount } from "./known.server.ts";
 import { asPerson, findAccountByEmail } from "./people.queries.server.ts";
 import { demand, may, permissions } from "./permissions.ts";
 import type { Acting, Person } from "./person.ts";
@@ -57,10 +61,18 @@ export async function requireKey(request: Request, scope: Scope, now: Date = new
     const needed = permissions[scopeInfo[scope].permission].join(" or ");
     throw new Forbidden(`The owner of this API key no longer holds a role that this needs (${needed}).`);
   }
-  if (!key.lastUsedAt || now.getTime() - key.lastUsedAt.getTime() >= USED_EVERY) {
-    await updateLastUsed(key.id, now, database());
-  }
-  return { person: key.owner, apiKeyId: key.id, requestId: request.headers.get("X-Request-Id") };
+  const acting: Acting = { person: key.owner, apiKeyId: key.id, requestId: request.headers.get("X-Request-Id") };
+  if (!key.lastUsedAt) await noteFirstUse(acting, key.id, now);
+  else if (now.getTime() - key.lastUsedAt.getTime() >= USED_EVERY) await updateLastUsed(key.id, now, database());
+  return acting;
+}
+
+/** The first use of a key goes on record: a key that somebody else got hold of shows there. Later ones are only dated. */
+async function noteFirstUse(acting: Acting, id: string, now: Date): Promise<void> {
+  await act(acting, async ({ trx, record }) => {
+    // Of several first requests at once, one finds it unused.
+    if (await updateFirstUsed(id, now, trx)) record({ act: "key.first-used", objectId: id });
+  });
 }
 
 /** What a key is made of, as its owner chooses it. */
@@ -155,6 +167,29 @@ export async function withdrawKey(acting: Acting, id: string, now: Date = new Da
       throw new NotFound("You have no such key in use; it may have been withdrawn already.");
     }
     record({ act: "key.withdrawn", objectId: id });
+  });
+}
+
+/**
+ * Withdraws a key of somebody else, who hears of it by letter.
+ * @throws NotFound when the person has no such key in use
+ */
+export async function withdrawKeyOf(
+  acting: Acting,
+  personId: string,
+  id: string,
+  now: Date = new Date(),
+): Promise<void> {
+  demand(acting, "people:manage");
+  await act(acting, async ({ trx, record }) => {
+    const owner = await findKnownAccount(personId, trx);
+    const key = await findKey(id, trx);
+    if (!key || !(await updateWithdrawn(id, owner.id, now, trx))) {
+      throw new NotFound(`${owner.name} has no such key in use; it may have been withdrawn already.`);
+    }
+    const letter = keyWithdrawnLetter({ name: owner.name, by: acting.person.name, key: key.name });
+    await enqueueLetter({ ...letter, toAddress: owner.email, toPerson: owner.id, fromPerson: acting.person.id }, trx);
+    record({ act: "key.withdrawn", objectId: id, detail: { owner: owner.id, name: key.name } });
   });
 }
 

@@ -26,6 +26,14 @@ export const changePasswordForm = z.object({
   password: line("Choose the new password."),
 });
 
+export const renameForm = z.object({ intent: z.literal("rename"), name: line("Give your name.") });
+
+export const addressForm = z.object({
+  intent: z.literal("address"),
+  email: line("Give the new e-mail address."),
+  current: line("Give your current password."),
+});
+
 export const sessionsForm = z.discriminatedUnion("intent", [
   z.object({ intent: z.literal("end-session"), session: z.string().regex(/^[0-9a-f]{64}$/) }),
   z.object({ intent: z.literal("end-others") }),
@@ -51,16 +59,27 @@ export const inviteForm = z.object({
   name: line("Give the person's name."),
   email,
   roles,
+  password: line("").optional(),
 });
 
-const person = z.string().regex(/^[0-9a-f-]{36}$/i);
+const session = z.string().regex(/^[0-9a-f]{64}$/);
+const key = z.string().regex(/^[0-9a-z]{12}$/);
 
-/** What an administrator does with accounts. There is no field for a password: nobody sets another's. */
-export const peopleForm = z.discriminatedUnion("intent", [
-  inviteForm,
-  z.object({ intent: z.literal("roles"), person, roles }),
-  z.object({ intent: z.literal("switch-off"), person }),
-  z.object({ intent: z.literal("switch-on"), person }),
-  z.object({ intent: z.literal("end-sessions"), person }),
-  z.object({ intent: z.literal("invite-again"), person }),
+/**
+ * What an administrator does with the account whose page it is. `password` is the administrator's own, asked for once
+ * more when they signed in a while ago; there is no field for another's. `confirmed` is set by the page that shows what
+ * will change.
+ */
+const step = { password: line("").optional(), confirmed: z.literal("yes").optional() };
+export const personForm = z.discriminatedUnion("intent", [
+  z.object({ intent: z.literal("roles"), roles, ...step }),
+  z.object({ intent: z.literal("change"), name: line("Give the person's name."), email, ...step }),
+  z.object({ intent: z.literal("invite-again"), ...step }),
+  z.object({ intent: z.literal("withdraw-invitation"), ...step }),
+  z.object({ intent: z.literal("switch-off"), ...step }),
+  z.object({ intent: z.literal("switch-on"), ...step }),
+  z.object({ intent: z.literal("end-session"), session, ...step }),
+  z.object({ intent: z.literal("end-sessions"), ...step }),
+  z.object({ intent: z.literal("withdraw-key"), key, ...step }),
 ]);
+export type PersonChange = z.output<typeof personForm>;

@@ -6,6 +6,7 @@ import type { Person, Role } from "./person.ts";
 /** A key with its owner, as a request needs it. */
 export interface FoundKey {
   id: string;
+  name: string;
   secretHash: Buffer;
   scopes: readonly Scope[];
   endsAt: Date;
@@ -21,6 +22,7 @@ export async function findKey(id: string, db: Database): Promise<FoundKey | unde
     .innerJoin("person", "person.id", "api_key.person_id")
     .where("api_key.id", "=", id)
     .select((eb) => [
+      "api_key.name as keyName",
       "api_key.secret_hash",
       "api_key.scopes",
       "api_key.ends_at",
@@ -40,6 +42,7 @@ export async function findKey(id: string, db: Database): Promise<FoundKey | unde
   return (
     row && {
       id,
+      name: row.keyName,
       secretHash: row.secret_hash,
       scopes: row.scopes as Scope[],
       endsAt: row.ends_at,
@@ -132,6 +135,20 @@ export async function updateWithdrawn(id: string, personId: string, at: Date, tr
     .where("id", "=", id)
     .where("person_id", "=", personId)
     .where("withdrawn_at", "is", null)
+    .executeTakeFirst();
+  return numUpdatedRows === 1n;
+}
+
+/**
+ * Dates the use of a key that was never used.
+ * @returns false when another request was first
+ */
+export async function updateFirstUsed(id: string, at: Date, trx: Database): Promise<boolean> {
+  const { numUpdatedRows } = await trx
+    .updateTable("api_key")
+    .set({ last_used_at: at })
+    .where("id", "=", id)
+    .where("last_used_at", "is", null)
     .executeTakeFirst();
   return numUpdatedRows === 1n;
 }

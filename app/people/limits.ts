@@ -21,6 +21,8 @@ export const limits = {
   resetAddress: { name: "reset-address", most: 3, window: 60 * MINUTE },
   /** Reset letters asked for from one source. */
   resetSource: { name: "reset-source", most: 20, window: 60 * MINUTE },
+  /** Letters by which one person confirms a new address. */
+  addressLetters: { name: "address-letters", most: 5, window: 60 * MINUTE },
 } as const satisfies Record<string, Limit>;
 
 /**

@@ -1,4 +1,5 @@
 import argon2 from "argon2";
+import { asTyped } from "./passwordRules.ts";
 
 /** argon2id with 19 MiB, two passes and one lane: the least that ASVS 5.0 Appendix C accepts, about 50 ms a core. */
 const OPTIONS = { type: argon2.argon2id, memoryCost: 19_456, timeCost: 2, parallelism: 1 } as const;
@@ -9,12 +10,9 @@ const OPTIONS = { type: argon2.argon2id, memoryCost: 19_456, timeCost: 2, parall
  */
 const NOBODYS_HASH = "$argon2id$v=19$m=19456,t=2,p=1$bm9ib2R5cyBzYWx0IQ$bm9ib2R5cyBoYXNoLCBvbmx5IGZvciBpdHMgdGltZSE";
 
-// The same letters can be typed as one code point or as two, depending on the keyboard; neither case nor length changes.
-const typed = (password: string): string => password.normalize("NFC");
-
 /** The hash to store for a password, in PHC form (parameters and salt included). */
 export async function hashPassword(password: string): Promise<string> {
-  return argon2.hash(typed(password), OPTIONS);
+  return argon2.hash(asTyped(password), OPTIONS);
 }
 
 /**
@@ -22,6 +20,6 @@ export async function hashPassword(password: string): Promise<string> {
  * does the same work and answers false.
  */
 export async function isPassword(stored: string | null, password: string): Promise<boolean> {
-  const right = await argon2.verify(stored ?? NOBODYS_HASH, typed(password));
+  const right = await argon2.verify(stored ?? NOBODYS_HASH, asTyped(password));
   return stored !== null && right;
 }

@@ -5,6 +5,20 @@ export const SHORTEST_PASSWORD = 8;
 /** Most characters of a password: long phrases fit, a megabyte to hash does not. */
 export const LONGEST_PASSWORD = 256;
 
+/**
+ * A password in the form in which it is counted, judged and hashed: NFKC, so that the same letters are the same password
+ * whether a keyboard sends one code point or two, wide or narrow forms, one kind of space or another. Case and length as
+ * typed stay. (NIST SP 800-63B advises NFKC or NFKD; from memory.)
+ */
+export function asTyped(password: string): string {
+  return password.normalize("NFKC");
+}
+
+/** Whether a password is longer than any that is taken. */
+export function isTooLong(password: string): boolean {
+  return [...asTyped(password)].length > LONGEST_PASSWORD;
+}
+
 /** What a person is told above the field. */
 export const PASSWORD_HINT = `At least ${SHORTEST_PASSWORD} characters; 15 or more are better. A phrase of a few words is easy to keep.`;
 
@@ -15,13 +29,14 @@ export const PASSWORD_HINT = `At least ${SHORTEST_PASSWORD} characters; 15 or mo
  * @param own the person's own address and name, which make a bad password
  */
 export function passwordProblem(password: string, own: { email?: string; name?: string } = {}): string | null {
-  const length = [...password].length;
+  const typed = asTyped(password);
+  const length = [...typed].length;
   if (length < SHORTEST_PASSWORD) {
     return `This has ${length} ${length === 1 ? "character" : "characters"}; a password needs at least ${SHORTEST_PASSWORD}.`;
   }
   if (length > LONGEST_PASSWORD) return `This is longer than ${LONGEST_PASSWORD} characters; shorten it.`;
-  if (/\p{Cc}/u.test(password)) return "This holds a control character that cannot be typed again; leave it out.";
-  const lower = password.normalize("NFKC").toLowerCase();
+  if (/\p{Cc}/u.test(typed)) return "This holds a control character that cannot be typed again; leave it out.";
+  const lower = typed.toLowerCase();
   if (isPattern(lower)) {
     return "This is a row of keys, a sequence or a repetition, which is tried first by strangers. Take a phrase of a few words.";
   }

@@ -8,7 +8,7 @@ import { deleteTries, insertTry } from "./limits.queries.server.ts";
 import { findLink, type LinkTable, updateAllUsed, updateUsed } from "./links.queries.server.ts";
 import { RESET_MINUTES } from "./links.server.ts";
 import { hashPassword, isPassword } from "./passwordHash.server.ts";
-import { LONGEST_PASSWORD, passwordProblem } from "./passwordRules.ts";
+import { isTooLong, passwordProblem } from "./passwordRules.ts";
 import { type Account, findAccount, findAccountByEmail, updatePassword } from "./people.queries.server.ts";
 import { demand } from "./permissions.ts";
 import type { Acting } from "./person.ts";
@@ -57,19 +57,7 @@ export async function changePassword(
   { sessionId, address }: { sessionId: string; address: string },
 ): Promise<void> {
   demand(acting, "account:own");
-  const account = await findAccount(acting.person.id, database());
-  if (!account) throw new Refused("This account is no longer there.");
-  // Whoever found an open session must not be able to try passwords without end.
-  const now = new Date();
-  const tried = [account.email, sourceOf(address)];
-  const wait = await insertTry(limits.signInAccount, tried, now, database());
-  if (wait > 0) throw new TooMany(`That was too many tries. Wait ${minutes(wait)}, then try again.`, wait);
-  const tooLong = [...passwords.current].length > LONGEST_PASSWORD;
-  if (tooLong || !(await isPassword(account.passwordHash, passwords.current))) {
-    const detail = "This is not your current password.";
-    throw new Invalid(detail, [{ pointer: "/current", detail }]);
-  }
-  await deleteTries(limits.signInAccount, tried, now, database());
+  const account = await demandCurrent(acting, passwords.current, { address });
   checkNewPassword(passwords.password, account);
   const passwordHash = await hashPassword(passwords.password);
   await act(acting, async (scope) => {
@@ -81,6 +69,30 @@ export async function changePassword(
     );
     scope.record({ act: "person.password-changed", objectId: account.id, detail: { sessionsEnded } });
   });
+}
+
+/**
+ * Holds what somebody typed against their current password, before their password or address is changed.
+ * @throws Invalid at `/current`; TooMany after too many wrong ones
+ */
+export async function demandCurrent(
+  acting: Acting,
+  current: string,
+  { address }: { address: string },
+): Promise<Account> {
+  const account = await findAccount(acting.person.id, database());
+  if (!account) throw new Refused("This account is no longer there.");
+  // Whoever found an open session must not be able to try passwords without end.
+  const now = new Date();
+  const tried = [account.email, sourceOf(address)];
+  const wait = await insertTry(limits.signInAccount, tried, now, database());
+  if (wait > 0) throw new TooMany(`That was too many tries. Wait ${minutes(wait)}, then try again.`, wait);
+  if (isTooLong(current) || !(await isPassword(account.passwordHash, current))) {
+    const detail = "This is not your current password.";
+    throw new Invalid(detail, [{ pointer: "/current", detail }]);
+  }
+  await deleteTries(limits.signInAccount, tried, now, database());
+  return account;
 }
 
 /**

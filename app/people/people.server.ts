@@ -1,29 +1,38 @@
-import { act, type ActScope } from "#app/audit/act.server.ts";
-import { database } from "#app/db/database.server.ts";
-import { Invalid, NotFound, Refused } from "#app/http/errors.ts";
+import { act } from "#app/audit/act.server.ts";
+import { type Database, database } from "#app/db/database.server.ts";
+import { NotFound, Refused } from "#app/http/errors.ts";
 import { enqueueLetter } from "#app/notify/letters.server.ts";
-import { invitationLetter } from "#app/notify/texts.ts";
-import { readEmail } from "./email.ts";
-import { insertInvitation } from "./links.queries.server.ts";
-import { INVITATION_DAYS } from "./links.server.ts";
+import {
+  type AccountLetter,
+  addressChangedLetter,
+  renamedLetter,
+  rolesChangedLetter,
+  switchedOffLetter,
+  switchedOnLetter,
+} from "#app/notify/texts.ts";
+import { writeInvitation } from "./invitations.server.ts";
+import { findKnownAccount } from "./known.server.ts";
+import { insertInvitation, updateAllUsed } from "./links.queries.server.ts";
+import { demandEmail, demandName } from "./naming.ts";
 import {
   type Account,
   countAdministrators,
-  findAccount,
   findAccountByEmail,
-  findAllAccounts,
+  findAccountLines,
   insertPerson,
   lockPeople,
+  type PeopleFilter,
   replaceRoles,
+  updateAccount,
   updateSwitchedOff,
 } from "./people.queries.server.ts";
 import { demand } from "./permissions.ts";
-import { type Acting, type Role, ROLES } from "./person.ts";
+import { type AccountState, type Acting, orderRoles, type Role } from "./person.ts";
 import { makeSecret } from "./secrets.server.ts";
+import { IDLE_LIMIT } from "./session.ts";
 import { updateEnded } from "./sessions.queries.server.ts";
 
 const DAY = 24 * 60 * 60 * 1000;
-const LONGEST_NAME = 120;
 
 /** An account as the administrator's list shows it. */
 export interface ListedAccount {
@@ -31,83 +40,101 @@ export interface ListedAccount {
   name: string;
   email: string;
   roles: readonly Role[];
-  /** "invited" until a password was chosen. */
-  state: "in use" | "invited" | "switched off";
+  state: AccountState;
+  lastSignIn: Date | null;
+  /** Sessions that can still be used. */
+  sessions: number;
 }
 
-/** Everybody with an account. */
-export async function findPeople(acting: Acting): Promise<ListedAccount[]> {
+/** Everybody with an account, or those who fit a filter. */
+export async function findPeople(
+  acting: Acting,
+  filter: PeopleFilter = {},
+  now: Date = new Date(),
+): Promise<ListedAccount[]> {
   demand(acting, "people:manage");
-  const accounts = await findAllAccounts(database());
-  return accounts.map(({ id, name, email, roles, passwordHash, switchedOffAt }) => ({
-    id,
-    name,
-    email,
-    roles,
-    state: switchedOffAt ? "switched off" : passwordHash === null ? "invited" : "in use",
+  const limits = { now, seenAfter: new Date(now.getTime() - IDLE_LIMIT) };
+  const lines = await findAccountLines(filter, limits, database());
+  return lines.map((line) => ({
+    id: line.id,
+    name: line.name,
+    email: line.email,
+    roles: line.roles,
+    state: stateOf(line),
+    lastSignIn: line.lastSignIn,
+    sessions: line.switchedOffAt ? 0 : line.sessions,
   }));
 }
 
-/**
- * Makes an account and writes to its owner, who chooses the password; an administrator never knows one.
- * @throws Invalid; Refused when there is an account with this address
- */
-export async function invitePerson(
-  acting: Acting,
-  invited: { email: string; name: string; roles: readonly Role[] },
-): Promise<{ id: string }> {
-  demand(acting, "people:manage");
-  const { email, name } = readNewPerson(invited);
-  const roles = readRoles(invited.roles);
-  return act(acting, async ({ trx, record }) => {
-    if (await findAccountByEmail(email, trx)) throw new Refused("There is already an account with this address.");
-    const id = await insertPerson({ email, name, passwordHash: null }, trx);
-    await replaceRoles(id, roles, acting.person.id, trx);
-    await writeInvitation({ id, email, name }, acting, trx);
-    record({ act: "person.invited", objectId: id, detail: { email, name, roles } });
-    return { id };
-  });
-}
-
-/**
- * Sends the invitation again to somebody who has not chosen a password yet.
- * @throws Refused when they have, or the account is switched off
- */
-export async function inviteAgain(acting: Acting, personId: string): Promise<void> {
-  demand(acting, "people:manage");
-  await act(acting, async ({ trx, record }) => {
-    const account = await findOther(personId, trx);
-    if (account.switchedOffAt) throw new Refused("This account is switched off. Switch it on first.");
-    if (account.passwordHash !== null) {
-      throw new Refused(`${account.name} has chosen a password already and can ask for a new one on the sign-in page.`);
-    }
-    await writeInvitation(account, acting, trx);
-    record({ act: "person.invited", objectId: account.id, detail: { again: true } });
-  });
-}
-
-async function writeInvitation(
-  to: { id: string; email: string; name: string },
-  acting: Acting,
-  trx: ActScope["trx"],
-): Promise<void> {
-  const letter = invitationLetter({ name: to.name, invitedBy: acting.person.name, days: INVITATION_DAYS });
-  await enqueueLetter({ ...letter, toAddress: to.email, toPerson: to.id, fromPerson: acting.person.id }, trx);
+/** How an account stands. */
+export function stateOf({
+  passwordHash,
+  switchedOffAt,
+}: Pick<Account, "passwordHash" | "switchedOffAt">): AccountState {
+  if (switchedOffAt) return "switched off";
+  return passwordHash === null ? "invited" : "in use";
 }
 
 /**
  * Gives somebody exactly these roles. They hold from the person's next request on, API keys included.
- * @throws Refused when no administrator would be left
+ * @throws Refused for one's own roles, when nothing would change, and when no administrator would be left
  */
 export async function giveRoles(acting: Acting, personId: string, roles: readonly Role[]): Promise<void> {
   demand(acting, "people:manage");
-  const next = readRoles(roles);
+  const next = orderRoles(roles);
   await act(acting, async ({ trx, record }) => {
     await lockPeople(trx);
-    const account = await findOther(personId, trx);
+    const account = await findKnownAccount(personId, trx);
+    const before = orderRoles(account.roles);
+    if (account.id === acting.person.id) {
+      throw new Refused("Nobody changes their own roles. Ask another administrator.");
+    }
+    if (before.join() === next.join()) throw new Refused(`${account.name} holds exactly these roles already.`);
     await replaceRoles(account.id, next, acting.person.id, trx);
     await keepOneAdministrator(trx);
-    record({ act: "person.roles-changed", objectId: account.id, detail: { before: account.roles, after: next } });
+    await tell(account, rolesChangedLetter({ ...namesOf(account, acting), before, after: next }), acting, trx);
+    record({ act: "person.roles-changed", objectId: account.id, detail: { before, after: next } });
+  });
+}
+
+/**
+ * Writes somebody's name or address anew. The old address hears of the new one; whoever was only invited there is invited
+ * at the new one, and the old letter's link no longer opens.
+ *
+ * @throws Invalid; Refused when another account has the address, or nothing would change
+ */
+export async function changeAccount(
+  acting: Acting,
+  personId: string,
+  to: { name: string; email: string },
+  now: Date = new Date(),
+): Promise<void> {
+  demand(acting, "people:manage");
+  const name = demandName(to.name);
+  const email = demandEmail(to.email);
+  await act(acting, async ({ trx, record }) => {
+    await lockPeople(trx);
+    const account = await findKnownAccount(personId, trx);
+    if (account.name === name && account.email === email) throw new Refused("Name and address are these already.");
+    const holder = await findAccountByEmail(email, trx);
+    if (holder && holder.id !== account.id) throw new Refused("There is already an account with this address.");
+    await updateAccount(account.id, { name, email }, trx);
+    if (account.name !== name) {
+      const letter = renamedLetter({ name, by: acting.person.name, before: account.name });
+      if (acting.person.id !== account.id) await tell(account, letter, acting, trx);
+      record({ act: "person.renamed", objectId: account.id, detail: { before: account.name, after: name } });
+    }
+    if (account.email !== email) {
+      await updateAllUsed(account.id, now, trx);
+      if (account.passwordHash === null && !account.switchedOffAt) {
+        await writeInvitation({ id: account.id, email, name }, acting, trx);
+      } else {
+        const letter = addressChangedLetter({ name, by: acting.person.name, from: account.email, to: email });
+        await tell(account, letter, acting, trx);
+        await tell({ ...account, email }, letter, acting, trx);
+      }
+      record({ act: "person.address-changed", objectId: account.id, detail: { before: account.email, after: email } });
+    }
   });
 }
 
@@ -119,32 +146,56 @@ export async function switchOff(acting: Acting, personId: string, now: Date = ne
   demand(acting, "people:manage");
   await act(acting, async ({ trx, record }) => {
     await lockPeople(trx);
-    const account = await findOther(personId, trx);
+    const account = await findKnownAccount(personId, trx);
     if (account.switchedOffAt) throw new Refused("This account is switched off already.");
     await updateSwitchedOff(account.id, now, trx);
     await keepOneAdministrator(trx);
     const sessionsEnded = await updateEnded(account.id, {}, now, trx);
+    await updateAllUsed(account.id, now, trx);
+    await tell(account, switchedOffLetter(namesOf(account, acting)), acting, trx);
     record({ act: "person.switched-off", objectId: account.id, detail: { sessionsEnded } });
   });
 }
 
-/** Switches an account on again, with the roles and the password it had. */
+/**
+ * Switches an account on again, with the roles and the password it had. Whoever never chose one is invited anew.
+ * @throws Refused when it is in use
+ */
 export async function switchOn(acting: Acting, personId: string): Promise<void> {
   demand(acting, "people:manage");
   await act(acting, async ({ trx, record }) => {
-    const account = await findOther(personId, trx);
+    await lockPeople(trx);
+    const account = await findKnownAccount(personId, trx);
     if (!account.switchedOffAt) throw new Refused("This account is in use already.");
     await updateSwitchedOff(account.id, null, trx);
     record({ act: "person.switched-on", objectId: account.id });
+    if (account.passwordHash === null) {
+      await writeInvitation(account, acting, trx);
+      record({ act: "person.invited", objectId: account.id, detail: { again: true } });
+    } else {
+      await tell(account, switchedOnLetter(namesOf(account, acting)), acting, trx);
+    }
   });
 }
 
-/** Ends every session of somebody. @returns how many were ended */
-export async function endSessionsOf(acting: Acting, personId: string, now: Date = new Date()): Promise<number> {
+/**
+ * Ends sessions of somebody.
+ * @param only the id of the one that is ended; all when left out
+ * @returns how many were ended
+ * @throws NotFound when the one was ended already
+ */
+export async function endSessionsOf(
+  acting: Acting,
+  personId: string,
+  { only }: { only?: string | undefined } = {},
+  now: Date = new Date(),
+): Promise<number> {
   demand(acting, "people:manage");
   return act(acting, async ({ trx, record }) => {
-    const account = await findOther(personId, trx);
-    const ended = await updateEnded(account.id, {}, now, trx);
+    const account = await findKnownAccount(personId, trx);
+    const which = only === undefined ? {} : { only: Buffer.from(only, "hex") };
+    const ended = await updateEnded(account.id, which, now, trx);
+    if (only !== undefined && ended === 0) throw new NotFound("This session has ended already.");
     record({ act: "person.sessions-ended", objectId: account.id, detail: { ended } });
     return ended;
   });
@@ -161,7 +212,8 @@ export async function makeFirstAdministrator(
   person: { email: string; name: string },
   now: Date = new Date(),
 ): Promise<{ token: string; endsAt: Date }> {
-  const { email, name } = readNewPerson(person);
+  const email = demandEmail(person.email);
+  const name = demandName(person.name);
   const secret = makeSecret();
   const endsAt = new Date(now.getTime() + DAY);
   await act(null, async ({ trx, record }) => {
@@ -172,39 +224,22 @@ export async function makeFirstAdministrator(
     const known = await findAccountByEmail(email, trx);
     if (known?.switchedOffAt) throw new Refused("The account with this address is switched off.");
     const id = known?.id ?? (await insertPerson({ email, name, passwordHash: null }, trx));
-    await replaceRoles(id, readRoles([...(known?.roles ?? []), "administrator"]), null, trx);
+    await replaceRoles(id, orderRoles([...(known?.roles ?? []), "administrator"]), null, trx);
     await insertInvitation({ tokenHash: secret.hash, personId: id, invitedBy: null, endsAt }, trx);
     record({ act: "person.made", objectId: id, detail: { email, name, roles: ["administrator"], by: "command line" } });
   });
   return { token: secret.text, endsAt };
 }
 
-function readNewPerson(given: { email: string; name: string }): { email: string; name: string } {
-  const email = readEmail(given.email);
-  if (!email) {
-    const detail = "This is not an e-mail address of the form name@example.org.";
-    throw new Invalid(detail, [{ pointer: "/email", detail }]);
-  }
-  const name = given.name.trim();
-  if (name === "" || name.length > LONGEST_NAME || /[\p{Cc}\u2028\u2029]/u.test(name)) {
-    const detail = `Give a name of 1 to ${LONGEST_NAME} characters on one line.`;
-    throw new Invalid(detail, [{ pointer: "/name", detail }]);
-  }
-  return { email, name };
+/** Writes to somebody what changed of their account, unless they have never taken it up: then nothing of it is theirs yet. */
+async function tell(account: Account, letter: AccountLetter, acting: Acting, trx: Database): Promise<void> {
+  if (account.passwordHash === null) return;
+  await enqueueLetter({ ...letter, toAddress: account.email, toPerson: account.id, fromPerson: acting.person.id }, trx);
 }
 
-/** The roles in their usual order, each once; a word that is none cannot get here from a checked form. */
-function readRoles(roles: readonly Role[]): Role[] {
-  return ROLES.filter((role) => roles.includes(role));
-}
+const namesOf = (account: Account, acting: Acting) => ({ name: account.name, by: acting.person.name });
 
-async function findOther(personId: string, trx: ActScope["trx"]): Promise<Account> {
-  const account = /^[0-9a-f-]{36}$/i.test(personId) ? await findAccount(personId, trx) : undefined;
-  if (!account) throw new NotFound("There is no such account.");
-  return account;
-}
-
-async function keepOneAdministrator(trx: ActScope["trx"]): Promise<void> {
+async function keepOneAdministrator(trx: Database): Promise<void> {
   if ((await countAdministrators(trx)) === 0) {
     throw new Refused("This would leave no administrator. Give somebody else that role first.");
   }

@@ -2,6 +2,11 @@
 export const ROLES = ["analyst", "steward", "reviewer", "administrator"] as const;
 export type Role = (typeof ROLES)[number];
 
+/** Roles in their usual order, each once. */
+export function orderRoles(roles: readonly Role[]): Role[] {
+  return ROLES.filter((role) => roles.includes(role));
+}
+
 /** A person as the rest of the application knows one. */
 export interface Person {
   id: string;
@@ -18,3 +23,7 @@ export interface Acting {
   /** The request's id, for the record and the log. */
   requestId: string | null;
 }
+
+/** How an account stands: "invited" until a password was chosen. */
+export const ACCOUNT_STATES = ["in use", "invited", "switched off"] as const;
+export type AccountState = (typeof ACCOUNT_STATES)[number];

@@ -8,7 +8,7 @@ import { readEmail } from "./email.ts";
 import { limits, sourceOf } from "./limits.ts";
 import { deleteTries, insertTry, updateTryTakenBack } from "./limits.queries.server.ts";
 import { isPassword } from "./passwordHash.server.ts";
-import { LONGEST_PASSWORD } from "./passwordRules.ts";
+import { isTooLong } from "./passwordRules.ts";
 import { minutes } from "./passwords.server.ts";
 import { asPerson, findAccountByEmail } from "./people.queries.server.ts";
 import type { Person } from "./person.ts";
@@ -57,8 +57,9 @@ export async function checkCredentials(
   const account = address === "" ? undefined : await findAccountByEmail(address, database());
   const usable = account && !account.switchedOffAt ? account : undefined;
   // The hash is worked out in any case, so that the time does not tell whether there is an account.
-  const tooLong = [...password].length > LONGEST_PASSWORD;
-  const right = tooLong ? await isPassword(null, "") : await isPassword(usable?.passwordHash ?? null, password);
+  const right = isTooLong(password)
+    ? await isPassword(null, "")
+    : await isPassword(usable?.passwordHash ?? null, password);
   if (!usable || !right) {
     log.warn({ event: "sign-in-failed", requestId: from.requestId, address: from.address, personId: account?.id });
     await act(null, async ({ record }) => {

@@ -1,33 +1,40 @@
 import { Form, Link, useSearchParams } from "react-router";
 import { acts } from "#app/audit/acts.ts";
-import { actInWords, OBJECT_KINDS, readRecordFilter, RECORD_FIELDS } from "#app/audit/recordPage.ts";
-import { findRecordPage } from "#app/audit/recordPage.server.ts";
-import { pageError, readQuery } from "#app/http/respond.server.ts";
+import { OBJECT_KINDS, readRecordFilter, RECORD_FIELDS, SYSTEM } from "#app/audit/recordPage.ts";
+import { findRecordActors, findRecordPage } from "#app/audit/recordPage.server.ts";
+import { actInWords, detailInWords } from "#app/audit/words.ts";
+import { forPage, readQuery } from "#app/http/respond.server.ts";
 import { paths } from "#app/paths.ts";
 import { requireActing } from "#app/people/visitor.server.ts";
 import { Button, usePending } from "#app/ui/Button.tsx";
 import { EmptyPage } from "#app/ui/EmptyPage.tsx";
 import { InlineField, InlineSelect, Sentence } from "#app/ui/Field.tsx";
 import { Leaf } from "#app/ui/Leaf.tsx";
+import { Lede, Section } from "#app/ui/Section.tsx";
 import { Table } from "#app/ui/Table.tsx";
 import { Time } from "#app/ui/Time.tsx";
 import type { Route } from "./+types/record";
 
 export const meta: Route.MetaFunction = () => [{ title: "Record · Tablewright" }];
 
-export async function loader({ request }: Route.LoaderArgs) {
-  try {
-    const acting = await requireActing(request, "record:read");
-    const { filter, wrong } = readRecordFilter(readQuery(request, RECORD_FIELDS));
-    return { ...(await findRecordPage(acting, filter)), wrong };
-  } catch (error) {
-    throw pageError(error);
-  }
-}
+/** Lines of an entry's detail that stand open in its row. */
+const WORDS_SHOWN = 4;
+
+export const loader = forPage(async ({ request }: Route.LoaderArgs) => {
+  const acting = await requireActing(request, "record:read");
+  const { filter, wrong } = readRecordFilter(readQuery(request, RECORD_FIELDS));
+  const [page, actors] = await Promise.all([findRecordPage(acting, filter), findRecordActors(acting)]);
+  return {
+    next: page.next,
+    entries: page.entries.map((entry) => ({ ...entry, words: detailInWords(entry.detail) })),
+    actors,
+    wrong,
+  };
+});
 
 type Entry = Route.ComponentProps["loaderData"]["entries"][number];
 
-export default function RecordPage({ loaderData: { entries, next, wrong } }: Route.ComponentProps) {
+export default function RecordPage({ loaderData: { entries, next, actors, wrong } }: Route.ComponentProps) {
   const [search] = useSearchParams();
   const given = (name: string): string => search.get(name) ?? "";
   const pending = usePending();
@@ -38,7 +45,7 @@ export default function RecordPage({ loaderData: { entries, next, wrong } }: Rou
       section="record"
       lede="Who did what, when, to what and why. Entries are only ever added, and each is chained to the one before; nobody can change them, administrators included."
     >
-      <Form method="get" action={paths.record()}>
+      <Form method="get" action={paths.record()} key={search.toString()}>
         <Sentence>
           <span>Showing</span>
           <InlineSelect
@@ -65,13 +72,16 @@ export default function RecordPage({ loaderData: { entries, next, wrong } }: Rou
             wrong={wrong.id !== undefined}
           />
           <span>by</span>
-          <InlineField
+          <InlineSelect
             label="Person"
             name="person"
             defaultValue={given("person")}
-            placeholder="anybody"
-            size={14}
             wrong={wrong.person !== undefined}
+            options={[
+              ["", "anybody"],
+              ...actors.map(({ id, name }) => [id, name] as const),
+              [SYSTEM, "the service itself"],
+            ]}
           />
           <span>from</span>
           <InlineField
@@ -102,7 +112,7 @@ export default function RecordPage({ loaderData: { entries, next, wrong } }: Rou
         </p>
       )}
       {entries.length === 0 ? (
-        <EmptyPage>No entry of the record fits.</EmptyPage>
+        <EmptyPage start={<Link to={paths.record()}>Show every entry</Link>}>No entry of the record fits.</EmptyPage>
       ) : (
         <Table caption="Entries of the record, newest first" even>
           <thead>
@@ -124,14 +134,60 @@ export default function RecordPage({ loaderData: { entries, next, wrong } }: Rou
           </tbody>
         </Table>
       )}
-      {next && (
-        <p className="mt-4">
+      <p className="mt-4 flex flex-wrap gap-x-6">
+        {next && (
           <Link to={paths.record({ ...Object.fromEntries(search), before: next })} rel="next">
             earlier entries
           </Link>
-        </p>
-      )}
+        )}
+        {given("before") !== "" && (
+          <Link to={paths.record({ ...Object.fromEntries(search), before: null })}>back to the newest</Link>
+        )}
+      </p>
+      <Take wrong={wrong} />
     </Leaf>
+  );
+}
+
+/** The filtered record as a file, and how the chain is verified from it. */
+function Take({ wrong }: { wrong: Route.ComponentProps["loaderData"]["wrong"] }) {
+  const [search] = useSearchParams();
+  return (
+    <Section head="Take it with you">
+      <Lede>
+        Every entry that fits the sentence above, oldest first, with the hashes of the chain. Taking it is put on record
+        too.
+      </Lede>
+      <Form method="post" action={paths.resource("record/export")} reloadDocument className="flex flex-wrap gap-3">
+        {[...search]
+          .filter(([name]) => name !== "before" && !Object.hasOwn(wrong, name))
+          .map(([name, value]) => (
+            <input key={name} type="hidden" name={name} value={value} />
+          ))}
+        <Button name="format" value="jsonl">
+          Download as JSON Lines
+        </Button>
+        <Button name="format" value="csv">
+          Download as CSV
+        </Button>
+      </Form>
+      <details className="disclosure mt-4">
+        <summary>How to verify the chain outside</summary>
+        <div className="max-w-[64ch]">
+          <p className="mt-2">
+            Take the whole record as JSON Lines: one entry a line. Of each entry leave out <b>hash</b> and <b>person</b>
+            , write the rest as canonical JSON (RFC 8785) and compute its SHA-256 in hexadecimal: it is the entry’s{" "}
+            <b>hash</b>. Its <b>previousHash</b> is the hash of the entry numbered one less; the first carries 64 zeros.
+            A changed, missing or exchanged entry breaks the chain from there on.
+          </p>
+          <p className="mt-2">
+            A filtered file holds each entry’s own hash, but not always the entry before. In CSV a text that begins like
+            a formula has an apostrophe before it, so hashes are computed from JSON Lines. On the machine of the service{" "}
+            <b>npm run verify</b> walks the whole chain.
+          </p>
+        </div>
+      </details>
+    </Section>
   );
 }
 
@@ -141,6 +197,7 @@ function nameOf(act: string): string {
 
 function Row({ entry }: { entry: Entry }) {
   const to = objectPath(entry.objectKind, entry.objectId);
+  const name = entry.objectName ?? entry.objectId;
   return (
     <tr>
       <th scope="row" className="figure">
@@ -150,47 +207,61 @@ function Row({ entry }: { entry: Entry }) {
         <Time at={entry.at} withTime />
       </td>
       <td>
-        {entry.person ?? "the system"}
+        {entry.person && entry.actor ? (
+          <Link to={paths.person(entry.actor)}>{entry.person}</Link>
+        ) : (
+          "the service itself"
+        )}
         {entry.keyName && <span className="text-soft"> with the key “{entry.keyName}”</span>}
       </td>
       <td>{actInWords(entry.act)}</td>
       <td>
-        {to ? (
-          <Link to={to}>
-            {entry.objectKind} {entry.objectId}
-          </Link>
-        ) : (
-          <>
-            {entry.objectKind} <span className="text-fine break-all text-soft">{entry.objectId}</span>
-          </>
-        )}
+        {entry.objectKind} {to ? <Link to={to}>{name}</Link> : <span className="break-all text-soft">{name}</span>}
       </td>
-      <td>
-        <Detail entry={entry} />
+      <td className="wide">
+        {entry.words.length > 0 && (
+          <ul className="list-none">
+            {entry.words.slice(0, WORDS_SHOWN).map(({ label, body }) => (
+              <li key={label} className="break-words">
+                <span className="text-soft">{label}</span> {body}
+              </li>
+            ))}
+          </ul>
+        )}
+        <details className="disclosure">
+          <summary>
+            {entry.words.length > WORDS_SHOWN ? "more, and its place in the chain" : "place in the chain"}
+          </summary>
+          <dl className="max-w-[32rem] text-fine">
+            {entry.words.slice(WORDS_SHOWN).map(({ label, body }) => (
+              <Fact key={label} label={label} body={body} />
+            ))}
+            <Fact label="hash" body={entry.hash} />
+            <Fact
+              label={entry.number === "1" ? "before it" : `hash of ${Number(entry.number) - 1}`}
+              body={entry.previousHash}
+            />
+            {entry.requestId && <Fact label="request" body={entry.requestId} />}
+            {entry.objectName && <Fact label={entry.objectKind} body={entry.objectId} />}
+          </dl>
+        </details>
       </td>
     </tr>
   );
 }
 
-/** Long details open on a press; short ones stand in the row. */
-function Detail({ entry }: { entry: Entry }) {
-  const text = JSON.stringify(entry.detail, null, 1);
-  if (text === "{}") return null;
+function Fact({ label, body }: { label: string; body: string }) {
   return (
-    <details className="disclosure">
-      <summary>show</summary>
-      <pre className="max-h-80 max-w-[32rem] overflow-auto font-sans text-fine whitespace-pre-wrap" tabIndex={0}>
-        {text}
-        {"\n"}hash {entry.hash}
-        {entry.requestId && `\nrequest ${entry.requestId}`}
-      </pre>
-    </details>
+    <div className="py-0.5">
+      <dt className="inline text-soft">{label}</dt> <dd className="inline break-all">{body}</dd>
+    </div>
   );
 }
 
 function objectPath(kind: string, id: string): string | null {
   if (kind === "revision") return paths.revision(id);
   if (kind === "sheet") return paths.sheet(id);
+  if (kind === "person" && id !== "unknown") return paths.person(id);
   if (kind === "edition" && /^\d+$/.test(id)) return paths.edition(Number(id));
   return null;
 }

@@ -33,6 +33,7 @@ export const headers: Route.HeadersFunction = ({ actionHeaders }) => actionHeade
 const NOTICES: Readonly<Record<string, string>> = {
   "password-set": "Your password is set. Sign in with it.",
   "signed-out": "You are signed out.",
+  "address-set": "Your address is changed. Sign in with the new one.",
 };
 
 export const loader = forPage(async ({ request }: Route.LoaderArgs) => {

@@ -20,7 +20,7 @@ describe("an API key", () => {
     const { id, key } = await makeKey(analyst, reading);
     expect(await requireKey(withKey(key), "read")).toEqual({ ...analyst, apiKeyId: id });
     await expect(requireKey(withKey(key), "sheets:write")).rejects.toThrow(Forbidden);
-    expect(await actsOn(id)).toEqual(["key.made"]);
+    expect(await actsOn(id)).toEqual(["key.made", "key.first-used"]);
   });
 
   test("is shown once: of its secret the database holds the SHA-256 only", async () => {
@@ -76,7 +76,7 @@ describe("an API key", () => {
     await withdrawKey(owner, id);
     await expect(requireKey(withKey(key), "read")).rejects.toThrow("was withdrawn");
     await expect(withdrawKey(owner, id)).rejects.toThrow(NotFound);
-    expect(await actsOn(id)).toEqual(["key.made", "key.withdrawn"]);
+    expect(await actsOn(id)).toEqual(["key.made", "key.first-used", "key.withdrawn"]);
   });
 
   test("falls with its owner's account, and with the role its scope needs", async () => {

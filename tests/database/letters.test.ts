@@ -5,7 +5,7 @@ import { enqueueLetter, enqueueWaitingLetters, type NewLetter } from "#app/notif
 import { compose, sendLetter } from "#app/notify/sendLetter.server.ts";
 import { useMailTransport } from "#app/notify/transport.server.ts";
 import { LINK_LINE } from "#app/notify/texts.ts";
-import { switchOff } from "#app/people/people.server.ts";
+import { changeAccount, switchOff } from "#app/people/people.server.ts";
 import { makeLinkOf } from "#app/people/links.server.ts";
 import { useDatabase } from "#tests/support/database.ts";
 import { runJobs } from "#tests/support/jobs.ts";
@@ -102,7 +102,25 @@ describe("a letter", () => {
     await switchOff(admin, person.id);
     await runJobs(database);
     expect(outbox.sent.map(({ subject }) => subject)).not.toContain(letter().subject);
-    expect(await makeLinkOf({ kind: "password-reset", toPerson: person.id, fromPerson: null })).toBeNull();
+    const asked = { kind: "password-reset", toPerson: person.id, toAddress: person.email, fromPerson: null };
+    expect(await makeLinkOf(asked)).toBeNull();
+  });
+
+  test("with a secret link is not sent to an address that the account no longer has", async () => {
+    const admin = await makePerson("Moving Admin", "administrator");
+    const { person } = await makePerson("Moved Away", "analyst");
+    await enqueue({
+      kind: "password-reset",
+      toAddress: person.email,
+      toPerson: person.id,
+      body: LINK_LINE,
+      path: null,
+    });
+    await changeAccount(admin, person.id, { name: person.name, email: "elsewhere@calderpoint.example" });
+    await runJobs(database);
+    // The old address hears of the change, and gets nothing that opens the account.
+    const toOld = outbox.sent.filter(({ to }) => JSON.stringify(to).includes(person.email));
+    expect(toOld.map(({ subject }) => subject)).toEqual(["The address of your account was changed"]);
   });
 });
 

@@ -1,5 +1,5 @@
 import { Link } from "react-router";
-import { actInWords } from "#app/audit/recordPage.ts";
+import { actInWords } from "#app/audit/words.ts";
 import { paths } from "#app/paths.ts";
 import { ButtonLink } from "#app/ui/Button.tsx";
 import { Section } from "#app/ui/Section.tsx";
