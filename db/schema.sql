@@ -51,7 +51,7 @@ CREATE FUNCTION public.line_hands(of_line bigint) RETURNS SETOF uuid
       union
       select r.repaired_by
         from revision_line l
-        join revision v on v.id = l.revision_id
+        join revision v on v.id = coalesce(l.begun_in, l.revision_id)
         join sheet_repair r on r.sheet_id = v.sheet_id and r.row_number = l.row_number
        where l.id = of_line
     $$;
@@ -169,6 +169,30 @@ CREATE FUNCTION public.seal_edition(n integer) RETURNS bytea
 --
 
 COMMENT ON FUNCTION public.seal_edition(n integer) IS 'Seals the open edition after holding its rows against the decisions. TW004: not open; TW008: a row without an accepted line, or every line the publisher''s own.';
+
+--
+-- Name: tg_comment_answers(); Type: FUNCTION; Schema: public; Owner: -
+--
+
+CREATE FUNCTION public.tg_comment_answers() RETURNS trigger
+    LANGUAGE plpgsql
+    AS $$
+    begin
+      if new.answers is not null and not exists (
+        select from comment c where c.id = new.answers and c.answers is null and c.line_id is not distinct from new.line_id
+           and (c.line_id is not null or c.revision_id = new.revision_id)
+      ) then
+        raise exception 'An answer belongs to a comment that opens a thread about the same thing.' using errcode = 'TW006';
+      end if;
+      return new;
+    end
+    $$;
+
+--
+-- Name: FUNCTION tg_comment_answers(); Type: COMMENT; Schema: public; Owner: -
+--
+
+COMMENT ON FUNCTION public.tg_comment_answers() IS 'Threads are one level deep and about one thing. Error TW006.';
 
 --
 -- Name: tg_edition_is_sealed_at_commit(); Type: FUNCTION; Schema: public; Owner: -
@@ -320,7 +344,21 @@ CREATE FUNCTION public.tg_revision_line_row() RETURNS trigger
         end if;
         return new;
       end if;
-      if (to_jsonb(new) - 'state' - 'published_in' - 'against_row' - 'against_version') is distinct from (to_jsonb(old) - 'state' - 'published_in' - 'against_row' - 'against_version') then
+      if new.revision_id <> old.revision_id then
+        if old.state not in ('open', 'accepted', 'declined') or exists (
+          select from revision r where r.id in (old.revision_id, new.revision_id) and r.state not in ('draft', 'returned')
+        ) then
+          raise exception 'A line is taken over from one draft or returned revision into another.' using errcode = 'TW006';
+        end if;
+        if new.came_from is distinct from old.revision_id or new.begun_in is distinct from coalesce(old.begun_in, old.revision_id) then
+          raise exception 'A line that is taken over says where it came from.' using errcode = 'TW001';
+        end if;
+      elsif (new.position, new.begun_in, new.came_from, new.came_at) is distinct from (old.position, old.begun_in, old.came_from, old.came_at) then
+        raise exception 'What a line is about never changes; what it says is a new version.' using errcode = 'TW001';
+      end if;
+      if (to_jsonb(new) - 'state' - 'published_in' - 'against_row' - 'against_version' - 'revision_id' - 'position' - 'begun_in' - 'came_from' - 'came_at')
+         is distinct from
+         (to_jsonb(old) - 'state' - 'published_in' - 'against_row' - 'against_version' - 'revision_id' - 'position' - 'begun_in' - 'came_from' - 'came_at') then
         raise exception 'What a line is about never changes; what it says is a new version.' using errcode = 'TW001';
       end if;
       if new.state <> old.state then
@@ -580,6 +618,7 @@ CREATE TABLE public.comment (
     body text NOT NULL,
     written_by uuid NOT NULL,
     written_at timestamp with time zone DEFAULT clock_timestamp() NOT NULL,
+    answers bigint,
     CONSTRAINT comment_body CHECK (((length(btrim(body)) >= 1) AND (length(btrim(body)) <= 5000)))
 );
 
@@ -588,6 +627,12 @@ CREATE TABLE public.comment (
 --
 
 COMMENT ON TABLE public.comment IS 'What steward and reviewer wrote to each other, on a revision or on one of its lines.';
+
+--
+-- Name: COLUMN comment.answers; Type: COMMENT; Schema: public; Owner: -
+--
+
+COMMENT ON COLUMN public.comment.answers IS 'The comment that this one answers; null where it opens a thread.';
 
 --
 -- Name: comment_id_seq; Type: SEQUENCE; Schema: public; Owner: -
@@ -764,6 +809,7 @@ CREATE TABLE public.finding_set_aside (
     reason text NOT NULL,
     set_aside_by uuid NOT NULL,
     set_aside_at timestamp with time zone DEFAULT clock_timestamp() NOT NULL,
+    sentence text,
     CONSTRAINT finding_set_aside_hash CHECK ((octet_length(fingerprint) = 32)),
     CONSTRAINT finding_set_aside_reason CHECK ((length(btrim(reason)) > 0))
 );
@@ -773,6 +819,12 @@ CREATE TABLE public.finding_set_aside (
 --
 
 COMMENT ON TABLE public.finding_set_aside IS 'Blocking findings that a reviewer set aside, with the reason.';
+
+--
+-- Name: COLUMN finding_set_aside.sentence; Type: COMMENT; Schema: public; Owner: -
+--
+
+COMMENT ON COLUMN public.finding_set_aside.sentence IS 'What the finding said, where it arose from accepting part of a set and no examination of the revision holds it; null otherwise.';
 
 --
 -- Name: finding_set_aside_id_seq; Type: SEQUENCE; Schema: public; Owner: -
@@ -1076,7 +1128,11 @@ CREATE TABLE public.revision_line (
     against_version bigint,
     state text DEFAULT 'open'::text NOT NULL,
     published_in integer,
+    begun_in integer,
+    came_from integer,
+    came_at timestamp with time zone,
     CONSTRAINT revision_line_against_one CHECK (((against_row IS NULL) OR (against_version IS NULL))),
+    CONSTRAINT revision_line_came_whole CHECK ((((begun_in IS NULL) = (came_from IS NULL)) AND ((came_from IS NULL) = (came_at IS NULL)))),
     CONSTRAINT revision_line_kind_known CHECK ((kind = ANY (ARRAY['value'::text, 'withdrawal'::text, 'detail'::text, 'source'::text]))),
     CONSTRAINT revision_line_property_known CHECK ((property = ANY (ARRAY['enthalpyOfFormation'::text, 'entropy'::text, 'gibbsEnergyOfFormation'::text, 'heatCapacity'::text, 'enthalpyIncrement'::text]))),
     CONSTRAINT revision_line_published CHECK (((state = 'published'::text) = (published_in IS NOT NULL))),
@@ -1118,6 +1174,24 @@ COMMENT ON COLUMN public.revision_line.against_version IS 'The accepted line tha
 --
 
 COMMENT ON COLUMN public.revision_line.state IS 'Follows the newest decision on the newest version, by trigger; published once an edition holds it; dropped when its revision was withdrawn or the line taken out.';
+
+--
+-- Name: COLUMN revision_line.begun_in; Type: COMMENT; Schema: public; Owner: -
+--
+
+COMMENT ON COLUMN public.revision_line.begun_in IS 'The revision it was first written in, to whose sheet row_number belongs; null for a line that never left its revision.';
+
+--
+-- Name: COLUMN revision_line.came_from; Type: COMMENT; Schema: public; Owner: -
+--
+
+COMMENT ON COLUMN public.revision_line.came_from IS 'The revision it was taken over from, the last one where there were several; null for a line that never left its revision.';
+
+--
+-- Name: COLUMN revision_line.came_at; Type: COMMENT; Schema: public; Owner: -
+--
+
+COMMENT ON COLUMN public.revision_line.came_at IS 'When it was taken over.';
 
 --
 -- Name: revision_line_id_seq; Type: SEQUENCE; Schema: public; Owner: -
@@ -2023,6 +2097,18 @@ CREATE INDEX audit_entry_object ON public.audit_entry USING btree (object_kind, 
 CREATE INDEX column_plan_heads ON public.column_plan USING btree (heads_hash, id DESC);
 
 --
+-- Name: comment_answers; Type: INDEX; Schema: public; Owner: -
+--
+
+CREATE INDEX comment_answers ON public.comment USING btree (answers) WHERE (answers IS NOT NULL);
+
+--
+-- Name: comment_line; Type: INDEX; Schema: public; Owner: -
+--
+
+CREATE INDEX comment_line ON public.comment USING btree (line_id) WHERE (line_id IS NOT NULL);
+
+--
 -- Name: comment_revision; Type: INDEX; Schema: public; Owner: -
 --
 
@@ -2081,6 +2167,18 @@ CREATE INDEX line_decision_version ON public.line_decision USING btree (line_ver
 --
 
 CREATE INDEX password_reset_person ON public.password_reset USING btree (person_id);
+
+--
+-- Name: revision_line_begun_in; Type: INDEX; Schema: public; Owner: -
+--
+
+CREATE INDEX revision_line_begun_in ON public.revision_line USING btree (begun_in) WHERE (begun_in IS NOT NULL);
+
+--
+-- Name: revision_line_came_from; Type: INDEX; Schema: public; Owner: -
+--
+
+CREATE INDEX revision_line_came_from ON public.revision_line USING btree (came_from) WHERE (came_from IS NOT NULL);
 
 --
 -- Name: revision_line_once_source; Type: INDEX; Schema: public; Owner: -
@@ -2243,6 +2341,12 @@ CREATE TRIGGER audit_entry_append_only BEFORE DELETE OR UPDATE ON public.audit_e
 --
 
 CREATE TRIGGER audit_entry_no_truncate BEFORE TRUNCATE ON public.audit_entry FOR EACH STATEMENT EXECUTE FUNCTION public.tg_forbid_change();
+
+--
+-- Name: comment comment_answers; Type: TRIGGER; Schema: public; Owner: -
+--
+
+CREATE TRIGGER comment_answers BEFORE INSERT ON public.comment FOR EACH ROW EXECUTE FUNCTION public.tg_comment_answers();
 
 --
 -- Name: comment comment_append_only; Type: TRIGGER; Schema: public; Owner: -
@@ -2478,6 +2582,13 @@ ALTER TABLE ONLY public.column_plan
     ADD CONSTRAINT column_plan_saved_by_fkey FOREIGN KEY (saved_by) REFERENCES public.person(id) ON DELETE RESTRICT;
 
 --
+-- Name: comment comment_answers_fkey; Type: FK CONSTRAINT; Schema: public; Owner: -
+--
+
+ALTER TABLE ONLY public.comment
+    ADD CONSTRAINT comment_answers_fkey FOREIGN KEY (answers) REFERENCES public.comment(id) ON DELETE RESTRICT;
+
+--
 -- Name: comment comment_line_id_fkey; Type: FK CONSTRAINT; Schema: public; Owner: -
 --
 
@@ -2651,6 +2762,20 @@ ALTER TABLE ONLY public.person_role
 
 ALTER TABLE ONLY public.revision_line
     ADD CONSTRAINT revision_line_against_version FOREIGN KEY (against_version) REFERENCES public.line_version(id) ON DELETE RESTRICT;
+
+--
+-- Name: revision_line revision_line_begun_in_fkey; Type: FK CONSTRAINT; Schema: public; Owner: -
+--
+
+ALTER TABLE ONLY public.revision_line
+    ADD CONSTRAINT revision_line_begun_in_fkey FOREIGN KEY (begun_in) REFERENCES public.revision(id) ON DELETE RESTRICT;
+
+--
+-- Name: revision_line revision_line_came_from_fkey; Type: FK CONSTRAINT; Schema: public; Owner: -
+--
+
+ALTER TABLE ONLY public.revision_line
+    ADD CONSTRAINT revision_line_came_from_fkey FOREIGN KEY (came_from) REFERENCES public.revision(id) ON DELETE RESTRICT;
 
 --
 -- Name: revision_line revision_line_published_in_fkey; Type: FK CONSTRAINT; Schema: public; Owner: -
@@ -3111,6 +3236,18 @@ GRANT UPDATE(decided_at) ON TABLE public.revision TO tablewright_app;
 GRANT SELECT,INSERT ON TABLE public.revision_line TO tablewright_app;
 
 --
+-- Name: COLUMN revision_line.revision_id; Type: ACL; Schema: public; Owner: -
+--
+
+GRANT UPDATE(revision_id) ON TABLE public.revision_line TO tablewright_app;
+
+--
+-- Name: COLUMN revision_line."position"; Type: ACL; Schema: public; Owner: -
+--
+
+GRANT UPDATE("position") ON TABLE public.revision_line TO tablewright_app;
+
+--
 -- Name: COLUMN revision_line.against_row; Type: ACL; Schema: public; Owner: -
 --
 
@@ -3133,6 +3270,24 @@ GRANT UPDATE(state) ON TABLE public.revision_line TO tablewright_app;
 --
 
 GRANT UPDATE(published_in) ON TABLE public.revision_line TO tablewright_app;
+
+--
+-- Name: COLUMN revision_line.begun_in; Type: ACL; Schema: public; Owner: -
+--
+
+GRANT UPDATE(begun_in) ON TABLE public.revision_line TO tablewright_app;
+
+--
+-- Name: COLUMN revision_line.came_from; Type: ACL; Schema: public; Owner: -
+--
+
+GRANT UPDATE(came_from) ON TABLE public.revision_line TO tablewright_app;
+
+--
+-- Name: COLUMN revision_line.came_at; Type: ACL; Schema: public; Owner: -
+--
+
+GRANT UPDATE(came_at) ON TABLE public.revision_line TO tablewright_app;
 
 --
 -- Name: TABLE revision_move; Type: ACL; Schema: public; Owner: -

@@ -90,6 +90,10 @@ export interface ColumnPlan {
 }
 
 export interface Comment {
+  /**
+   * The comment that this one answers; null where it opens a thread.
+   */
+  answers: Int8 | null;
   body: string;
   id: Generated<Int8>;
   line_id: Int8 | null;
@@ -171,6 +175,10 @@ export interface FindingSetAside {
   id: Generated<Int8>;
   reason: string;
   revision_id: number;
+  /**
+   * What the finding said, where it arose from accepting part of a set and no examination of the revision holds it; null otherwise.
+   */
+  sentence: string | null;
   set_aside_at: Generated<Timestamp>;
   set_aside_by: string;
 }
@@ -294,6 +302,18 @@ export interface RevisionLine {
    * The accepted line that waited when this one was written, as the version it had; null when none waited.
    */
   against_version: Int8 | null;
+  /**
+   * The revision it was first written in, to whose sheet row_number belongs; null for a line that never left its revision.
+   */
+  begun_in: number | null;
+  /**
+   * When it was taken over.
+   */
+  came_at: Timestamp | null;
+  /**
+   * The revision it was taken over from, the last one where there were several; null for a line that never left its revision.
+   */
+  came_from: number | null;
   id: Generated<Int8>;
   kind: string;
   position: number;
