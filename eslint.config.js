@@ -104,7 +104,7 @@ const packagePolicies = [
   },
   {
     from: { ...from("thermo"), ...file("pure") },
-    allow: { to: { module: { origin: "external", source: ["decimal.js", "chemical-elements"] } } },
+    allow: { to: { module: { origin: "external", source: ["decimal.js", "chemical-elements", "fraction.js"] } } },
   },
   {
     from: { ...from(...everyRoom), ...file("pure") },

@@ -20,11 +20,13 @@ const LARGEST_CHARGE = 9;
  * A digit that stands plainly before a bare sign belongs to the atom or to the charge (`Hg2+`, `SO42-`), and then both
  * readings come back unless one of them is no ion at all.
  *
- * @param marked text as `markedText` leaves it, trimmed
+ * @param text text as `markedText` leaves it, trimmed
  */
-export function splitCharge(marked: string): SplitCharge {
+export function splitCharge(text: string): SplitCharge {
+  // A space before a bare sign tells nothing of the digit before it: `Hg2 +` is `Hg2+`.
+  const marked = text.replace(/(?<=\d)\s+(?=[+-]$)/, "");
   const stated =
-    /^(.*?)\s*\^\s*\{?\s*([+-]?\d*[+-]*)\s*\}?$/.exec(marked) ??
+    /^(.*?)\s*(?:\^|\*\*)\s*[{(]?\s*([+-]?\s?\d*\s?[+-]*)\s*[})]?$/.exec(marked) ??
     /^(.*?)\s*[([{]\s*(\d*[+-]+|[+-]\d+)\s*[)\]}]$/.exec(marked) ??
     /^(.*?)\s+(\d*[+-]+|[+-]\s?\d+)$/.exec(marked) ??
     /^(.*[^+-])([+-]\d+)$/.exec(marked) ??
@@ -53,7 +55,7 @@ export function spellCharge(body: string, charge: number): string {
 }
 
 function oneReading(marked: string, body: string, spelled: string): SplitCharge {
-  const match = /^(?:(\d*)([+-]+)|([+-])(\d+))$/.exec(spelled);
+  const match = /^(?:(\d*)([+-]+)|([+-])(\d+))$/.exec(spelled.replace(/\s/g, ""));
   const signs = match?.[2] ?? match?.[3] ?? "";
   const number = match?.[1] ?? match?.[4] ?? "";
   if (match === null || (signs.length > 1 && (number !== "" || new Set(signs).size > 1))) {
@@ -62,7 +64,9 @@ function oneReading(marked: string, body: string, spelled: string): SplitCharge 
   const size = number === "" ? signs.length : Number(number);
   if (size === 0) return { sentence: `${quote(marked)} states a charge of zero. Leave it out for a neutral species.` };
   if (size > LARGEST_CHARGE)
-    return { sentence: `${quote(marked)} states a charge of ${size}, more than any ion carries.` };
+    return {
+      sentence: `${quote(marked)} states a charge of ${size}, more than any ion carries. A mass number is no part of a formula here.`,
+    };
   return { readings: [{ body, charge: signs.startsWith("-") ? -size : size }], notes: [] };
 }
 

@@ -46,9 +46,8 @@ const SOLVATE = /^\d+(?:\.\d+|\/\d+)?(?:H2O|D2O|NH3|H_\{2\}O|D_\{2\}O|NH_\{3\})(
  */
 export function readFormula(text: string): Reading<Formula> {
   if (isTooLong(text)) return refused(`${quote(text)} is too long for a formula.`);
-  const marked = markedText(text)
-    .trim()
-    .replace(/_(\d)(?![\d}])/g, "_{$1}");
+  const notes: string[] = [];
+  const marked = spelledPlainly(markedText(text).trim(), notes);
   const objection = notAFormula(marked, text.trim());
   if (objection !== undefined) return refused(objection);
 
@@ -68,8 +67,51 @@ export function readFormula(text: string): Reading<Formula> {
   }
   const [only, ...others] = formulas;
   if (only === undefined) return refused(`${quote(text.trim())} cannot be read as a formula: ${sentence}`);
-  if (others.length === 0) return read(only, [...split.notes]);
+  if (others.length === 0) {
+    const wrong = split.readings.length === 1 ? noIon(only) : undefined;
+    return wrong === undefined ? read(only, [...notes, ...split.notes]) : refused(`${quote(text.trim())} ${wrong}`);
+  }
   return ambiguous(formulas, twoReadings(text.trim(), formulas));
+}
+
+/** Brings further habits of writing to the plain one: a comma for a decimal point, a cross or colon for a hydrate's dot. */
+function spelledPlainly(marked: string, notes: string[]): string {
+  return marked
+    .replace(/_(\d)(?![\d}])/g, "_{$1}")
+    .replace(/\^(\d{1,3})(?=[A-Z])/g, "^{$1}")
+    .replace(/(?<=[A-Za-z\d)\]}])\s*=$/, () => {
+      notes.push("The sign = is read as two negative charges.");
+      return "--";
+    })
+    .replace(/(?<=[A-Za-z)\]}]_?\{?\d*\}?),\s*(?=\d+\s*[HD]_?\{?2\}?O)/g, () => {
+      notes.push("The comma is read as a hydrate's dot.");
+      return "·";
+    })
+    .replace(/(?<=[·*]\s*)\.(?=\d)/g, "0.")
+    .replace(/(?<=\d),(?=\d)/g, () => {
+      notes.push("The comma is read as a decimal comma.");
+      return ".";
+    })
+    .replace(/(?<=[A-Za-z\d)\]}])\s*×\s*(?=[\dA-Z(])|(?<=[A-Za-z\d)\]}])\s*x\s*(?=\d+(?:[./]\d+)?\s*[HD]_?\{?2)/g, "·")
+    .replace(/(?<=[A-Za-z\d)\]}])\s*:\s*(?=\d*[A-Z(])/g, "·")
+    .replace(/(?<=[·.*]\s*)\((\d+[./]\d+)\)\s*(?=[A-Z])/g, "$1");
+}
+
+/** Why a stated charge is no ion's: `Li-7` and `He-3` are isotopes, `H+2` has lost more electrons than it had. */
+function noIon(formula: Formula): string | undefined {
+  const { composition, charge } = formula;
+  const electrons = Object.entries(composition).reduce(
+    (sum, [symbol, count]) => sum + count * (elementOf(symbol)?.atomicNumber ?? 0),
+    0,
+  );
+  if (charge > electrons) return "has lost more electrons than its atoms hold. Write the charge as in Fe+3.";
+  const element = soleElement(formula);
+  if (charge > -2 || element === undefined || composition[element] !== 1) return undefined;
+  if (charge >= -4 && !isMassNumber(-charge, element)) return undefined;
+  return (
+    `would be ${element} with charge −${-charge}, which is no ion. ` +
+    `If ${-charge} is a mass number: the table keeps no isotope but D and T apart.`
+  );
 }
 
 /** Number of atoms in the formula. */
@@ -107,7 +149,7 @@ function notAFormula(marked: string, text: string): string | undefined {
   if (/^e\s*(?:\^\s*)?\{?[-(]/.test(marked)) {
     return "An electron is not a species of the table. In an equation it is written e-.";
   }
-  if (/\((?:I{1,3}|I?V|VI{1,3})\)(?!\d)/.test(marked)) {
+  if (/\((?:I{1,3}|I?V|VI{1,3})\)(?!\d)|I{2,3}(?![a-z])/.test(marked)) {
     return `${quote(text)} names an oxidation state in Roman numerals. Write the charge of the ion, as in Fe+3.`;
   }
   if (/\((?:g|l|s|c|cr|aq|am|vit|gas|liq|ao|ai)(?:,[^)]*)?\)$/.test(marked)) {
@@ -116,10 +158,36 @@ function notAFormula(marked: string, text: string): string | undefined {
   if (/(?:^|[·.*\s])[nx](?=H_?\{?2|D_?\{?2)/.test(marked)) {
     return `${quote(text)} leaves the amount of water open. Give the number of H2O.`;
   }
+  if (/\d\s*[+-]\s*[xyδ]|(?<=[a-z\d)]|[CNOSFH])x(?=[A-Z]|$)|\)(?:n|_\{n\})$|_\{[^}]*[nxyδ][^}]*\}/.test(marked)) {
+    return `${quote(text)} leaves an amount open. Give the composition in numbers, as in Fe0.947O.`;
+  }
+  if (/^(?:[α-ω]|alpha|beta|gamma|delta|epsilon|[a-z]{1,5}|[DL]|[\d.]+|\([+\-RSEZ±]\))-(?=[A-Z])/.test(marked)) {
+    const prefix = marked.slice(0, marked.indexOf("-") + 1);
+    return `${quote(text)} begins with “${prefix}”, which names a form or an isomer. Give that as the form, as in Al2O3(cr,alpha).`;
+  }
+  if (/(?:^|[·.*]\s*[\d./]*\s*)[HD]_?\{?20\}?$/.test(marked)) {
+    return `${quote(text)} holds 20 atoms of hydrogen. Was the letter O meant, as in H2O?`;
+  }
+  const mass = /^\(?(\d{1,3})\)?([A-Z][a-z]?)/.exec(marked);
+  if (mass !== null && isMassNumber(Number(mass[1]), mass[2] ?? "")) {
+    return (
+      `${quote(text)} begins with a number. A coefficient belongs to an equation; if ${mass[1]} is a mass number, ` +
+      "write D or T, for the table keeps no isotope but D and T apart."
+    );
+  }
+  if (/[A-Z][a-z]?\d{1,2}(?:1[78]O|13C|15N)(?![a-z])/.test(marked)) {
+    return `${quote(text)} seems to hold a mass number (18O, 13C, 15N). The table keeps no isotope but D and T apart.`;
+  }
   if (/-\d*\.?\d*H2O$/.test(marked)) {
     return `${quote(text)} has a hyphen before the water. Write a dot, as in CuSO4·5H2O.`;
   }
   return undefined;
+}
+
+/** Whether a number may be the mass number of an element: at least a nucleon for each proton, at most three. */
+function isMassNumber(mass: number, symbol: string): boolean {
+  const element = elementOf(symbol) ?? elementOf(symbol[0] ?? "");
+  return element !== undefined && mass >= element.atomicNumber && mass <= 3 * element.atomicNumber && mass > 1;
 }
 
 /**
@@ -142,8 +210,11 @@ function hydrateReadings(body: string): string[] {
   return readings.map((reading) => reading + dotted.slice(start));
 }
 
-function pointMeanings(before: string, after: string, spaced: boolean): ("·" | ".")[] {
+function pointMeanings(before: string, after: string, spaced: boolean): ("·" | "." | "0.")[] {
   const digitsBefore = /(\d+)$/.exec(before)?.[1];
+  // `Fe.947O` has lost its zero, unless 947 molecules of something are meant.
+  if (!spaced && /[A-Za-z]$/.test(before) && /^\d{2,}(?=[A-Z(]|$)/.test(after) && !SOLVATE.test(after))
+    return ["0.", "·"];
   if (spaced || digitsBefore === undefined || !/^\d/.test(after)) return ["·"];
   const leading = before.slice(0, -digitsBefore.length);
   if (/_\{$/.test(leading)) return ["."]; // inside a marked subscript
@@ -203,7 +274,7 @@ class GroupParser {
 
   parseAll(): ParsedBody | string {
     try {
-      if (this.text === "") throw new FormulaFault("a part of it is empty.");
+      if (this.text === "") throw new FormulaFault("a part of it is empty. The dot of a radical is left out.");
       const group = this.parseGroup(0);
       if (this.position < this.text.length) throw this.unexpected();
       return group;
@@ -285,6 +356,9 @@ class GroupParser {
     const rest = this.rest;
     if (/^[)\]}]/.test(rest)) return new FormulaFault(`a “${rest[0]}” closes nothing.`);
     const wrong = /^(?:[A-Za-z][a-z]?|.)/su.exec(rest)?.[0] ?? rest;
+    if (/[\p{Script=Cyrillic}\p{Script=Greek}]/u.test(wrong)) {
+      return new FormulaFault(`“${wrong}” is a Greek or Cyrillic letter. Was its Latin double meant?`);
+    }
     if (!/[A-Za-z]/.test(wrong)) return new FormulaFault(`“${wrong}” has no place in a formula.`);
     const meant = this.meant();
     return new FormulaFault(

@@ -1,6 +1,8 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import { type NumberOptions, readNumber } from "./number.ts";
+import { digits, digitsOf, places } from "./digits.ts";
+import { bracketForm, plusMinusForm, showDigits } from "./notation.ts";
+import { type NumberOptions, readNumber, spellNumber } from "./number.ts";
 
 describe("numbers that are read", () => {
   it.each([
@@ -75,6 +77,54 @@ describe("numbers that are read", () => {
         const text = `${sign}${whole}${scale === 0 ? "" : `.${String(fraction).padStart(6, "0").slice(0, scale)}`}`;
         const reading = readNumber(text);
         return reading.outcome === "read" && reading.value.digits === text.replace(/^-(?=[0.]*$)/, "");
+      }),
+    );
+  });
+});
+
+describe("what the table prints is read back", () => {
+  const value = fc
+    .tuple(fc.constantFrom("", "-"), fc.nat(9_999), fc.integer({ min: 0, max: 5 }), fc.nat(99_999))
+    .map(([sign, whole, scale, fraction]) =>
+      digits(`${sign}${whole}${scale === 0 ? "" : `.${String(fraction).padStart(5, "0").slice(0, scale)}`}`),
+    );
+  const uncertainty = fc
+    .tuple(fc.integer({ min: 1, max: 99 }), fc.integer({ min: 0, max: 5 }))
+    .map(([size, scale]) => digitsOf(size / 10 ** scale, scale));
+
+  it("a number with a typographic minus keeps its digits", () => {
+    fc.assert(
+      fc.property(value, (one) => {
+        expect(readNumber(showDigits(one))).toMatchObject({ value: { digits: one } });
+      }),
+    );
+  });
+
+  it("the bracket form has the standard uncertainty and the digits it prints", () => {
+    fc.assert(
+      fc.property(value, uncertainty, (one, spread) => {
+        const printed = bracketForm(one, { digits: spread, kind: "standard", coverageFactor: null });
+        const reading = readNumber(printed);
+        expect(reading).toMatchObject({ outcome: "read", value: { uncertainty: { kind: "standard" } } });
+        const shown = reading.outcome === "read" ? reading.value : undefined;
+        expect(Math.abs(Number(shown?.digits) - Number(one))).toBeLessThanOrEqual(Number(spread));
+        // Brackets hold at most two digits, rounded to the value's own last place.
+        const rounding = Math.max(0.05 * Number(spread), 0.5 * 10 ** -places(one)) * (1 + 1e-9);
+        expect(Math.abs(Number(shown?.uncertainty?.digits) - Number(spread))).toBeLessThanOrEqual(rounding);
+      }),
+    );
+  });
+
+  it("the form with ± has value, uncertainty and kind as they were", () => {
+    const kinds = fc.constantFrom(["standard", null], ["expanded", 2], ["unstated", null]) as fc.Arbitrary<
+      ["standard" | "expanded" | "unstated", number | null]
+    >;
+    fc.assert(
+      fc.property(value, uncertainty, kinds, (one, spread, [kind, coverageFactor]) => {
+        const printed = plusMinusForm(one, { digits: spread, kind, coverageFactor });
+        expect(readNumber(printed)).toMatchObject({ value: { digits: one, uncertainty: { digits: spread, kind } } });
+        const spelled = { digits: one, uncertainty: { digits: spread, kind } };
+        expect(readNumber(spellNumber(spelled))).toMatchObject({ outcome: "read", value: spelled });
       }),
     );
   });

@@ -219,7 +219,9 @@ const COVERAGE =
 
 function takeApart(given: string): NumberParts | undefined {
   const notes: string[] = [];
-  const plain = given.replace(
+  // `253.4, u = 0.002`: how the table prints an uncertainty too small for brackets.
+  const spelled = given.replace(/^(.*\d),?\s*\bu\s*=\s*([\d.,]+)$/, "$1 ± $2 (k = 1)");
+  const plain = spelled.replace(
     /^([+-]?\s?\d+)·(?!10\d)(\d+)(?=$|\s?[(±])/,
     (_whole, whole: string, fraction: string) => {
       notes.push("The raised point is read as a decimal point.");

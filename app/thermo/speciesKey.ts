@@ -25,7 +25,7 @@ export function readKey(text: string): Reading<SpeciesIdentity> {
   if (isTooLong(text)) return refused(`${quote(text)} is too long for a key.`);
   const marked = markedText(text).trim();
   if (marked === "") return refused("No species is given. Write a key such as H2O(l).");
-  const parts = splitPhase(marked);
+  const parts = splitPhase(withoutFormInFront(marked));
   if (parts === undefined) return refused(`${quote(text.trim())} names no phase. Write it as in H2O(l) or Na+(aq).`);
   const phase = readPhase(parts.phase);
   if (phase.outcome !== "read") return phase.outcome === "refused" ? phase : refused(phase.sentence);
@@ -63,12 +63,24 @@ function identityOf(formula: Formula, phase: ReadPhase): SpeciesIdentity {
     : { formula, phase: phase.phase, label: phase.label };
 }
 
-/** The phase stands in the last bracket, or behind the last comma or space. */
-function splitPhase(marked: string): { formula: string; phase: string } | undefined {
+/** `α-Al2O3(cr)` names its form in front; the key names it behind the phase. */
+function withoutFormInFront(marked: string): string {
+  const [, form, rest = ""] = /^\(?([α-ω]|alpha|beta|gamma|delta|epsilon)\)?[-\s](?=[A-Z])(.*)$/su.exec(marked) ?? [];
+  if (form === undefined) return marked;
+  const parts = splitPhase(rest);
+  return parts === undefined || /[,;\s]/.test(parts.phase.trim()) ? marked : `${parts.formula}(${parts.phase},${form})`;
+}
+
+/** The phase stands in the last bracket, raised, lowered or level, or behind the last comma, space or underscore. */
+function splitPhase(given: string): { formula: string; phase: string } | undefined {
+  const marked = given
+    .replace(/\s*[_^]\{\s*\(([^{}]*)\)\s*\}$/, "($1)")
+    .replace(/[_^]\{\(\}([A-Za-z]{1,2})[_^]\{\)\}$/, "($1)");
   const bracketed = /^(.+?)\s*[([]([^()[\]]*(?:\([^()]*\)[^()[\]]*)*)[)\]]$/s.exec(marked);
   if (bracketed !== null && !/^[\d+-]*$/.test(bracketed[2] ?? "")) {
     return { formula: bracketed[1] ?? "", phase: bracketed[2] ?? "" };
   }
-  const trailing = /^(.+?)[\s,;]+([A-Za-z]{1,11})$/.exec(marked);
+  const trailing =
+    /^(.+?)(?:[\s,;]+|\s*[_:|]\s*|\s*\{)([A-Za-z]{1,11})\}?$/.exec(marked) ?? /^(.*[+-]\d?)(aq|g)$/.exec(marked);
   return trailing === null ? undefined : { formula: trailing[1] ?? "", phase: trailing[2] ?? "" };
 }

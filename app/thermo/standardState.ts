@@ -1,5 +1,5 @@
 import { GAS_CONSTANT, REFERENCE_TEMPERATURE, STANDARD_ATMOSPHERE, STANDARD_PRESSURE } from "./constants.ts";
-import { add, type Digits, digitsOf, isZero, places, roundTo } from "./digits.ts";
+import { add, compare, type Digits, digitsOf, isZero, places, roundTo } from "./digits.ts";
 import type { Property } from "./property.ts";
 import { referenceStateOf } from "./referenceStates.ts";
 import { isSolute, type SpeciesIdentity } from "./speciesKey.ts";
@@ -72,8 +72,7 @@ export function printedAtBar(
   const written = digitsOf(step, STEP_PLACES);
   if (isZero(written)) return { digits: value, note: "1 atm to 1 bar: no change" };
   const sign = written.startsWith("-") ? "−" : "+";
-  return {
-    digits: roundTo(add(value, written), places(value)),
-    note: `1 atm to 1 bar: ${sign} ${written.replace("-", "")}`,
-  };
+  const stepped = roundTo(add(value, written), places(value));
+  const unseen = compare(stepped, value) === 0 ? ", less than the last place printed" : "";
+  return { digits: stepped, note: `1 atm to 1 bar: ${sign} ${written.replace("-", "")}${unseen}` };
 }
