@@ -17,6 +17,8 @@ const settings: SheetSettings = {
 const frame: BuildFrame = {
   settings,
   source: { id: "src_standing", isNew: null },
+  sourcesByKey: new Map(),
+  details: [],
   bases: [],
   unnamed: [],
   speciesId: (key) => `sp_new_${key}`,

@@ -4,7 +4,7 @@ import { digits, type Digits } from "#app/thermo/digits.ts";
 import type { Phase } from "#app/thermo/phase.ts";
 import type { Property } from "#app/thermo/property.ts";
 import type { Uncertainty } from "#app/thermo/uncertainty.ts";
-import type { Candidate, MatchedReading } from "./match.ts";
+import type { Additions, Candidate, MatchedReading } from "./match.ts";
 import type { SheetSettings } from "./plan.ts";
 
 /** A row whose species is settled, ready to become lines. */
@@ -22,6 +22,16 @@ export interface ValueBase {
   readonly sourceId: string;
   readonly remark: string | null;
   /** Id of the standing row; null when this is a waiting line. */
+  readonly row: string | null;
+  /** Id of the waiting version; null when this stands. */
+  readonly version: string | null;
+}
+
+/** What a species that the rows know is called now, or waits to be called. */
+export interface DetailBase {
+  readonly speciesId: string;
+  readonly content: DetailContent;
+  /** Id of the standing row; null when this is a waiting line, or when nobody accepted it yet. */
   readonly row: string | null;
   /** Id of the waiting version; null when this stands. */
   readonly version: string | null;
@@ -49,14 +59,21 @@ export interface BuiltLines {
   readonly same: number;
   readonly newValues: number;
   readonly changedValues: number;
+  /** Species of the table that get a name, a CAS number or synonyms. */
+  readonly renamed: number;
 }
 
 /** What `buildLines` is given beside the rows. */
 export interface BuildFrame {
   readonly settings: SheetSettings;
-  readonly source: SheetSource;
+  /** The source of the whole sheet, or of its rows without a key; null where every row names its own. */
+  readonly source: SheetSource | null;
+  /** The sources that rows name by a key. */
+  readonly sourcesByKey: ReadonlyMap<string, SheetSource>;
   /** What stands or waits, for the species that the rows know. A waiting value comes before a standing one. */
   readonly bases: readonly ValueBase[];
+  /** What the species that rows add a name, a CAS number or synonyms to are called; a waiting one in place of a standing. */
+  readonly details: readonly DetailBase[];
   /** Species that another open revision proposes and nobody accepted yet: their names are proposed here again. */
   readonly unnamed: readonly Pick<Candidate, "speciesId" | "key" | "printed" | "label" | "name" | "cas" | "synonyms">[];
   /** Makes the opaque id of a new species from its key; ids are made outside so that this stays pure. */
@@ -64,8 +81,8 @@ export interface BuildFrame {
 }
 
 /**
- * Turns settled rows into the lines of a draft revision, against what stands or waits: a source line when the source is
- * new, a detail line for each species new to the table, a value line for each value that is new or differs. A sheet that
+ * Turns settled rows into the lines of a draft revision, against what stands or waits: a source line for each new source
+ * that a value leans on, a detail line for each species that is new to the table or gets a name or CAS number it had not, a value line for each value that is new or differs. A sheet that
  * leaves a species out removes nothing.
  */
 export function buildLines(rows: readonly SettledRow[], frame: BuildFrame): BuiltLines {
@@ -84,11 +101,17 @@ export function buildLines(rows: readonly SettledRow[], frame: BuildFrame): Buil
     if (own) own.push(row);
     else rowsOf.set(row.reading.match.key, [row]);
   }
-  const counts = { same: 0, newValues: 0, changedValues: 0 };
-
-  if (frame.source.isNew) {
-    lines.push(line("source", { sourceId: frame.source.id }, frame.source.isNew, null));
+  const counts = { same: 0, newValues: 0, changedValues: 0, renamed: 0 };
+  const details = new Map(frame.details.map((one) => [one.speciesId, one]));
+  const added = new Map<string, Additions[]>();
+  for (const { reading } of rows) {
+    if (reading.match.kind !== "known" || !reading.match.adds) continue;
+    const own = added.get(reading.match.speciesId);
+    if (own) own.push(reading.match.adds);
+    else added.set(reading.match.speciesId, [reading.match.adds]);
   }
+
+  const used = new Map<string, SheetSource>();
   for (const row of rows) {
     const { match, species } = row.reading;
     const speciesId = match.kind === "known" ? match.speciesId : frame.speciesId(match.key);
@@ -118,15 +141,32 @@ export function buildLines(rows: readonly SettledRow[], frame: BuildFrame): Buil
         inchikey: null,
         synonyms: [...synonyms],
       };
-      lines.push(line("detail", { speciesId }, content, row.number));
+      lines.push(line("detail", { speciesId }, withAdditions(content, added.get(speciesId) ?? []), row.number));
+      added.delete(speciesId);
+    }
+    const base = details.get(speciesId);
+    const additions = added.get(speciesId);
+    if (base && additions) {
+      added.delete(speciesId);
+      const content = withAdditions(base.content, additions);
+      if (content !== base.content) {
+        counts.renamed += 1;
+        lines.push({
+          ...line("detail", { speciesId }, content, row.number),
+          againstRow: base.row,
+          againstVersion: base.version,
+        });
+      }
     }
     for (const value of row.reading.values) {
-      const content = valueOf(row, value, frame);
+      const source = sourceOf(row, frame);
+      const content = valueOf(row, value, source, frame);
       const base = bases.get(`${speciesId}|${value.property}`);
       if (base && saysTheSame(content, base)) {
         counts.same += 1;
         continue;
       }
+      used.set(source.id, source);
       if (base) counts.changedValues += 1;
       else counts.newValues += 1;
       lines.push({
@@ -136,7 +176,17 @@ export function buildLines(rows: readonly SettledRow[], frame: BuildFrame): Buil
       });
     }
   }
-  return { lines, newSpecies: [...newSpecies.values()], ...counts };
+  const sources = [...used.values()].flatMap(({ id, isNew }) =>
+    isNew ? [line("source", { sourceId: id }, isNew, null)] : [],
+  );
+  return { lines: [...sources, ...lines], newSpecies: [...newSpecies.values()], ...counts };
+}
+
+function sourceOf({ reading }: SettledRow, frame: BuildFrame): SheetSource {
+  const key = reading.sourceKey ?? null;
+  const source = key === null ? frame.source : frame.sourcesByKey.get(key);
+  if (!source) throw new RangeError("a row was read whose source nobody chose");
+  return source;
 }
 
 function line(
@@ -157,6 +207,21 @@ function line(
   };
 }
 
+/** A detail with what rows add to it; the same object when they add nothing. What stands is never replaced. */
+function withAdditions(content: DetailContent, additions: readonly Additions[]): DetailContent {
+  const name = content.name || (additions.find((one) => one.name !== null)?.name ?? "");
+  const cas = content.cas ?? additions.find((one) => one.cas !== null)?.cas ?? null;
+  const known = new Set([name, ...content.synonyms].map((one) => one.toLowerCase()));
+  const synonyms = [...content.synonyms];
+  for (const one of additions.flatMap((each) => [each.name ?? "", ...each.synonyms])) {
+    if (one === "" || known.has(one.toLowerCase())) continue;
+    known.add(one.toLowerCase());
+    synonyms.push(one);
+  }
+  const same = name === content.name && cas === content.cas && synonyms.length === content.synonyms.length;
+  return same ? content : { ...content, name, cas, synonyms };
+}
+
 /** What a new species is called: the first name and CAS number that its rows give. */
 function detailOf(key: string, label: string | null, own: readonly SettledRow[]): DetailContent {
   const first = <T>(of: (species: MatchedReading["species"]) => T | null): T | null =>
@@ -169,11 +234,16 @@ function detailOf(key: string, label: string | null, own: readonly SettledRow[])
     name: first((species) => species.name) ?? "",
     cas: first((species) => species.cas),
     inchikey: null,
-    synonyms: [],
+    synonyms: [...new Set(own.flatMap((row) => row.reading.species.synonyms ?? []))],
   };
 }
 
-function valueOf(row: SettledRow, value: MatchedReading["values"][number], frame: BuildFrame): ValueContent {
+function valueOf(
+  row: SettledRow,
+  value: MatchedReading["values"][number],
+  source: SheetSource,
+  frame: BuildFrame,
+): ValueContent {
   const { settings } = frame;
   if (settings.temperature === null || settings.standardPressure === null) {
     throw new RangeError("lines are built from a confirmed plan only");
@@ -183,13 +253,14 @@ function valueOf(row: SettledRow, value: MatchedReading["values"][number], frame
     digits: value.digits,
     uncertainty: value.uncertainty,
     temperature: digits(settings.temperature),
-    standardPressure: digits(settings.standardPressure),
+    // Values at 1 atm were brought to 1 bar when they were read.
+    standardPressure: digits("100000"),
     basis: row.reading.species.phase === "aq" ? settings.basis : null,
     origin: "stated",
     method: settings.method,
     given: value.given,
     remark: row.reading.remark,
-    sourceId: frame.source.id,
+    sourceId: source.id,
   };
 }
 

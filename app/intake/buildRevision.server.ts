@@ -1,6 +1,6 @@
 import { randomUUID } from "node:crypto";
 import { act, type ActScope } from "#app/audit/act.server.ts";
-import { findNewestEdition, findValuesAsOf } from "#app/editions/editions.queries.server.ts";
+import { findDetailsAsOf, findNewestEdition, findValuesAsOf } from "#app/editions/editions.queries.server.ts";
 import { Invalid, Refused } from "#app/http/errors.ts";
 import { demand } from "#app/people/permissions.ts";
 import type { Acting } from "#app/people/person.ts";
@@ -15,13 +15,13 @@ import {
   lockNaming,
   type SpeciesCandidate,
 } from "#app/species/species.queries.server.ts";
-import { buildLines, type SettledRow, type SheetSource, type ValueBase } from "./buildLines.ts";
+import { buildLines, type DetailBase, type SettledRow, type SheetSource, type ValueBase } from "./buildLines.ts";
 import { sheetToMove } from "./confirmPlan.server.ts";
 import { countRows, findReadRows, findRepairs, updateSheetBuilt } from "./intake.queries.server.ts";
 import { matchSpecies, settleRows } from "./match.ts";
 import type { SheetFrame } from "./readRows.ts";
 import { frameOf, repairedRow, repairsByRow } from "./rereadRows.server.ts";
-import type { SourceChoice } from "./sourceChoice.ts";
+import { chosenSources, type SourceChoice } from "./sourceChoice.ts";
 
 /** What came of building: the revision and how its lines came about. */
 export interface BuiltRevision {
@@ -31,6 +31,8 @@ export interface BuiltRevision {
   newValues: number;
   changedValues: number;
   same: number;
+  /** Species of the table that get a name, a CAS number or synonyms. */
+  renamed: number;
 }
 
 /**
@@ -65,13 +67,18 @@ export async function buildRevision(
     const edition = (await findNewestEdition(trx))?.number ?? 0;
     const stored = await findReadRows(sheetId, trx);
     const { rows, candidates } = await matchAgain(sheetId, stored, frame, edition, trx);
-    const source = await sourceOf(sheet.sourceChoice, edition, trx);
+    const sources = await sourcesOf(sheet.sourceChoice, edition, trx);
+    if (counts.values > 0 && sources.length === 0) {
+      throw new Refused("No source was chosen for this sheet. Go back to the columns and choose it.");
+    }
 
     const ids = new Map<string, string>();
     const built = buildLines(rows, {
       settings: sheet.settings,
-      source,
+      source: sources.find((one) => one.key === null) ?? null,
+      sourcesByKey: new Map(sources.flatMap((one) => (one.key === null ? [] : [[one.key, one] as const]))),
       bases: await basesOf(rows, edition, trx),
+      details: await detailsOf(rows, edition, trx),
       unnamed: candidates.filter((one) => !one.named),
       speciesId: (key) => {
         const id = ids.get(key) ?? `sp_${randomUUID().replaceAll("-", "")}`;
@@ -79,14 +86,16 @@ export async function buildRevision(
         return id;
       },
     });
-    if (!built.lines.some((line) => line.kind === "value")) {
+    if (!built.lines.some((line) => line.kind !== "source")) {
       throw new Refused(
         counts.values === 0
-          ? "No row was read to a value, so there is nothing to propose."
+          ? "No row was read to a value, a name or a number that the table lacks, so there is nothing to propose."
           : `All ${built.same} values of this sheet stand already with the same digits and source, so there is nothing to propose.`,
       );
     }
-    if (source.isNew && !source.exists) await insertSource(source.id, trx);
+    const proposed = new Set(built.lines.flatMap((line) => line.sourceId ?? []));
+    const made = new Set(sources.flatMap((one) => (!one.exists && proposed.has(one.id) ? [one.id] : [])));
+    for (const id of made) await insertSource(id, trx);
     await insertSpecies(built.newSpecies, trx);
     const revisionId = await insertRevisionWithLines(
       acting,
@@ -101,6 +110,7 @@ export async function buildRevision(
       newValues: built.newValues,
       changedValues: built.changedValues,
       same: built.same,
+      renamed: built.renamed,
     };
     record({
       act: "sheet.built",
@@ -147,33 +157,77 @@ async function matchAgain(
   return { rows, candidates };
 }
 
-/** The source of the sheet's values. One that another open revision proposes is proposed here again, word for word. */
-async function sourceOf(
-  choice: SourceChoice | null,
-  edition: number,
-  trx: ActScope["trx"],
-): Promise<SheetSource & { exists: boolean }> {
-  if (choice?.kind === "known") {
-    const known = (await findChoosableSources(edition, trx)).find((one) => one.sourceId === choice.sourceId);
-    if (!known) {
-      throw new Refused(
-        "The source chosen for this sheet is not proposed any more. Go back to the columns and choose another.",
-      );
+interface ChosenSource extends SheetSource {
+  /** The key it was chosen for; null is the sheet as a whole or its rows without a key. */
+  key: string | null;
+  /** Whether its identity is there already. */
+  exists: boolean;
+}
+
+/**
+ * The sources of the sheet's values. One that another open revision proposes is proposed here again, word for word; two
+ * keys that were answered with one new source share it.
+ */
+async function sourcesOf(choice: SourceChoice | null, edition: number, trx: ActScope["trx"]): Promise<ChosenSource[]> {
+  const chosen = chosenSources(choice);
+  if (chosen.length === 0) return [];
+  const choosable = await findChoosableSources(edition, trx);
+  const described = new Map<string, ChosenSource>();
+  return chosen.map(({ key, choice: one }): ChosenSource => {
+    if (one.kind === "known") {
+      const known = choosable.find((each) => each.sourceId === one.sourceId);
+      if (!known) {
+        throw new Refused(
+          "The source chosen for this sheet is not proposed any more. Go back to the columns and choose another.",
+        );
+      }
+      const { citation, doi, kind, notice } = known;
+      return {
+        key,
+        id: known.sourceId,
+        exists: true,
+        isNew: known.named ? null : { kind: "source", citation, doi, sourceKind: kind, notice },
+      };
     }
-    const { citation, doi, kind, notice } = known;
-    return {
-      id: known.sourceId,
-      exists: true,
-      isNew: known.named ? null : { kind: "source", citation, doi, sourceKind: kind, notice },
+    const content = { kind: "source" as const, ...describedSource(one.source) };
+    const same = content.doi?.toLowerCase() ?? JSON.stringify(content);
+    const source = described.get(same) ?? {
+      key,
+      id: `src_${randomUUID().replaceAll("-", "")}`,
+      exists: false,
+      isNew: content,
     };
-  }
-  if (!choice) throw new Refused("No source was chosen for this sheet. Go back to the columns and choose it.");
-  const { source } = choice;
-  return {
-    id: newSourceId(),
-    exists: false,
-    isNew: { kind: "source", ...describedSource(source) },
-  };
+    described.set(same, source);
+    return { ...source, key };
+  });
+}
+
+/** What the species that rows add names or numbers to are called, or wait to be called. */
+async function detailsOf(rows: readonly SettledRow[], edition: number, trx: ActScope["trx"]): Promise<DetailBase[]> {
+  const wanted = new Set(
+    rows.flatMap(({ reading }) =>
+      reading.match.kind === "known" && reading.match.adds ? [reading.match.speciesId] : [],
+    ),
+  );
+  if (wanted.size === 0) return [];
+  const waiting = (await findWaitingLines({ decidedOnly: false }, trx)).flatMap((line): DetailBase[] =>
+    line.content.kind === "detail" && line.speciesId && wanted.has(line.speciesId)
+      ? [{ speciesId: line.speciesId, content: line.content, row: null, version: line.versionId }]
+      : [],
+  );
+  const waits = new Set(waiting.map((one) => one.speciesId));
+  const standing = await findDetailsAsOf(edition, { speciesIds: [...wanted] }, trx);
+  return [
+    ...waiting,
+    ...standing
+      .filter((one) => !waits.has(one.speciesId))
+      .map(({ speciesId, key, printed, label, name, cas, inchikey, synonyms, rowId }): DetailBase => ({
+        speciesId,
+        content: { kind: "detail", key, printed, label, name, cas, inchikey, synonyms: [...synonyms] },
+        row: rowId,
+        version: null,
+      })),
+  ];
 }
 
 /** What stands or waits for the species that the rows know. */

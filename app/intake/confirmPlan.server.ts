@@ -14,16 +14,17 @@ import {
   updateSheetFailed,
   updateSheetReopened,
 } from "./intake.queries.server.ts";
-import { checkPlan, type ColumnPlan, type SheetSettings } from "./plan.ts";
+import { checkPlan, type ColumnPlan, columnsOf, holdsValues, type SheetSettings } from "./plan.ts";
 import { headsHash } from "./receiveSheet.server.ts";
-import type { SourceChoice } from "./sourceChoice.ts";
+import { chosenSources, type SourceChoice } from "./sourceChoice.ts";
 import { mayMove, type SheetState, sheetStateWords } from "./states.ts";
 
 /** What the steward confirms: every column, what holds for the whole sheet, and where its values come from. */
 export interface ConfirmedPlan {
   columns: ColumnPlan;
   settings: SheetSettings;
-  source: SourceChoice;
+  /** Null for a sheet without values: what a species is called has no source of its own. */
+  source: SourceChoice | null;
 }
 
 /** The sheet, held until the act ends, if it may go to the state that the act leads to. */
@@ -55,7 +56,7 @@ export async function confirmPlan(acting: Acting, sheetId: number, confirmed: Co
     }
     const errors = checkPlan(confirmed.columns, confirmed.settings);
     if (errors.length > 0) throw new Invalid(errors[0]?.detail ?? "The plan is not complete.", errors);
-    await checkSource(confirmed.source, trx);
+    await checkSources(confirmed, sheet.plan?.keys ?? [], trx);
 
     await updateSheetConfirmed(
       sheetId,
@@ -90,22 +91,42 @@ export async function confirmPlan(acting: Acting, sheetId: number, confirmed: Co
   });
 }
 
-/** A known source must be there; a new one must not be there already. */
-async function checkSource(choice: SourceChoice, trx: ActScope["trx"]): Promise<void> {
-  const edition = (await findNewestEdition(trx))?.number ?? 0;
-  const sources = await findChoosableSources(edition, trx);
+/** Values need a source; a known one must be there, a new one must not be there already. */
+async function checkSources(
+  { columns, source }: ConfirmedPlan,
+  keysOfColumns: readonly (readonly string[])[],
+  trx: ActScope["trx"],
+): Promise<void> {
   const refuse = (sentence: string, pointer: string): never => {
     throw new Invalid(sentence, [{ pointer, detail: sentence }]);
   };
-  if (choice.kind === "known") {
-    if (!sources.some((one) => one.sourceId === choice.sourceId)) {
-      refuse("This source is neither in the table nor proposed. Choose another, or describe a new one.", "/source");
-    }
-    return;
+  if (!holdsValues(columns)) return;
+  if (source === null) return refuse("Say where the values come from.", "/source");
+  const [keyColumn] = columnsOf(columns, "sourceKey");
+  if ((source.kind === "byKey") !== (keyColumn !== undefined)) {
+    return refuse(
+      keyColumn === undefined
+        ? "Sources are given by key, but no column holds the keys."
+        : "A column holds source keys. Say which source each of them stands for.",
+      "/source",
+    );
   }
-  const { doi } = choice.source;
-  const twin = doi === "" ? undefined : sources.find((one) => one.doi?.toLowerCase() === doi.toLowerCase());
-  if (twin) refuse("A source with this DOI is there already. Choose it from the list instead.", "/source/doi");
+  const chosen = chosenSources(source);
+  if (chosen.length === 0) return refuse("Say of at least one key which source it stands for.", "/source");
+  const edition = (await findNewestEdition(trx))?.number ?? 0;
+  const sources = await findChoosableSources(edition, trx);
+  for (const { key, choice } of chosen) {
+    const at = key === null ? "/source" : `/keys/${keysOfColumns[keyColumn ?? -1]?.indexOf(key) ?? 0}`;
+    if (choice.kind === "known") {
+      if (!sources.some((one) => one.sourceId === choice.sourceId)) {
+        refuse("This source is neither in the table nor proposed. Choose another, or describe a new one.", at);
+      }
+      continue;
+    }
+    const { doi } = choice.source;
+    const twin = doi === "" ? undefined : sources.find((one) => one.doi?.toLowerCase() === doi.toLowerCase());
+    if (twin) refuse("A source with this DOI is there already. Choose it from the list instead.", `${at}/doi`);
+  }
 }
 
 /** Goes back from the read rows, or from a stopped reading, to the columns. Repairs are kept. */

@@ -78,12 +78,12 @@ test("calder-point-messy.csv: titles and blanks are skipped, each slip of spelli
     return [number, row?.outcome === "refused" ? row.problems[0]?.column : null];
   });
   expect(refused).toEqual([
-    [8, 3], // a CAS number whose check digit is wrong, and a footnote mark
+    [8, 3], // a CAS number whose check digit is wrong; the footnote mark beside it is taken off
     [10, 4], // CaO(cr) twice
     [14, 6], // a negative entropy
     [18, 0], // SO42-
     [21, 4],
-    [22, null], // a cell lost
+    [22, null], // a decimal comma between commas makes a cell too many
     [24, 2], // C(cr) without its form
   ]);
   // What only the table can tell: joules for kilojoules and exchanged digits are read, and found by the examination.

@@ -61,6 +61,7 @@ export function readHead(text: string): HeadReading {
   const property = propertyOf(symbol);
   if (property) return { ...base, means: "value", property, ...unitFor(property, unit, energy) };
 
+  if (TEMPERATURE_HEAD.test(plain)) return { ...NOTHING, means: "temperature" };
   const means = WORDS[letters(symbol)] ?? null;
   return { ...base, means, unit: means === "anyValue" ? unit : null };
 }
@@ -93,6 +94,9 @@ const PROPERTY_NAMES: readonly (readonly [Property, RegExp])[] = [
   ["enthalpyIncrement", /^(?:enthalpyincrement|incrementofenthalpy|hth0|h298h0)$/],
 ];
 
+/** `T`, `T / K`, `temperature (°C)`; not `Tc`, which is the critical temperature. */
+const TEMPERATURE_HEAD = /^(?:T|temp(?:erature)?\.?)(?:\s*(?:[/([_,]|in\b)\s*°?\s*[KC]\s*[)\]]?)?$/i;
+
 /** Words that name the other columns, as letters only. */
 const WORDS: Readonly<Record<string, ColumnMeans>> = Object.assign(Object.create(null) as Record<string, ColumnMeans>, {
   formula: "formula",
@@ -119,6 +123,14 @@ const WORDS: Readonly<Record<string, ColumnMeans>> = Object.assign(Object.create
   substancename: "name",
   compoundname: "name",
   chemicalname: "name",
+  iupacname: "name",
+  systematicname: "name",
+  synonym: "synonyms",
+  synonyms: "synonyms",
+  othername: "synonyms",
+  othernames: "synonyms",
+  commonname: "synonyms",
+  trivialname: "synonyms",
   cas: "cas",
   casno: "cas",
   casnr: "cas",
@@ -130,6 +142,14 @@ const WORDS: Readonly<Record<string, ColumnMeans>> = Object.assign(Object.create
   molarmass: "molarMass",
   molecularweight: "molarMass",
   formulaweight: "molarMass",
+  source: "sourceKey",
+  sourcekey: "sourceKey",
+  sourceid: "sourceKey",
+  ref: "sourceKey",
+  refkey: "sourceKey",
+  reference: "sourceKey",
+  citation: "sourceKey",
+  citationkey: "sourceKey",
   remark: "remark",
   remarks: "remark",
   note: "remark",

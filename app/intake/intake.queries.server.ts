@@ -54,6 +54,8 @@ export interface StoredPlan {
   samples: readonly (readonly string[])[];
   /** Whether a cell says only that something is solid, so that the page asks what that means. */
   bareSolid: boolean;
+  /** The different texts of each column that could be keys of sources; left out in sheets planned before they were. */
+  keys?: readonly (readonly string[])[];
 }
 
 /** A sheet without its bytes and rows. */
@@ -174,7 +176,7 @@ export async function updateSheetReopened(id: number, trx: Database): Promise<vo
 /** The plan is confirmed and the rows are to be read. */
 export async function updateSheetConfirmed(
   id: number,
-  confirmed: { plan: StoredPlan; settings: SheetSettings; sourceChoice: SourceChoice; by: string },
+  confirmed: { plan: StoredPlan; settings: SheetSettings; sourceChoice: SourceChoice | null; by: string },
   trx: Database,
 ): Promise<void> {
   await trx
@@ -183,7 +185,7 @@ export async function updateSheetConfirmed(
       state: "reading",
       plan: JSON.stringify(confirmed.plan),
       settings: JSON.stringify(confirmed.settings),
-      source_choice: JSON.stringify(confirmed.sourceChoice),
+      source_choice: confirmed.sourceChoice === null ? null : JSON.stringify(confirmed.sourceChoice),
       plan_confirmed_by: confirmed.by,
       plan_confirmed_at: new Date(),
       rows_done: 0,

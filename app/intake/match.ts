@@ -24,9 +24,24 @@ export interface Candidate {
   readonly revisionId: number | null;
 }
 
+/** What a row adds to what the table calls a species it knows. */
+export interface Additions {
+  /** Null where the table has a name, or the row has none. */
+  readonly name: string | null;
+  readonly cas: string | null;
+  readonly synonyms: readonly string[];
+}
+
 /** Which species a row is. */
 export type SpeciesMatch =
-  | { readonly kind: "known"; readonly speciesId: string; readonly key: string; readonly note: string | null }
+  | {
+      readonly kind: "known";
+      readonly speciesId: string;
+      readonly key: string;
+      readonly note: string | null;
+      /** Left out where the row adds nothing. */
+      readonly adds?: Additions;
+    }
   /** A species new to the table; rows of one sheet with the same key are one species. */
   | { readonly kind: "new"; readonly key: string; readonly label: string | null };
 
@@ -84,19 +99,33 @@ function matchRow(row: RowToMatch, candidates: readonly Candidate[], frame: Shee
     phase: reading.species.phase,
     ...(reading.species.label === null ? {} : { label: reading.species.label }),
   });
-  const known = (candidate: Candidate, note: string | null): MatchOutcome => ({
-    outcome: "read",
-    reading: { ...reading, match: { kind: "known", speciesId: candidate.speciesId, key: candidate.key, note } },
-  });
-  const ask = (sentence: string, choices: readonly Candidate[], another: boolean): MatchOutcome => ({
+  const known = (candidate: Candidate, note: string | null): MatchOutcome => {
+    const adds = additionsTo(candidate, reading);
+    const notes = [note, ...notesOn(candidate, reading, adds)].filter((one) => one !== null).join(" ") || null;
+    const { speciesId, key: itsKey } = candidate;
+    return {
+      outcome: "read",
+      reading: { ...reading, match: { kind: "known", speciesId, key: itsKey, note: notes, ...(adds ? { adds } : {}) } },
+    };
+  };
+  const ask = (
+    sentence: string,
+    choices: readonly Candidate[],
+    another: boolean,
+    byName: ReadonlySet<Candidate> = new Set(),
+  ): MatchOutcome => ({
     outcome: "refused",
     problems: [
       {
         column: speciesColumn(frame),
         sentence,
         repairs: [
-          ...choices.map((one): Repair => ({ label: `It is ${one.key}`, column: ANSWER, text: one.key })),
-          ...(another ? [{ label: "It is another species", column: ANSWER, text: "new" }] : []),
+          ...choices.map((one): Repair => ({
+            label: byName.has(one) ? `It is another name of ${one.key}` : `It is ${one.key}`,
+            column: ANSWER,
+            text: one.key,
+          })),
+          ...(another ? [{ label: "It is another substance", column: ANSWER, text: "new" }] : []),
         ],
       },
     ],
@@ -131,6 +160,7 @@ function matchRow(row: RowToMatch, candidates: readonly Candidate[], frame: Shee
       `The table holds ${listed(keys)} of the same composition and phase. ${doubtful[0]?.verdict.why ?? "Nothing says which it is."} Is ${key} ${keys.length === 1 ? "the same substance" : "one of them"}?`,
       doubtful.map(({ one }) => one),
       true,
+      new Set(doubtful.filter(({ verdict: { why } }) => why?.startsWith("The names differ")).map(({ one }) => one)),
     );
   }
 
@@ -169,6 +199,7 @@ export function settleRows(rows: readonly RowToSettle[], frame: SheetFrame): Mat
     }
   }
   for (const group of byPlace.values()) settleNewSpecies(group, outcomes, frame);
+  settleAdditions(rows, outcomes, frame);
   refuseDuplicates(rows, outcomes);
   return rows.map((row) => outcomes.get(row.number) ?? { outcome: "read", reading: row.reading });
 }
@@ -199,6 +230,7 @@ function settleNewSpecies(rows: readonly RowToSettle[], outcomes: Map<number, Ma
         label: joined.mention.label ?? mention.label,
         name: joined.mention.name ?? mention.name,
         cas: joined.mention.cas ?? mention.cas,
+        synonyms: [...joined.mention.synonyms, ...mention.synonyms],
       };
       continue;
     }
@@ -232,6 +264,42 @@ function settleNewSpecies(rows: readonly RowToSettle[], outcomes: Map<number, Ma
     for (const row of cluster.rows) {
       outcomes.set(row.number, { outcome: "read", reading: { ...row.reading, match: { kind: "new", key, label } } });
     }
+  }
+}
+
+/** Two rows that would give one species of the table different names or CAS numbers are a question. */
+function settleAdditions(rows: readonly RowToSettle[], outcomes: Map<number, MatchOutcome>, frame: SheetFrame): void {
+  const first = new Map<string, { row: number; adds: Additions }>();
+  for (const { number, reading } of rows) {
+    const { match } = reading;
+    if (match.kind !== "known" || !match.adds) continue;
+    const { adds } = match;
+    const before = first.get(match.speciesId);
+    if (!before) {
+      first.set(match.speciesId, { row: number, adds });
+      continue;
+    }
+    const names =
+      before.adds.name !== null && adds.name !== null && plainName(before.adds.name) !== plainName(adds.name);
+    const numbers = before.adds.cas !== null && adds.cas !== null && before.adds.cas !== adds.cas;
+    if (names || numbers) {
+      const what = names
+        ? `calls ${match.key} ${before.adds.name ?? ""}, this one ${adds.name ?? ""}. Write one of them here, or the second among the synonyms.`
+        : `gives ${match.key} the CAS number ${before.adds.cas ?? ""}, this one ${adds.cas ?? ""}. One of them is wrong, or the rows are two substances.`;
+      const column = columnsOf(frame.plan, names ? "name" : "cas")[0] ?? speciesColumn(frame);
+      const problem: CellProblem = {
+        column,
+        sentence: `Row ${before.row} ${what}`,
+        repairs: [],
+        amongRows: [before.row],
+      };
+      outcomes.set(number, { outcome: "refused", problems: [problem] });
+      continue;
+    }
+    first.set(match.speciesId, {
+      row: before.row,
+      adds: { ...before.adds, name: before.adds.name ?? adds.name, cas: before.adds.cas ?? adds.cas },
+    });
   }
 }
 
@@ -307,17 +375,67 @@ function compareMentions(row: Mention, other: Mention, phase: Phase): Verdict {
 }
 
 function compareNames(row: Mention, other: Mention): "agree" | "differ" | "unknown" {
-  if (!row.name || !(other.name || other.synonyms.length > 0)) return "unknown";
-  const plain = (text: string): string => text.toLowerCase().replace(/[^\p{L}\p{N}]/gu, "");
-  const known = [other.name ?? "", ...other.synonyms].map(plain);
-  return known.includes(plain(row.name)) ? "agree" : "differ";
+  const own = namesOf(row);
+  const known = new Set(namesOf(other).map(plainName));
+  if (own.length === 0 || known.size === 0) return "unknown";
+  return own.some((name) => known.has(plainName(name))) ? "agree" : "differ";
+}
+
+const namesOf = (mention: Pick<Mention, "name" | "synonyms">): string[] =>
+  [mention.name ?? "", ...mention.synonyms].filter((name) => name !== "");
+
+/** Words of the phase behind a name: "water, liquid", "iodine (g)". The key says the phase. */
+const PHASE_WORDS =
+  /(?:,\s*|\s*\(\s*|\s+)(?:liquid|gas(?:eous)?|vapou?r|solid|crystal(?:line)?|aqueous|in water|\(?(?:g|l|s|cr|c|aq|liq)\)?)\s*\)?$/i;
+
+/** A name without the phase behind it. */
+function withoutPhase(name: string): string {
+  const bare = name.trim().replace(PHASE_WORDS, "");
+  return /\p{L}{2}/u.test(bare) ? bare : name.trim();
+}
+
+/** What two spellings of one name have in common: letters and digits, in small letters, without the phase. */
+const plainName = (name: string): string => {
+  const letters = withoutPhase(name)
+    .toLowerCase()
+    .replace(/[^\p{L}\p{N}]/gu, "");
+  return letters === "" ? name : letters;
+};
+
+/** What the row says of the substance that the table does not have yet. A name or number that stands is never replaced. */
+function additionsTo(candidate: Candidate, { species }: RowReading): Additions | null {
+  const named = species.name === null ? null : withoutPhase(species.name);
+  const name = candidate.name === "" && named !== null ? named : null;
+  const known = new Set(namesOf(candidate).map(plainName));
+  if (name !== null) known.add(plainName(name));
+  const synonyms: string[] = [];
+  for (const one of [named ?? "", ...(species.synonyms ?? [])]) {
+    if (one === "" || known.has(plainName(one))) continue;
+    known.add(plainName(one));
+    synonyms.push(one);
+  }
+  const cas = candidate.cas === null ? species.cas : null;
+  return name === null && cas === null && synonyms.length === 0 ? null : { name, cas, synonyms };
+}
+
+/** What the record should say of a row whose name or number is not the table's. */
+function notesOn(candidate: Candidate, { species }: RowReading, adds: Additions | null): string[] {
+  const notes: string[] = [];
+  const named = species.name === null ? null : withoutPhase(species.name);
+  if (named !== null && adds?.synonyms.includes(named))
+    notes.push(`${named} is kept as a synonym of ${candidate.key}.`);
+  if (species.cas !== null && candidate.cas !== null && species.cas !== candidate.cas) {
+    notes.push(`The CAS number ${candidate.cas} of ${candidate.key} stays; ${species.cas} is not taken over.`);
+  }
+  return notes;
 }
 
 const differentNames = (row: Mention, other: Mention): string =>
   `The names differ (${row.name ?? ""} here, ${other.name ?? ""} there).`;
 
 function mentionOf({ species }: RowReading): Mention {
-  return { printed: species.formula.printed, label: species.label, name: species.name, cas: species.cas, synonyms: [] };
+  const { formula, label, name, cas, synonyms = [] } = species;
+  return { printed: formula.printed, label, name, cas, synonyms };
 }
 
 function labelFromName(name: string | null): string | null {

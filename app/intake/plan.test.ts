@@ -168,16 +168,16 @@ describe("units", () => {
   });
 });
 
-test("what the sheet says of itself is noticed, and no pressure is taken from it", () => {
+test("what the sheet says of itself is filled in, to be confirmed", () => {
   const guess = planColumns(
     sheetOf("Values at 298.15 K and 1 atm\nformula,phase,S (cal/mol/K)\nCO,g,47.2\n"),
     NO_CONTEXT,
   );
   expect(guess.notices).toEqual([
-    "The sheet speaks of 1 atm. Say at which standard pressure its values are.",
+    "The sheet speaks of 1 atm: its values are brought to 1 bar (100 kPa), each with the step beside it.",
     "The sheet speaks of 298.15 K (25 °C).",
   ]);
-  expect(guess.settings).toMatchObject({ temperature: null, standardPressure: null });
+  expect(guess.settings).toMatchObject({ temperature: "298.15", standardPressure: "101325" });
 });
 
 test("hills, first values and bare solids of a sheet", () => {
@@ -222,7 +222,6 @@ describe("what stops a plan", () => {
   test.each<[string, Partial<SheetSettings>, string]>([
     ["no temperature", { temperature: null }, "/settings/temperature"],
     ["no pressure", { standardPressure: null }, "/settings/standardPressure"],
-    ["1 atm, which is not converted", { standardPressure: "101325" }, "/settings/standardPressure"],
     ["uncertainties of a kind not said", { uncertaintyKind: null }, "/settings/uncertaintyKind"],
   ])("%s", (_what, change, pointer) => {
     expect(pointers(plan, { ...said, ...change })).toEqual([pointer]);

@@ -10,7 +10,8 @@ import { readKey } from "#app/thermo/speciesKey.ts";
 import { conversionFactor, isLikeUnit, readUnit, type Unit, UNITS } from "#app/thermo/unit.ts";
 import type { DecodedSheet } from "./decode.ts";
 import { type HeadReading, propertyOf, readHead } from "./head.ts";
-import { isAbsent } from "./cells.ts";
+import { isAbsent, isComment, isUnitsRow } from "./cells.ts";
+import { readTemperature } from "./temperature.ts";
 import { COLUMN_MEANS, type ColumnMeans, meaningWords } from "./meaning.ts";
 
 const propertyCode = z.enum(PROPERTIES as [Property, ...Property[]]);
@@ -91,23 +92,25 @@ export function planColumns(sheet: DecodedSheet, context: PlanContext): PlanGues
     if (!reading || !sample) throw new RangeError("a head without a column");
     return { head, ...guessColumn(reading, sample, decimalComma) };
   });
+  unitsBelowHeads(plan, sheet);
   longSheets(plan);
   uncertaintiesFollowValues(plan);
   onlyOnce(plan);
   unitsFromTable(plan, sheet, context);
+  const stated = statementsOf(sheet, heads, plan);
 
   return {
     plan,
     settings: {
-      temperature: null,
-      standardPressure: null,
-      basis: null,
+      temperature: stated.temperature,
+      standardPressure: stated.standardPressure,
+      basis: stated.basis,
       uncertaintyKind: null,
       decimalComma,
       solidIs: "cr",
       method: null,
     },
-    notices: noticesOf(sheet, heads),
+    notices: stated.notices,
   };
 }
 
@@ -139,6 +142,15 @@ export function columnsOf(plan: ColumnPlan, means: ColumnMeans): number[] {
 /** Whether any column holds uncertainties, so that their kind has to be said. */
 export function hasUncertainties(plan: ColumnPlan): boolean {
   return plan.some((column) => column.means === "uncertainty" || column.means === "anyUncertainty");
+}
+
+/** Whether any column holds values. A sheet without one can still say what species are called. */
+export function holdsValues(plan: ColumnPlan): boolean {
+  return plan.some((column) => column.means === "value" || column.means === "anyValue");
+}
+
+function holdsNames(plan: ColumnPlan): boolean {
+  return plan.some((column) => column.means === "name" || column.means === "cas" || column.means === "synonyms");
 }
 
 /** How a column is called in a sentence. */
@@ -174,7 +186,10 @@ export function checkPlan(plan: ColumnPlan, settings: SheetSettings): FieldError
 
   const values = indexes("value");
   const long = indexes("anyValue").length > 0;
-  if (values.length === 0 && !long) add("/columns", "No column holds values. Say which quantity is in which column.");
+  const valued = holdsValues(plan);
+  if (!valued && !holdsNames(plan)) {
+    add("/columns", "No column holds values, names or CAS numbers. Say which quantity is in which column.");
+  }
   if (long && indexes("propertyName").length === 0) {
     add("/columns", "A column holds values of different quantities, but none says which quantity. Say which one does.");
   }
@@ -209,6 +224,7 @@ export function checkPlan(plan: ColumnPlan, settings: SheetSettings): FieldError
     }
   }
 
+  if (!valued) return errors;
   if (settings.temperature === null) {
     add(
       "/settings/temperature",
@@ -217,12 +233,6 @@ export function checkPlan(plan: ColumnPlan, settings: SheetSettings): FieldError
   }
   if (settings.standardPressure === null)
     add("/settings/standardPressure", "Say at which standard pressure the values are.");
-  if (settings.standardPressure === "101325") {
-    add(
-      "/settings/standardPressure",
-      "Values at 1 atm are not converted to 100 kPa here yet. Convert S° of gases and ΔfG° in the sheet first (trade practice: S° of a gas + 0.1094 J/(mol K)), then send it as 100 kPa.",
-    );
-  }
   if (settings.uncertaintyKind === null && hasUncertainties(plan)) {
     add(
       "/settings/uncertaintyKind",
@@ -245,6 +255,9 @@ const ONLY_ONCE: readonly ColumnMeans[] = [
   "anyValue",
   "anyUncertainty",
   "unitName",
+  "synonyms",
+  "temperature",
+  "sourceKey",
 ];
 
 type Guess = Omit<PlannedColumn, "head">;
@@ -263,6 +276,7 @@ function sampleOf(sheet: DecodedSheet, index: number): string[] {
   const cells: string[] = [];
   for (const row of sheet.rows) {
     if (row.cells.filter((cell) => cell.trim() !== "").length < 2) continue;
+    if (row.number < sheet.headRow || isComment(row.cells) || isUnitsRow(row.cells)) continue;
     const cell = row.cells[index]?.trim() ?? "";
     if (cell !== "") cells.push(cell);
     if (cells.length === SAMPLE) break;
@@ -310,6 +324,11 @@ function guessColumn(head: HeadReading, sample: readonly string[], decimalComma:
       return guess(head.means, "head, although most cells cannot be read as formulas", { asks: true });
     case "phase":
       return guess("phase", share(isPhase) >= 0.6 ? "head; values from the list of phases" : "head");
+    case "sourceKey": {
+      const keys = new Set(sample).size;
+      if (keys === 0) return guess("ignore", "the column is empty");
+      return guess("sourceKey", `head; ${keys} different ${keys === 1 ? "key" : "keys"}, to be answered below`);
+    }
     case "ignore":
     case null:
       break;
@@ -354,6 +373,19 @@ function uncertaintiesFollowValues(plan: ColumnPlan): void {
         ? "an uncertainty behind a column that is not read"
         : "an uncertainty with no value before it";
     }
+  }
+}
+
+/** Units that stand in a row of their own below the heads. */
+function unitsBelowHeads(plan: ColumnPlan, sheet: DecodedSheet): void {
+  const row = sheet.rows.find((one) => one.number > sheet.headRow && one.cells.some((cell) => cell.trim() !== ""));
+  if (!row || !isUnitsRow(row.cells)) return;
+  for (const [index, column] of plan.entries()) {
+    if (column.means !== "value" || column.unit !== null) continue;
+    const reading = readUnit((row.cells[index] ?? "").trim().replace(/^[[(](.*)[\])]$/, "$1"));
+    if (reading.outcome !== "read") continue;
+    column.unit = reading.value;
+    column.because = `head; the unit stands in row ${row.number}`;
   }
 }
 
@@ -467,19 +499,51 @@ function speciesIn(cells: readonly string[], plan: ColumnPlan): { hill: string; 
   ];
 }
 
-/** Statements about the whole sheet in its heads and titles. */
-function noticesOf(sheet: DecodedSheet, heads: readonly HeadReading[]): string[] {
+interface Statements extends Pick<SheetSettings, "temperature" | "standardPressure" | "basis"> {
+  notices: string[];
+}
+
+/** What the sheet itself says of all its values, in its heads and titles: filled in for the steward, who confirms it. */
+function statementsOf(sheet: DecodedSheet, heads: readonly HeadReading[], plan: ColumnPlan): Statements {
   const notices: string[] = [];
   const titles = sheet.rows.filter((row) => row.number < sheet.headRow).map((row) => row.cells.join(" "));
   const inTitles = (pattern: RegExp): boolean => titles.some((title) => pattern.test(title));
-  if (heads.some((head) => head.pressure === "101325") || inTitles(/\b1\s*atm\b|101[.,]?325\s*k?Pa/i)) {
-    notices.push("The sheet speaks of 1 atm. Say at which standard pressure its values are.");
+  const atm = heads.some((head) => head.pressure === "101325") || inTitles(/\b1\s*atm\b|101[.,]?325\s*k?Pa/i);
+  const bar = heads.some((head) => head.pressure === "100000") || inTitles(/\b1\s*bar\b|100\s*kPa|0[.,]1\s*MPa/i);
+  if (atm && bar) notices.push("The sheet speaks of 1 atm and of 1 bar. Say at which its values are.");
+  else if (atm) {
+    notices.push("The sheet speaks of 1 atm: its values are brought to 1 bar (100 kPa), each with the step beside it.");
+  } else if (bar) notices.push("The sheet speaks of 1 bar (100 kPa).");
+
+  const [column] = columnsOf(plan, "temperature");
+  const cells = column === undefined ? [] : sampleOf(sheet, column);
+  const isReference = (cell: string): boolean =>
+    readTemperature(cell, plan[column ?? -1]?.head ?? "").is === "reference";
+  const named =
+    heads.some((head) => head.temperature === "298.15") ||
+    inTitles(/\b298([.,]15)?\s*K|\b25([.,]0+)?\s*°\s*C/) ||
+    cells.some(isReference);
+  if (named) notices.push("The sheet speaks of 298.15 K (25 °C).");
+  const others = cells.filter((cell) => !isReference(cell)).length;
+  if (others > 0) {
+    notices.push(
+      `${others} ${others === 1 ? "row is" : "rows are"} at another temperature and will be refused: the table is kept at 298.15 K.`,
+    );
   }
-  if (heads.some((head) => head.pressure === "100000") || inTitles(/\b1\s*bar\b|100\s*kPa|0[.,]1\s*MPa/i)) {
-    notices.push("The sheet speaks of 1 bar (100 kPa).");
+  const other = titles
+    .map((title) => /\b(\d{3,4}(?:[.,]\d+)?)\s*K\b/.exec(title)?.[1])
+    .find((one) => one && !/^298/.test(one));
+  if (!named && other) {
+    notices.push(
+      `The sheet speaks of ${other} K, and the table is kept at 298.15 K: values at another temperature are not taken in.`,
+    );
   }
-  if (heads.some((head) => head.temperature === "298.15") || inTitles(/298([.,]15)?\s*K|25\s*°\s*C/)) {
-    notices.push("The sheet speaks of 298.15 K (25 °C).");
-  }
-  return notices;
+  const molality = inTitles(/\b1\s*mol\s*(?:\/\s*kg|kg-1|kg⁻¹)|\bmolality\b/i);
+  const concentration = inTitles(/\b1\s*mol\s*(?:\/\s*(?:L|dm3|dm³)|L-1|L⁻¹|dm-3|dm⁻³)|\b1\s*M\b/);
+  return {
+    temperature: named ? "298.15" : null,
+    standardPressure: atm === bar ? null : atm ? "101325" : "100000",
+    basis: molality === concentration ? null : molality ? "molality" : "concentration",
+    notices,
+  };
 }

@@ -1,4 +1,5 @@
 import { PROPERTIES, propertyInfo } from "#app/thermo/property.ts";
+import type { SourceField } from "#app/sources/sourceFields.ts";
 import { UNITS } from "#app/thermo/unit.ts";
 import { COLUMN_MEANS, meaningWords } from "./meaning.ts";
 import type { PlannedColumn } from "./plan.ts";
@@ -11,6 +12,9 @@ import type { PlannedColumn } from "./plan.ts";
 /** Names of the fields of a column. */
 export const meansField = (index: number): string => `means.${index}`;
 export const unitField = (index: number): string => `unit.${index}`;
+
+/** The field of the answer to a source key, by its place among the keys of its column; `.title` and so on behind it. */
+export const keyField = (index: number): string => `key.${index}`;
 
 /** The value of a column's choice: its meaning and, where that needs one, the quantity (`value:entropy`). */
 export function meaningValue(column: Pick<PlannedColumn, "means" | "property">): string {
@@ -70,6 +74,16 @@ export const SETTING_OPTIONS = {
     ["s", "solid of a form not said (s)"],
   ],
 } as const satisfies Record<string, readonly (readonly [string, string])[]>;
+
+/** What is asked of a source that is described for one key: enough to find it; the rest is mended on its page. */
+export const KEY_SOURCE_FIELDS: ReadonlySet<SourceField> = new Set([
+  "authors",
+  "title",
+  "container",
+  "year",
+  "doi",
+  "sourceKind",
+]);
 
 /** The choice of the source field that stands for one described below it. */
 export const NEW_SOURCE = "new";

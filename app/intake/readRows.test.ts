@@ -165,7 +165,8 @@ describe("a row that is refused says at which cell, and how to mend it", () => {
     ["an uncertainty of zero", "H2O,l,,-285.83,0,", 4, /by convention/, [""]],
     ["two uncertainties that differ", "H2O,l,,-285.83 ± 0.05,0.04,", 4, /Leave one/, []],
     ["an uncertainty without its value", "H2O,l,,,0.04,69.95", 3, /Was the value lost/, []],
-    ["a cell too few", "H2O,l,,-285.83,0.04", null, /has 5 cells where the heads name 6/, []],
+    ["a cell lost before the values", "H2O,l,-285.83,0.04,69.95", null, /has 5 cells where the heads name 6/, []],
+    ["every value lost", "H2O,l,", null, /has 3 cells where the heads name 6/, []],
     ["a cell too many", "H2O,l,,-285.83,0.04,69.95,1", null, /has 7 cells where the heads name 6/, []],
   ])("%s", (_what, row, column, sentence, repairs) => {
     const [problem] = problemsOf(`${HEADS}\n${row}\n`);

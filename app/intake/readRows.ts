@@ -10,11 +10,13 @@ import { isConventionalZero } from "#app/thermo/referenceStates.ts";
 import { formatKey, readKey, type SpeciesIdentity } from "#app/thermo/speciesKey.ts";
 import type { Uncertainty } from "#app/thermo/uncertainty.ts";
 import { convert, isLikeUnit, readUnit, type Unit } from "#app/thermo/unit.ts";
-import { isAbsent } from "./cells.ts";
+import { printedAtBar } from "#app/thermo/standardState.ts";
+import { isAbsent, isComment, isUnitsRow, namesDelimiter } from "./cells.ts";
 import { readDescription } from "./description.ts";
 import { propertyOf } from "./head.ts";
 import type { ColumnMeans } from "./meaning.ts";
 import { type ColumnPlan, columnsOf, type SheetSettings } from "./plan.ts";
+import { readTemperature } from "./temperature.ts";
 
 /** A row as it came, with the repairs of its cells laid over it. */
 export interface SheetRow {
@@ -58,8 +60,12 @@ export interface RowReading {
     readonly label: string | null;
     readonly name: string | null;
     readonly cas: string | null;
+    /** Further names of the substance; left out in rows that were read before synonyms were. */
+    readonly synonyms?: readonly string[];
   };
   readonly values: readonly ReadValue[];
+  /** The key by which the row names its source; null where the sheet has no such column or the cell is empty. */
+  readonly sourceKey?: string | null;
   readonly remark: string | null;
   /** What was taken for granted while reading, each a sentence. */
   readonly notes: readonly string[];
@@ -76,6 +82,8 @@ export interface SheetFrame {
   readonly headRow: number;
   readonly plan: ColumnPlan;
   readonly settings: SheetSettings;
+  /** Which source keys were answered, where a column holds them; the empty key is a row without one. */
+  readonly sourceKeys?: ReadonlySet<string>;
 }
 
 /** Reads every row; a row never stops the others. */
@@ -90,19 +98,8 @@ export function readRow(row: SheetRow, frame: SheetFrame): RowOutcome {
 
   const { plan } = frame;
   const problems: CellProblem[] = [];
-  const filled = row.cells.findLastIndex((cell) => cell.trim() !== "") + 1;
-  if (filled > frame.heads.length || row.cells.length < frame.heads.length) {
-    const count = Math.max(filled, Math.min(row.cells.length, frame.heads.length));
-    return {
-      outcome: "refused",
-      problems: [
-        problem(
-          null,
-          `The row has ${count} ${count === 1 ? "cell" : "cells"} where the heads name ${frame.heads.length}. A delimiter is missing or doubled, or a text that holds one lacks its quotation marks.`,
-        ),
-      ],
-    };
-  }
+  const ragged = whyRagged(row, frame);
+  if (ragged !== null) return { outcome: "refused", problems: [problem(null, ragged)] };
 
   const cell = (means: ColumnMeans): { text: string; column: number } => {
     const column = columnsOf(plan, means)[0] ?? -1;
@@ -118,6 +115,13 @@ export function readRow(row: SheetRow, frame: SheetFrame): RowOutcome {
   }
 
   const notes = [...(named?.notes ?? [])];
+  if (row.cells.length < frame.heads.length) {
+    notes.push(
+      `The row has ${row.cells.length} cells where the heads name ${frame.heads.length}; the missing ones are read as empty.`,
+    );
+  }
+  readRowTemperature(row, frame, problems, notes);
+  const sourceKey = readSourceKey(cell("sourceKey"), frame, problems);
   const values = named
     ? readValues(row, named.identity, frame, problems, notes)
     : readValues(row, null, frame, problems, notes);
@@ -131,6 +135,11 @@ export function readRow(row: SheetRow, frame: SheetFrame): RowOutcome {
         label: named.identity.label ?? null,
         name: cell("name").text || named.name,
         cas: readNumberOfCas?.outcome === "read" ? readNumberOfCas.value : null,
+        // Commas stand inside names (1,2-ethanediol), so only semicolons and bars stand between them.
+        synonyms: cell("synonyms")
+          .text.split(/[;|]/)
+          .map((name) => name.trim())
+          .filter((name) => !isAbsent(name)),
       },
       values,
       remark:
@@ -138,8 +147,69 @@ export function readRow(row: SheetRow, frame: SheetFrame): RowOutcome {
           .filter(Boolean)
           .join("; ") || null,
       notes,
+      sourceKey,
     },
   };
+}
+
+/**
+ * Why a row with another number of cells than there are heads cannot be read; null when it can. Cells beyond the heads may
+ * be blank, and cells missing at the end are empty. A cell lost in the middle shows by a number among the words.
+ */
+function whyRagged(row: SheetRow, { heads, plan }: SheetFrame): string | null {
+  const filled = row.cells.findLastIndex((cell) => cell.trim() !== "") + 1;
+  const sentence = (count: number): string =>
+    `The row has ${count} ${count === 1 ? "cell" : "cells"} where the heads name ${heads.length}. A delimiter is missing or doubled, or a text that holds one lacks its quotation marks.`;
+  if (filled > heads.length) return sentence(filled);
+  if (row.cells.length >= heads.length) return null;
+  const isValue = (means: ColumnMeans): boolean => means === "value" || means === "anyValue";
+  const holds = (means: (one: ColumnMeans) => boolean): boolean =>
+    plan.some((column, index) => means(column.means) && !isAbsent(row.cells[index] ?? ""));
+  const shifted = plan.some(
+    (column, index) => WORDED.has(column.means) && /^[-−–+]?\d+(?:[.,]\d+)?$/.test(row.cells[index]?.trim() ?? ""),
+  );
+  return shifted || !(holds(isValue) || holds((means) => NAMING.has(means))) ? sentence(row.cells.length) : null;
+}
+
+/** Columns in which a bare number is out of place. */
+const WORDED: ReadonlySet<ColumnMeans> = new Set(["phase", "label", "description", "name", "cas", "synonyms"]);
+
+/** Columns that say what a species is called. */
+const NAMING: ReadonlySet<ColumnMeans> = new Set(["name", "cas", "synonyms"]);
+
+/** A row at another temperature than the table's is refused, whatever the sheet is said to be at. */
+function readRowTemperature(row: SheetRow, frame: SheetFrame, problems: CellProblem[], notes: string[]): void {
+  const [column] = columnsOf(frame.plan, "temperature");
+  const text = column === undefined ? "" : (row.cells[column]?.trim() ?? "");
+  if (column === undefined || isAbsent(text)) return;
+  const reading = readTemperature(text, frame.heads[column] ?? "");
+  if (reading.is === "reference") {
+    if (reading.note) notes.push(reading.note);
+    return;
+  }
+  const { becomes } = reading;
+  problems.push(
+    problem(column, reading.sentence, becomes === null ? [] : [{ label: `Take ${becomes}`, column, text: becomes }]),
+  );
+}
+
+/** The key of the row's source, which the steward must have answered for. */
+function readSourceKey(
+  { text, column }: { text: string; column: number },
+  { sourceKeys }: SheetFrame,
+  problems: CellProblem[],
+): string | null {
+  if (column === -1 || !sourceKeys) return null;
+  if (sourceKeys.has(text)) return text === "" ? null : text;
+  problems.push(
+    problem(
+      column,
+      text === ""
+        ? "The row names no source, and none was chosen for such rows."
+        : `No source was chosen for the key ${quote(text)}. Go back to the columns and say which it is, or write another key here.`,
+    ),
+  );
+  return null;
 }
 
 function problem(column: number | null, sentence: string, repairs: readonly Repair[] = []): CellProblem {
@@ -151,21 +221,22 @@ function whyNoValues(row: SheetRow, frame: SheetFrame): string | null {
   const { plan, heads } = frame;
   const filled = row.cells.filter((cell) => cell.trim() !== "");
   if (filled.length === 0) return "a blank row";
-  if (row.number < frame.headRow) return "a title above the heads";
+  if (isComment(row.cells)) return "a comment, as # says";
+  if (row.number < frame.headRow) return namesDelimiter(row.cells) ? "names the delimiter" : "a title above the heads";
   if (heads.length > 1 && heads.every((head, index) => (row.cells[index]?.trim() ?? "") === head))
     return "the heads again";
+  if (isUnitsRow(row.cells)) return "the units of the columns";
   const valueColumns = plan.flatMap((column, index) =>
     column.means === "value" || column.means === "anyValue" ? [index] : [],
   );
   if (valueColumns.some((index) => !isAbsent(row.cells[index] ?? ""))) return null;
   if (filled.length === 1) return "a title or a note: one cell, no values";
-  const phase = columnsOf(plan, "phase").some((index) => (row.cells[index]?.trim() ?? "") !== "");
-  const key = columnsOf(plan, "key").some((index) => (row.cells[index]?.trim() ?? "") !== "");
+  const holds = (means: ColumnMeans): boolean =>
+    columnsOf(plan, means).some((index) => (row.cells[index]?.trim() ?? "") !== "");
+  const named = holds("phase") || holds("key");
   // A short row may have lost its values with a delimiter: that is for the steward to see, not to skip.
-  if ((phase || key) && row.cells.length < heads.length) return null;
-  return phase || key
-    ? "a species without values in the columns that are read"
-    : "a title or a note: no phase and no values";
+  if (named && (row.cells.length < heads.length || [...NAMING].some(holds))) return null;
+  return named ? "a species without values in the columns that are read" : "a title or a note: no phase and no values";
 }
 
 interface NamedSpecies {
@@ -392,12 +463,22 @@ function readValue(
     problems,
     notes,
   );
+  const atBar =
+    identity && frame.settings.standardPressure === "101325" ? printedAtBar(property, value.digits, identity) : null;
+  if (atBar === undefined) {
+    problems.push(
+      problem(
+        column,
+        `${propertyInfo[property].symbol} at 1 atm cannot be brought to 1 bar: the table knows no reference state of an element of ${identity?.formula.printed ?? "this formula"}.`,
+      ),
+    );
+  }
   if (problems.length > before) return null;
   return {
     property,
-    digits: value.digits,
+    digits: atBar?.digits ?? value.digits,
     uncertainty,
-    given: { text, unit: slot.unit, note: value.note },
+    given: { text, unit: slot.unit, note: [value.note, atBar?.note].filter(Boolean).join("; ") || null },
     column,
   };
 }

@@ -27,6 +27,7 @@ import {
   sheetSettings,
   standingKey,
 } from "./plan.ts";
+import { keysOfColumns } from "./sourceKeys.ts";
 
 /** A file as it was uploaded. */
 export interface UploadedSheet {
@@ -84,6 +85,7 @@ export async function planSheet(id: number, sheet: DecodedSheet, trx: Database):
         headRow: sheet.headRow,
         samples: firstValues(sheet),
         bareSolid: hasBareSolid(sheet),
+        keys: keysOfColumns(sheet),
       },
       settings: guess.settings,
       rowsTotal: sheet.rows.length,

@@ -14,6 +14,7 @@ import {
 } from "./intake.queries.server.ts";
 import { matchSpecies, type RowToSettle, settleRows } from "./match.ts";
 import { ANSWER } from "./meaning.ts";
+import { answeredKeys } from "./sourceChoice.ts";
 import { readRows, type RowOutcome, type SheetFrame, type SheetRow } from "./readRows.ts";
 
 /** The newest repair of each cell, by row and column. */
@@ -40,7 +41,9 @@ export function repairedRow(row: Pick<DecodedRow, "number" | "cells">, repairs: 
 
 /** What reading needs to know of a sheet whose plan was confirmed. */
 export function frameOf(sheet: Sheet): SheetFrame {
+  const sourceKeys = answeredKeys(sheet.sourceChoice);
   return {
+    ...(sourceKeys ? { sourceKeys } : {}),
     heads: sheet.heads ?? [],
     headRow: sheet.plan?.headRow ?? 1,
     plan: sheet.plan?.columns ?? [],

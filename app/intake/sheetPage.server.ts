@@ -21,6 +21,8 @@ import {
 import { columnName } from "./plan.ts";
 import { ANSWER } from "./meaning.ts";
 import { repairsByRow, type RepairsByRow } from "./rereadRows.server.ts";
+import { chosenSources } from "./sourceChoice.ts";
+import { guessSource } from "./sourceKeys.ts";
 import type { FindingLine } from "./findingsFile.ts";
 import type { ListedSheet, ReadRowLine, RefusedRow } from "./sheetPage.ts";
 
@@ -70,7 +72,8 @@ export async function findSheetPage(acting: Acting, id: number, after: number) {
   const sheet = await sheetOf(acting, id);
   const db = database();
   const edition = (await findNewestEdition(db))?.number ?? 0;
-  const sources = (await findChoosableSources(edition, db)).map((one) => ({
+  const choosable = await findChoosableSources(edition, db);
+  const sources = choosable.map((one) => ({
     id: one.sourceId,
     name: shortCitation(one.citation) || one.sourceId,
     proposed: one.revisionId,
@@ -99,6 +102,8 @@ export async function findSheetPage(acting: Acting, id: number, after: number) {
       ...column,
       name: columnName(column.head, index),
       sample: sheet.plan?.samples[index] ?? [],
+      /** What could be keys of sources, each with the known source it seems to stand for. */
+      keys: (sheet.plan?.keys?.[index] ?? []).map((key) => ({ key, guess: guessSource(key, choosable) })),
     })),
     notices: sheet.plan?.notices ?? [],
     bareSolid: sheet.plan?.bareSolid ?? false,
@@ -106,9 +111,15 @@ export async function findSheetPage(acting: Acting, id: number, after: number) {
     sources,
     chosenSource: choice,
     sourceName:
-      choice?.kind === "known"
-        ? (sources.find((one) => one.id === choice.sourceId)?.name ?? choice.sourceId)
-        : (choice?.source.title ?? null),
+      [
+        ...new Set(
+          chosenSources(choice).map(({ choice: one }) =>
+            one.kind === "known"
+              ? (sources.find(({ id }) => id === one.sourceId)?.name ?? one.sourceId)
+              : one.source.title,
+          ),
+        ),
+      ].join("; ") || null,
     rows: readingBegan ? await findRowsOfPage(sheet, after) : null,
     mayWork: may(acting.person.roles, "sheet:work"),
     may: { revision: may(acting.person.roles, "revision:read") },
@@ -137,11 +148,14 @@ async function findRowsOfPage(sheet: Sheet, after: number) {
       number: row.number,
       key: row.reading?.match.key ?? "",
       isNew: row.reading?.match.kind === "new",
+      adds: row.reading?.match.kind === "known" ? (row.reading.match.adds ?? null) : null,
+      sourceKey: row.reading?.sourceKey ?? null,
       values: (row.reading?.values ?? []).map((value) => ({
         property: value.property,
         digits: value.digits,
         given: value.given.text,
         unit: value.given.unit,
+        note: value.given.note,
       })),
     })),
   };

@@ -1,4 +1,5 @@
 import type { SheetState } from "./states.ts";
+import type { Additions } from "./match.ts";
 import type { CellProblem, Repair } from "./readRows.ts";
 
 /** A sheet in the list of sheets. */
@@ -39,7 +40,11 @@ export interface ReadRowLine {
   number: number;
   key: string;
   isNew: boolean;
-  values: { property: string; digits: string; given: string; unit: string }[];
+  /** What the row adds to what the table calls the species. */
+  adds: Additions | null;
+  sourceKey: string | null;
+  /** `note` is the conversion that was applied. */
+  values: { property: string; digits: string; given: string; unit: string; note: string | null }[];
 }
 
 /** A repair with what the form that makes it has to send. */

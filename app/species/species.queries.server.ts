@@ -35,7 +35,8 @@ export interface SpeciesCandidate {
 }
 
 /**
- * The species of these compositions (Hill order, without charge): those of an edition, and those that a revision which is
+ * The species of these compositions (Hill order, without charge): those of an edition, with the names that wait accepted
+ * for the next one, and those that a revision which is
  * not withdrawn proposes and no edition holds yet.
  */
 export async function findCandidates(
@@ -45,9 +46,16 @@ export async function findCandidates(
 ): Promise<SpeciesCandidate[]> {
   if (hills.length === 0) return [];
   const { rows } = await sql<SpeciesCandidate>`
-    select d.species_id as "speciesId", d.key, d.printed, s.hill, s.charge, s.phase, d.label, d.name, d.cas, d.synonyms,
+    select d.species_id as "speciesId", d.key, d.printed, s.hill, s.charge, s.phase, d.label,
+           coalesce(w.content ->> 'name', d.name) as name,
+           case when w.content is null then d.cas else w.content ->> 'cas' end as cas,
+           case when w.content is null then d.synonyms
+                else array(select jsonb_array_elements_text(w.content -> 'synonyms')) end as synonyms,
            null as "revisionId", true as named
       from species s join species_detail d on d.species_id = s.id
+      left join lateral (select v.content from revision_line l join line_version v on v.line_id = l.id
+                          where l.kind = 'detail' and l.state = 'accepted' and l.species_id = d.species_id
+                          order by v.version desc limit 1) w on true
      where s.hill = any(${[...hills]}::text[])
        and d.since <= ${edition} and (d.until is null or d.until > ${edition})
     union all

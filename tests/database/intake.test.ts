@@ -246,11 +246,11 @@ describe("rows that cannot be read", () => {
   });
 
   test("a repair that is wrong again leaves the row refused with the new reason", async () => {
-    await repairCell(steward, id, { row: 8, column: 3, was: "7647-01-1", becomes: "7647-01-0" });
+    await repairCell(steward, id, { row: 8, column: 3, was: "7647-01-1", becomes: "7647-01-2" });
     const row = await findRow(id, 8, appDatabase());
     expect(row?.outcome).toBe("refused");
-    expect(row?.problems).toMatchObject([{ column: 6, repairs: [{ text: "186.90" }] }]);
-    await repairCell(steward, id, { row: 8, column: 6, was: "186.90*", becomes: "186.90" });
+    expect(row?.problems).toMatchObject([{ column: 3, sentence: expect.stringContaining("ends in 2") }]);
+    await repairCell(steward, id, { row: 8, column: 3, was: "7647-01-2", becomes: "7647-01-0" });
     expect((await findRow(id, 8, appDatabase()))?.outcome).toBe("read");
   });
 

@@ -1,6 +1,8 @@
 import { useState } from "react";
 import { Form } from "react-router";
 import {
+  KEY_SOURCE_FIELDS,
+  keyField,
   meaningValue,
   meansField,
   MEANING_OPTIONS,
@@ -37,7 +39,11 @@ export function PlanForm({ page, failed }: { page: SheetPage; failed: SheetOutco
     (failed?.errors ?? []).filter((error) => error.pointer === pointer).map((error) => error.detail);
   const columnErrors = page.columns.map((_, index) => errorsAt(`/columns/${index}`));
   const settings = settingFields(page, typed, errorsAt);
+  const [keyColumn, setKeyColumn] = useState(
+    page.columns.findIndex((column, index) => (typed?.[meansField(index)] ?? meaningValue(column)) === "sourceKey"),
+  );
   const source = sourceFields(page, typed, errorsAt);
+  const keys = keyColumn === -1 ? [] : keyFields(page, keyColumn, typed, errorsAt);
   const pending = usePending("intent", "confirm");
 
   return (
@@ -50,7 +56,9 @@ export function PlanForm({ page, failed }: { page: SheetPage; failed: SheetOutco
               [plainField(meansField(index), { errors: columnErrors[index] ?? [] }), column.name] as const,
           ),
           ...settings.map(({ field, label }) => [field, label] as const),
-          [source.choice, "Source"],
+          ...keys.map(({ key, choice }) => [choice, `Source of ${key}`] as const),
+          ...keys.flatMap(({ described }) => described.map(({ field, label }) => [field, label] as const)),
+          [source.choice, keyColumn === -1 ? "Source" : "Source of rows without a key"],
           ...source.described.map(({ field, label }) => [field, label] as const),
         ]}
       />
@@ -67,7 +75,17 @@ export function PlanForm({ page, failed }: { page: SheetPage; failed: SheetOutco
         </thead>
         <tbody>
           {page.columns.map((column, index) => (
-            <PlanRow key={index} column={column} index={index} errors={columnErrors[index] ?? []} typed={typed} />
+            <PlanRow
+              key={index}
+              column={column}
+              index={index}
+              errors={columnErrors[index] ?? []}
+              typed={typed}
+              onMeaning={(meaning) => {
+                if (meaning === "sourceKey") setKeyColumn(index);
+                else if (keyColumn === index) setKeyColumn(-1);
+              }}
+            />
           ))}
         </tbody>
       </Table>
@@ -87,7 +105,24 @@ export function PlanForm({ page, failed }: { page: SheetPage; failed: SheetOutco
           )}
         </Section>
         <Section head="Where the values come from">
-          <SourceChoiceFields {...source} />
+          {keys.length > 0 && (
+            <>
+              <Fine>
+                Each row names its source in <SheetText text={page.columns[keyColumn]?.name ?? ""} />. The rows of a key
+                without an answer are refused.
+              </Fine>
+              {keys.map((key) => (
+                <KeyAnswer
+                  key={`${keyColumn} ${key.key}`}
+                  name={key.key}
+                  choice={key.choice}
+                  described={key.described}
+                  options={source.options}
+                />
+              ))}
+            </>
+          )}
+          <SourceChoiceFields {...source} byKey={keys.length > 0} />
         </Section>
       </Columns>
       <DecisionBar label="Confirm" end="nothing enters the table before it was reviewed">
@@ -104,11 +139,13 @@ function PlanRow({
   index,
   errors,
   typed,
+  onMeaning,
 }: {
   column: Column;
   index: number;
   errors: readonly string[];
   typed: SheetOutcome["typed"] | undefined;
+  onMeaning: (meaning: string) => void;
 }) {
   const [meaning, setMeaning] = useState(typed?.[meansField(index)] ?? meaningValue(column));
   const wrong = errors.length > 0;
@@ -128,7 +165,10 @@ function PlanRow({
           label={`What ${column.name} holds`}
           options={MEANING_OPTIONS}
           defaultValue={meaning}
-          onChange={(event) => setMeaning(event.currentTarget.value)}
+          onChange={(event) => {
+            setMeaning(event.currentTarget.value);
+            onMeaning(event.currentTarget.value);
+          }}
           wrong={wrong}
           aria-describedby={`because-${index}`}
         />
@@ -194,7 +234,7 @@ function settingFields(
       field: field("standardPressure", settings.standardPressure ?? ""),
       label: "Standard pressure",
       options: SETTING_OPTIONS.standardPressure,
-      hint: "Tables from before 1982 mostly use 1 atm; those are not converted here yet.",
+      hint: "Tables from before 1982 mostly use 1 atm. S° of gases and ΔfG° are then brought to 1 bar, each with the step beside it.",
     },
     {
       field: field("uncertaintyKind", settings.uncertaintyKind ?? ""),
@@ -241,8 +281,9 @@ function sourceFields(
   errorsAt: (pointer: string) => string[],
 ): SourceState {
   const { chosenSource } = page;
-  const before = chosenSource?.kind === "new" ? chosenSource.source : null;
-  const chosen = chosenSource?.kind === "known" ? chosenSource.sourceId : chosenSource ? NEW_SOURCE : "";
+  const whole = chosenSource?.kind === "byKey" ? chosenSource.otherwise : chosenSource;
+  const before = whole?.kind === "new" ? whole.source : null;
+  const chosen = whole?.kind === "known" ? whole.sourceId : whole ? NEW_SOURCE : "";
   return {
     choice: plainField("source", { initialValue: typed?.["source"] ?? chosen, errors: errorsAt("/source") }),
     options: [
@@ -261,18 +302,82 @@ function sourceFields(
   };
 }
 
+interface KeyState {
+  key: string;
+  choice: FieldState;
+  described: DescribedField[];
+}
+
+/** The keys of the column with their answers: as typed, as confirmed before, or guessed from the known sources. */
+function keyFields(
+  page: SheetPage,
+  column: number,
+  typed: SheetOutcome["typed"] | undefined,
+  errorsAt: (pointer: string) => string[],
+): KeyState[] {
+  const { chosenSource } = page;
+  return (page.columns[column]?.keys ?? []).map(({ key, guess }, index) => {
+    const name = keyField(index);
+    const before =
+      chosenSource?.kind === "byKey" ? chosenSource.keys.find((one) => one.key === key)?.choice : undefined;
+    const described = before?.kind === "new" ? before.source : null;
+    const chosen =
+      before === undefined ? (guess ?? "") : before === null ? "" : described ? NEW_SOURCE : knownId(before);
+    return {
+      key,
+      choice: plainField(name, { initialValue: typed?.[name] ?? chosen, errors: errorsAt(`/keys/${index}`) }),
+      described: describedFields(
+        (field) => typed?.[`${name}.${field}`] ?? described?.[field] ?? "",
+        (field) => errorsAt(`/keys/${index}/${field}`),
+        `${name}.`,
+      ).filter((one) => KEY_SOURCE_FIELDS.has(one.name)),
+    };
+  });
+}
+
+const knownId = (choice: { kind: string; sourceId?: string }): string => choice.sourceId ?? "";
+
+/** What one key stands for. The description of a new source can be opened without scripts. */
+function KeyAnswer({
+  name,
+  choice,
+  described,
+  options,
+}: Omit<KeyState, "key"> & { name: string; options: SourceState["options"] }) {
+  const [chosen, setChosen] = useState(typeof choice.initialValue === "string" ? choice.initialValue : "");
+  const wrong = described.some(({ field }) => (field.errors ?? []).length > 0);
+  return (
+    <div className="mb-4">
+      <Select
+        field={choice}
+        label={`Source of ${name}`}
+        options={[["", "not answered: its rows are refused"], ...options.slice(1)]}
+        onChange={(event) => setChosen(event.currentTarget.value)}
+      />
+      {(chosen === NEW_SOURCE || chosen === "") && (
+        <details className="disclosure" open={chosen === NEW_SOURCE || wrong}>
+          <summary>describe {name} as a new source</summary>
+          <div className="mt-3">
+            <SourceFields fields={described} />
+          </div>
+        </details>
+      )}
+    </div>
+  );
+}
+
 /** The choice of a source. Its description is open from the start, so that it can be filled in without scripts. */
-function SourceChoiceFields({ choice, options, described }: SourceState) {
+function SourceChoiceFields({ choice, options, described, byKey }: SourceState & { byKey: boolean }) {
   const [chosen, setChosen] = useState(typeof choice.initialValue === "string" ? choice.initialValue : "");
   return (
     <>
       <Select
         field={choice}
-        label="Source"
-        options={options}
+        label={byKey ? "Source of rows without a key (may stay empty)" : "Source"}
+        options={byKey ? [["", "none: such rows are refused"], ...options.slice(1)] : options}
         onChange={(event) => setChosen(event.currentTarget.value)}
       />
-      {(chosen === NEW_SOURCE || chosen === "") && (
+      {(chosen === NEW_SOURCE || (chosen === "" && !byKey)) && (
         <fieldset className="mt-4">
           <legend className="mb-3 font-semibold">A new source</legend>
           <SourceFields fields={described} />
@@ -323,7 +428,11 @@ export function PlanShown({ page }: { page: SheetPage }) {
       </Table>
       <Fine>
         {settings.temperature ? `${settings.temperature} K` : "temperature not said"},{" "}
-        {settings.standardPressure === "100000" ? "100 kPa" : "pressure not said"}
+        {settings.standardPressure === "100000"
+          ? "100 kPa"
+          : settings.standardPressure
+            ? "1 atm, brought to 100 kPa"
+            : "pressure not said"}
         {settings.uncertaintyKind &&
           `, uncertainties ${settings.uncertaintyKind === "expanded" ? "expanded with k = 2" : settings.uncertaintyKind === "standard" ? "standard" : "of a kind not said"}`}
         {sheet.confirmedBy && `, confirmed by ${sheet.confirmedBy}`}.

@@ -33,7 +33,8 @@ export function Rows({ page, rows, failed }: { page: SheetPage; rows: PageRows; 
     <>
       <Section head="Rows" id="rows">
         <p role="status" id="rows-status" tabIndex={-1}>
-          {count(counts.read)} of {count(page.sheet.rowsTotal)} read to {count(counts.values)} values of{" "}
+          {count(page.sheet.rowsTotal)} rows = {count(counts.read)} read + {count(counts.refused + counts.leftOut)}{" "}
+          refused + {count(counts.skipped)} skipped · read to {count(counts.values)} values of{" "}
           {count(rows.species.known + rows.species.new)} species, {count(rows.species.new)} of them new ·{" "}
           {count(counts.refused)} refused
           {counts.leftOut > 0 && ` · ${count(counts.leftOut)} left out`}

@@ -65,6 +65,7 @@ async function perform(acting: Acting, sheetId: number, intent: string, form: Fo
           because,
           asks,
         })),
+        columns.map(({ keys }) => keys.map(({ key }) => key)),
       );
       if (!plan.ok) throw new Invalid(plan.errors[0]?.detail ?? "The plan is not complete.", plan.errors);
       await confirmPlan(acting, sheetId, plan);
