@@ -110,7 +110,7 @@ function LineFields({ page, form }: { page: LineEditPage; form: FormState }) {
       return (
         <>
           <NameFields form={form} stands={typed} />
-          <div className="grid gap-x-6 sm:grid-cols-2">
+          <div className="grid items-start gap-x-6 sm:grid-cols-2">
             <div>
               <Field field={form.field("formula", typed["formula"])} label="Printed formula" autoComplete="off" />
               <Readings form={form} field="formula" />

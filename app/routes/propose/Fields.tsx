@@ -77,7 +77,7 @@ export function ValueRow({
           {name.replace(/^standard /, "")} {place && <Stands place={place} />}
         </span>
       </legend>
-      <div className="grid gap-x-6 sm:grid-cols-[minmax(0,2fr)_minmax(0,1fr)_minmax(0,1fr)]">
+      <div className="grid items-start gap-x-6 sm:grid-cols-[minmax(0,2fr)_minmax(0,1fr)_minmax(0,1fr)]">
         <div>
           <Field field={value} label="Value" autoComplete="off" />
           <Readings form={form} field={value.name} />
@@ -145,8 +145,8 @@ export function ConditionFields({
   const k = form.field("k", initial["k"], false);
   return (
     <>
-      <div className="grid gap-x-6 sm:grid-cols-2">
-        <Select field={kind} label="Kind of the uncertainty" options={KINDS} />
+      <div className="grid items-start gap-x-6 sm:grid-cols-2">
+        <Select field={kind} label="Kind of the uncertainty" hint="Brackets are always standard." options={KINDS} />
         <Field field={k} label="Coverage factor k" hint="Of an expanded uncertainty; 2 where none is given." />
         <Select
           field={form.field("pressure", "100000")}
@@ -235,7 +235,7 @@ export function DraftFields({
         hint="What was measured, corrected or found wrong. The reviewer reads it beside the change."
         rows={2}
       />
-      <div className="grid gap-x-6 sm:grid-cols-2">
+      <div className="grid items-start gap-x-6 sm:grid-cols-2">
         <Select
           field={choice}
           label="Goes into"
@@ -351,21 +351,21 @@ export function TakenValues({
 /** Formula, phase and label of a species, as a person types them. */
 export function IdentityFields({ form }: { form: FormState }) {
   return (
-    <div className="grid gap-x-6 sm:grid-cols-[minmax(0,2fr)_minmax(0,1fr)_minmax(0,1.5fr)]">
+    <div className="grid items-start gap-x-6 sm:grid-cols-[minmax(0,2fr)_minmax(0,1fr)_minmax(0,1.5fr)]">
       <div>
         <Field
           field={form.field("formula")}
           label="Formula"
-          hint="With its charge: C2H6O, SO4-2, CuSO4·5H2O. A whole key such as H2O(l) is read too."
+          hint="C2H6O, SO4-2, or a whole key: H2O(l)."
           autoComplete="off"
         />
         <Readings form={form} field="formula" />
       </div>
-      <Field field={form.field("phase")} label="Phase" hint="g, l, cr, am, vit or aq." autoComplete="off" />
+      <Field field={form.field("phase")} label="Phase" hint="g, l, cr, am, vit, aq." autoComplete="off" />
       <Field
         field={form.field("label", "", false)}
         label="Form or isomer"
-        hint="Where formula and phase leave more than one substance."
+        hint="Such as graphite, or ethanol."
         autoComplete="off"
       />
     </div>
@@ -375,15 +375,25 @@ export function IdentityFields({ form }: { form: FormState }) {
 /** Name, CAS number, InChIKey and synonyms. */
 export function NameFields({ form, stands }: { form: FormState; stands: Readonly<Record<string, string>> }) {
   return (
-    <div className="grid gap-x-6 sm:grid-cols-2">
-      <Field field={form.field("name", stands["name"], false)} label="Name" autoComplete="off" />
+    <div className="grid items-start gap-x-6 sm:grid-cols-2">
+      <Field
+        field={form.field("name", stands["name"], false)}
+        label="Name"
+        hint="As the trade calls it."
+        autoComplete="off"
+      />
       <Field
         field={form.field("cas", stands["cas"], false)}
         label="CAS number"
         hint="Its last digit is checked: 7732-18-5."
         autoComplete="off"
       />
-      <Field field={form.field("inchikey", stands["inchikey"], false)} label="InChIKey" autoComplete="off" />
+      <Field
+        field={form.field("inchikey", stands["inchikey"], false)}
+        label="InChIKey"
+        hint="Three groups of capital letters."
+        autoComplete="off"
+      />
       <TextArea
         field={form.field("synonyms", stands["synonyms"], false)}
         label="Synonyms"

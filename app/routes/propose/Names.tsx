@@ -29,7 +29,7 @@ export function NamesForm({
       <input type="hidden" name="seen" value={page.species.seen} />
       <Section head="What it shall be called">
         <NameFields form={form} stands={stands} />
-        <div className="grid gap-x-6 sm:grid-cols-2">
+        <div className="grid items-start gap-x-6 sm:grid-cols-2">
           <div>
             <Field
               field={form.field("formula", stands["formula"])}
