@@ -27,7 +27,7 @@ import type { Route } from "./+types/edition.source";
 import { useEditionFrame, WithdrawnNotice } from "./edition/Frame.tsx";
 import { keptByAddress } from "./edition/kept.ts";
 import { pinnedEdition } from "./edition/pin.server.ts";
-import { sourceKindWords } from "./source/words.ts";
+import { sourceKindSentence } from "./source/words.ts";
 
 export const meta: Route.MetaFunction = ({ loaderData, params }) => [
   {
@@ -70,8 +70,8 @@ export default function SourceRoute({ loaderData: { page, writes } }: Route.Comp
       <WithdrawnNotice frame={frame} />
       {source.notice !== null && <Notice word="notice" text={source.notice} />}
       <p>
-        Its values are {sourceKindWords[source.kind]}. {count(all)} {all === 1 ? "value" : "values"} of edition{" "}
-        {frame.number} {all === 1 ? "leans" : "lean"} on it; it came in with{" "}
+        {sourceKindSentence[source.kind]} {count(all)} {all === 1 ? "value" : "values"} of edition {frame.number}{" "}
+        {all === 1 ? "leans" : "lean"} on it; it came in with{" "}
         <Link to={paths.edition(source.since)}>edition {source.since}</Link>.
       </p>
       {note !== "" && <p className="lede">{note}</p>}

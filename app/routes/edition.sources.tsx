@@ -12,9 +12,9 @@ import { EmptyPage } from "#app/ui/EmptyPage.tsx";
 import { InlineField, InlineSelect, Sentence } from "#app/ui/Field.tsx";
 import { count } from "#app/ui/figure.ts";
 import { Leaf } from "#app/ui/Leaf.tsx";
-import { InlineMark } from "#app/ui/MarginMark.tsx";
 import { PageTurner } from "#app/ui/PageTurner.tsx";
 import { Reference } from "#app/ui/Reference.tsx";
+import { Sign } from "#app/ui/Signs.tsx";
 import type { Route } from "./+types/edition.sources";
 import { useEditionFrame, WithdrawnNotice } from "./edition/Frame.tsx";
 import { keptByAddress } from "./edition/kept.ts";
@@ -64,8 +64,8 @@ const columnsFor = (edition: number): Column<Source>[] => [
       <>
         <Reference pieces={citationPieces(citation, doi)} />
         {notice !== null && (
-          <span className="block">
-            <InlineMark kind="look">{notice}</InlineMark>
+          <span className="is-look block">
+            <Sign kind="look" size={10} /> {notice}
           </span>
         )}
         {noteOf(citation) !== "" && <span className="fine block">{noteOf(citation)}</span>}
@@ -109,7 +109,7 @@ export default function SourcesRoute({ loaderData: { page, writes } }: Route.Com
         rows={page.count}
       />
       {writes && (
-        <div className="actions">
+        <div className="actions pt-4">
           <ButtonLink to={paths.newSource()}>Add a source</ButtonLink>
         </div>
       )}

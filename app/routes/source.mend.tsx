@@ -62,7 +62,7 @@ export default function MendSourcePage({ loaderData, actionData }: Route.Compone
       section="sources"
       lede={<Reference pieces={citationPieces(before.citation, before.doi)} />}
     >
-      <p className="max-w-[68ch]">
+      <p className="mb-6 max-w-[68ch]">
         {edition !== null ? (
           <>
             So cites it <Link to={paths.sourceIn(edition, source.sourceId)}>edition {edition}</Link>.
@@ -76,7 +76,7 @@ export default function MendSourcePage({ loaderData, actionData }: Route.Compone
         )}{" "}
         What is mended here stands from the next edition on; the editions that are out keep their citation.
       </p>
-      <Form method="post" className="max-w-[60ch]">
+      <Form method="post" className="max-w-[48rem]">
         <input type="hidden" name="seen" value={actionData?.typed["seen"] ?? source.seen} readOnly />
         <Change outcome={actionData} />
         <SourceDesk

@@ -51,7 +51,7 @@ export default function NewSourcePage({ loaderData: { drafts }, actionData }: Ro
       section="sources"
       lede="A source is proposed like a value: it becomes a line of a revision and is in the table once a reviewer accepted it and the next edition is out. Where a sheet brings it, describe it beside the sheet instead."
     >
-      <Form method="post" className="max-w-[60ch]">
+      <Form method="post" className="max-w-[48rem]">
         <Twins outcome={actionData} />
         <SourceDesk
           drafts={drafts}

@@ -17,6 +17,7 @@ import { Notice } from "#app/ui/Notice.tsx";
 import { Prose } from "#app/ui/Prose.tsx";
 import { QuantityHead } from "#app/ui/QuantityHead.tsx";
 import { Columns, Fine, Lede, Section } from "#app/ui/Section.tsx";
+import { Sign } from "#app/ui/Signs.tsx";
 import { SpeciesName } from "#app/ui/SpeciesName.tsx";
 import { Symbol } from "#app/ui/Symbol.tsx";
 import { Table } from "#app/ui/Table.tsx";
@@ -185,6 +186,7 @@ function Values({ page }: { page: SpeciesPage }) {
               <td>{value.origin}</td>
               <td>
                 <Link to={paths.sourceIn(frame.number, value.sourceId)}>{shortOf(value.sourceId)}</Link>
+                <SourceNotice notice={sources.find((one) => one.sourceId === value.sourceId)?.notice ?? null} />
               </td>
               <td className="tight">
                 <Link to={paths.edition(value.since)}>edition {value.since}</Link>
@@ -212,6 +214,16 @@ function Values({ page }: { page: SpeciesPage }) {
         )}
       </tbody>
     </Table>
+  );
+}
+
+/** What its source is warned of, beside the value that leans on it. */
+function SourceNotice({ notice }: { notice: string | null }) {
+  if (notice === null) return null;
+  return (
+    <span className="fine is-look block">
+      <Sign kind="look" size={10} /> <Prose text={notice} />
+    </span>
   );
 }
 

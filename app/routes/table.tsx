@@ -14,6 +14,7 @@ import { EmptyPage } from "#app/ui/EmptyPage.tsx";
 import { InlineField, InlineSelect, Sentence } from "#app/ui/Field.tsx";
 import { count, tailOf } from "#app/ui/figure.ts";
 import { Leaf } from "#app/ui/Leaf.tsx";
+import { InlineMark } from "#app/ui/MarginMark.tsx";
 import { Note } from "#app/ui/Note.tsx";
 import { QuantityHead } from "#app/ui/QuantityHead.tsx";
 import { Fine } from "#app/ui/Section.tsx";
@@ -72,7 +73,7 @@ function TableOfEdition({ page }: { page: TablePage }) {
       <DataTable
         caption={`Standard formation properties at 298.15 K and 100 kPa, edition ${frame.number}`}
         rows={rows}
-        columns={columnsFor(frame.number, columns, rows)}
+        columns={columnsFor(page)}
         rowKey={(row) => row.speciesId}
         sorting={{ column: order.by, direction: order.direction }}
         sortedAlready
@@ -200,7 +201,9 @@ const ORDERS: readonly (readonly [string, string])[] = [
 /** Rows come sorted from the server; a column that can be sorted says so by having a comparison. */
 const sortedByServer = (): number => 0;
 
-function columnsFor(edition: number, shown: readonly Property[], rows: readonly TableRow[]): Column<TableRow>[] {
+function columnsFor({ frame, columns: shown, rows, sources }: TablePage): Column<TableRow>[] {
+  const edition = frame.number;
+  const noticed = new Set(sources.filter((source) => source.notice !== null).map((source) => source.number));
   return [
     {
       id: "key",
@@ -239,6 +242,12 @@ function columnsFor(edition: number, shown: readonly Property[], rows: readonly 
           <span key={number}>
             {index > 0 && ", "}
             <a href={`#source-${number}`}>{number}</a>
+            {noticed.has(number) && (
+              <>
+                {" "}
+                <InlineMark kind="look">notice</InlineMark>
+              </>
+            )}
           </span>
         )),
     },

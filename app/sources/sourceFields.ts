@@ -64,6 +64,8 @@ export interface ShownSourceField {
   label: string;
   hint?: string;
   required?: true;
+  /** How many quarters of a line it takes where there is room; all four without it. */
+  quarters?: 1 | 2;
   /** Several lines of text; how many stand open. */
   rows?: number;
   options?: readonly (readonly [string, string])[];
@@ -80,15 +82,15 @@ export const SOURCE_FORM: readonly ShownSourceField[] = [
   },
   { name: "title", label: "Title", hint: "For a notebook, what it is called and its number.", required: true },
   { name: "container", label: "Journal, series or book it stands in" },
-  { name: "volume", label: "Volume" },
-  { name: "issue", label: "Issue" },
-  { name: "pages", label: "Pages", hint: "From and to: 1807–1812." },
-  { name: "year", label: "Year", hint: "Four digits." },
-  { name: "publisher", label: "Publisher or laboratory", hint: "For a thesis, the university." },
-  { name: "place", label: "Place of publication" },
+  { name: "volume", label: "Volume", quarters: 1 },
+  { name: "issue", label: "Issue", quarters: 1 },
+  { name: "pages", label: "Pages", quarters: 1 },
+  { name: "year", label: "Year", quarters: 1 },
+  { name: "publisher", label: "Publisher or laboratory", hint: "For a thesis, the university.", quarters: 2 },
+  { name: "place", label: "Place of publication", quarters: 2 },
   { name: "doi", label: "DOI", hint: "As in 10.1063/1.555845; an address at doi.org is read as well." },
-  { name: "url", label: "Address on the web" },
-  { name: "accessed", label: "Read there on", hint: "Year, month and day: 2026-03-12." },
+  { name: "url", label: "Address on the web", quarters: 2 },
+  { name: "accessed", label: "Read there on", hint: "Year, month and day: 2026-03-12.", quarters: 2 },
   {
     name: "sourceKind",
     label: "How the values came about",

@@ -23,7 +23,8 @@ export function SourceDesk({ drafts, outcome, initial, reasonHint, reasonRequire
     (outcome?.errors ?? []).filter((error) => error.field === name).map((error) => error.detail);
   const field = (name: string): FieldState => plainField(name, { initialValue: said(name), errors: wrong(name) });
   const described = describedFields(said, wrong);
-  const [into, title, reason] = [field("into"), field("revisionTitle"), field("reason")];
+  const [into, title] = [field("into"), field("revisionTitle")];
+  const reason = { ...field("reason"), ...(reasonRequired ? {} : { required: false }) };
   return (
     <>
       <FormErrors
@@ -50,12 +51,7 @@ export function SourceDesk({ drafts, outcome, initial, reasonHint, reasonRequire
           label="Title of the new draft"
           hint="Not looked at where it goes into a revision of yours."
         />
-        <TextArea
-          field={reason}
-          label={reasonRequired ? "Reason" : "Reason (may stay empty)"}
-          hint={reasonHint}
-          rows={2}
-        />
+        <TextArea field={reason} label="Reason" hint={reasonHint} rows={2} />
       </Section>
     </>
   );

@@ -15,20 +15,31 @@ export function describedFields(
 ): DescribedField[] {
   return SOURCE_FORM.map((shown) => ({
     ...shown,
-    field: plainField(`${prefix}${shown.name}`, { initialValue: initial(shown.name), errors: errors(shown.name) }),
+    field: {
+      ...plainField(`${prefix}${shown.name}`, { initialValue: initial(shown.name), errors: errors(shown.name) }),
+      // Only so that the label can say what may stay empty: the page itself says what is missing, in words.
+      ...(shown.required ? {} : { required: false }),
+    },
   }));
 }
 
 /** The fields that describe a source, wherever that is done: beside a sheet, on their own, or to mend one. */
 export function SourceFields({ fields }: { fields: readonly DescribedField[] }) {
   return (
-    <>
-      {fields.map(({ field, label, hint, options, rows, required }) => {
-        const words = required ? label : `${label} (may stay empty)`;
-        if (options) return <Select key={field.name} field={field} label={words} hint={hint} options={options} />;
-        if (rows) return <TextArea key={field.name} field={field} label={words} hint={hint} rows={rows} />;
-        return <Field key={field.name} field={field} label={words} hint={hint} />;
-      })}
-    </>
+    <div className="grid max-w-[48rem] grid-cols-1 gap-x-4 sm:grid-cols-4">
+      {fields.map((described) => (
+        <div key={described.name} className={`self-end [&>.field]:max-w-none ${WIDTHS[described.quarters ?? 4]}`}>
+          <SourceControl {...described} />
+        </div>
+      ))}
+    </div>
   );
+}
+
+const WIDTHS = { 1: "sm:col-span-1", 2: "sm:col-span-2", 4: "sm:col-span-4" } as const;
+
+function SourceControl({ field, label, hint, options, rows }: DescribedField) {
+  if (options) return <Select field={field} label={label} hint={hint} options={options} />;
+  if (rows) return <TextArea field={field} label={label} hint={hint} rows={rows} />;
+  return <Field field={field} label={label} hint={hint} />;
 }
