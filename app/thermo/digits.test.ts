@@ -15,6 +15,7 @@ import {
   places,
   readDigits,
   roundTo,
+  scaleBy,
   subtract,
   toNumber,
 } from "./digits.ts";
@@ -159,5 +160,18 @@ describe("digits and places", () => {
 
   it("becomes the nearest double", () => {
     expect(toNumber(digits("-285.830"))).toBe(-285.83);
+  });
+});
+
+describe("the product with an exact ratio", () => {
+  it.each([
+    ["-68.315", 523n, 125n, 3, "-285.830", "4.184 is 523/125"],
+    ["-285.830", 125n, 523n, 4, "-68.3150", "and back; digits are added where they are asked for"],
+    ["1", 1n, 3n, 5, "0.33333", "a quotient without an end"],
+    ["2.5", 1n, 1n, 0, "2", "half to even, down"],
+    ["3.5", 1n, 1n, 0, "4", "half to even, up"],
+    ["-0.4", 1n, 1n, 0, "0", "no negative zero"],
+  ])("%s · %d/%d to %d places is %s: %s", (value, n, d, place, expected) => {
+    expect(scaleBy(digits(value), { n, d }, place)).toBe(expected);
   });
 });

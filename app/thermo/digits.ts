@@ -99,17 +99,19 @@ export function multiply(value: Digits, factor: string): Digits {
 }
 
 /**
- * The product with an exact ratio, rounded half to even at a place that is not below zero. Here digits may be added: the
- * ratio is exact, so how many stand behind the point is the caller's to say.
+ * The product with an exact ratio n/d, rounded half to even at a place that is not below zero. Here digits may be added:
+ * the ratio is exact, so how many stand behind the point is the caller's to say. Whole numbers all the way, since a
+ * quotient need not end.
  */
-export function scaleBy(
-  value: Digits,
-  ratio: { readonly s: bigint; readonly n: bigint; readonly d: bigint },
-  place: number,
-): Digits {
-  // A quotient that lies just between two neighbours has an end, so a thousand figures decide every tie.
-  const product = new Exact(value).times((ratio.s * ratio.n).toString()).div(ratio.d.toString());
-  return spell(product.toDecimalPlaces(place, Decimal.ROUND_HALF_EVEN), place);
+export function scaleBy(value: Digits, ratio: { readonly n: bigint; readonly d: bigint }, place: number): Digits {
+  const negative = value.startsWith("-");
+  const above = BigInt(value.replace(/[-.]/g, "")) * ratio.n * 10n ** BigInt(place);
+  const below = ratio.d * 10n ** BigInt(places(value));
+  const whole = above / below;
+  const rest = (above % below) * 2n;
+  const up = rest > below || (rest === below && whole % 2n === 1n);
+  const figures = (up ? whole + 1n : whole).toString().padStart(place + 1, "0");
+  return canonical(negative, figures.slice(0, figures.length - place), place === 0 ? "" : figures.slice(-place));
 }
 
 /** −a. */

@@ -1,7 +1,7 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import { FARADAY_CONSTANT } from "./constants.ts";
-import { compare, digits, places, roundTo } from "./digits.ts";
+import { absolute, compare, digits, halfUnit, subtract } from "./digits.ts";
 import {
   addQuantities,
   conversionFactor,
@@ -134,8 +134,9 @@ describe("converting", () => {
       fc.property(value, fc.constantFrom(...UNITS), fc.constantFrom(...UNITS), (start, from, to) => {
         fc.pre(isLikeUnit(from, to));
         const there = convert(start, from, to).digits;
-        const back = roundTo(convert(there, to, from).digits, places(start));
-        return compare(back, start) === 0;
+        // The way back rounds too, one place further, so the two calories may come out just between two neighbours.
+        const off = absolute(subtract(convert(there, to, from).digits, start));
+        return compare(off, halfUnit(start)) <= 0;
       }),
     );
   });

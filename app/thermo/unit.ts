@@ -94,10 +94,9 @@ export function isLikeUnit(a: Unit, b: Unit): boolean {
  * @throws RangeError for unlike quantities (kJ/mol and J/(mol K))
  */
 export function convert(value: Digits, from: Unit, to: Unit): { digits: Digits; note: string | null } {
-  const factor = exactFactor(from, to);
+  const { factor, magnitude, note } = conversionStep(from, to);
   if (from === to) return { digits: value, note: null };
-  const place = Math.max(0, places(value) - Math.floor(Math.log10(fractionToNumber(factor))));
-  return { digits: scaleBy(value, factor, place), note: stepInWords(from, to) };
+  return { digits: scaleBy(value, factor, Math.max(0, places(value) - magnitude)), note };
 }
 
 /**
@@ -107,7 +106,7 @@ export function convert(value: Digits, from: Unit, to: Unit): { digits: Digits; 
  * @throws RangeError for unlike quantities
  */
 export function conversionFactor(from: Unit, to: Unit): number {
-  return fractionToNumber(exactFactor(from, to));
+  return fractionToNumber(conversionStep(from, to).factor);
 }
 
 /**
@@ -116,18 +115,33 @@ export function conversionFactor(from: Unit, to: Unit): number {
  * @throws RangeError for unlike quantities
  */
 export function exactDecimalFactor(from: Unit, to: Unit): string | undefined {
-  return decimalOf(exactFactor(from, to));
+  return decimalOf(conversionStep(from, to).factor);
 }
 
+interface ConversionStep {
+  factor: Fraction;
+  /** The power of ten of its first figure. */
+  magnitude: number;
+  note: string;
+}
+
+/** Every step is worked out once: a reading of a sheet asks for the same few a hundred thousand times. */
+const steps = new Map<string, ConversionStep>();
+
 /** The exact factor from one unit to another, whether or not its decimals end. */
-function exactFactor(from: Unit, to: Unit): Fraction {
+function conversionStep(from: Unit, to: Unit): ConversionStep {
+  const known = steps.get(`${from}>${to}`);
+  if (known !== undefined) return known;
   if (!isLikeUnit(from, to)) throw new RangeError(`${from} and ${to} measure different quantities`);
-  return IN_JOULES[from].joules.div(IN_JOULES[to].joules);
+  const factor = IN_JOULES[from].joules.div(IN_JOULES[to].joules);
+  const magnitude = Math.floor(Math.log10(fractionToNumber(factor)));
+  const step = { factor, magnitude, note: stepInWords(from, to, factor) };
+  steps.set(`${from}>${to}`, step);
+  return step;
 }
 
 /** How a person would write the step: a factor, a divisor, or both where neither has an end. */
-function stepInWords(from: Unit, to: Unit): string {
-  const factor = exactFactor(from, to);
+function stepInWords(from: Unit, to: Unit, factor: Fraction): string {
   const times = decimalOf(factor);
   if (times !== undefined && !(factor.compare(1) < 0 && factor.n === 1n)) return `× ${inTenFigures(times)}`;
   const inverse = factor.inverse();
