@@ -52,6 +52,7 @@ describe.each([
   ["nbs-1982-excerpt.csv", 83],
   ["nbs-1982-heat-capacities.csv", 129],
   ["calder-point-calorimetry.csv", 12],
+  ["calder-point-names.csv", 232],
 ])("%s", (name, rows) => {
   test("is planned without a question left and read in every row", () => {
     const { errors, final } = readFixture(name);
@@ -123,4 +124,13 @@ test("calder-point-long.csv: quantity and unit are read row by row", () => {
   expect(final.get(5)).toMatchObject({
     reading: { values: [{ digits: "-909.2", given: { text: "-217.3", unit: "kcal/mol", note: "× 4.184" } }] },
   });
+});
+
+test("calder-point-names.csv names every species of the two published tables once", () => {
+  const keys = (name: string) => new Set([...readFixture(name).final.values()].map(keyIn));
+  const named = [...readFixture("calder-point-names.csv").final.values()].map(keyIn);
+  expect(new Set(named).size).toBe(named.length);
+  expect([...named].sort()).toEqual(
+    [...new Set([...keys("codata-key-values.csv"), ...keys("nbs-1982-excerpt.csv")])].sort(),
+  );
 });

@@ -75,7 +75,7 @@ export async function seed(db: Kysely<DB>): Promise<void> {
   /** Takes a fixture through the intake as the steward would; answers the number of the draft revision. */
   const revisionOf = async (
     file: string,
-    source: NewSource | { sourceId: string },
+    source: NewSource | { sourceId: string } | null,
     text: { title: string; summary: string },
     settings: Partial<SheetSettings> = {},
   ): Promise<number> => {
@@ -92,7 +92,12 @@ export async function seed(db: Kysely<DB>): Promise<void> {
         uncertaintyKind: "expanded",
         ...settings,
       },
-      source: "sourceId" in source ? { kind: "known", sourceId: source.sourceId } : { kind: "new", source },
+      source:
+        source === null
+          ? null
+          : "sourceId" in source
+            ? { kind: "known", sourceId: source.sourceId }
+            : { kind: "new", source },
     });
     await readSheet(id);
     await leaveRowsOut(steward, id, null).catch(() => 0);
@@ -144,6 +149,15 @@ export async function seed(db: Kysely<DB>): Promise<void> {
   await decide(keyValues, null);
   await publish("The foundation of the table: the CODATA key values, 151 species.");
 
+  // Before the excerpt, so that its species are named by the time their values come.
+  const names = await revisionOf("calder-point-names.csv", null, {
+    title: "Names and CAS numbers",
+    summary:
+      "What the 151 species of the key values are called, and the 81 whose values come with the NBS excerpt. " +
+      "Written from memory; the check digit of every CAS number was tested.",
+  });
+  await decide(names, null);
+
   const excerpt = await revisionOf("nbs-1982-excerpt.csv", nbs, {
     title: "NBS tables, an excerpt",
     summary: "Eighty-one further species with all three values as printed, so that each can be closed.",
@@ -168,7 +182,9 @@ export async function seed(db: Kysely<DB>): Promise<void> {
     },
   );
   await decide(capacities, null);
-  await publish("Adds an excerpt of the NBS tables with stated ΔfG°, and heat capacities for the key values.");
+  await publish(
+    "Adds an excerpt of the NBS tables with stated ΔfG°, heat capacities for the key values, and names and CAS numbers.",
+  );
 
   const spring = await revisionOf("calder-point-spring.csv", notebook("Rotating-bomb calorimeter, spring campaign"), {
     title: "In-house calorimetry, spring campaign",
