@@ -71,7 +71,11 @@ export default [
   route("api/v1/editions/:edition/lookup", "routes/api.edition.lookup.ts"),
   route("api/v1/editions/:edition/table.csv", "routes/api.edition.table.ts"),
   route("api/v1/editions/:edition/table.csv-metadata.json", "routes/api.edition.table.description.ts"),
+  route("api/v1/editions/:edition/table.json", "routes/api.edition.table.json.ts"),
+  route("api/v1/editions/:edition/table.ndjson", "routes/api.edition.table.ndjson.ts"),
   route("api/v1/editions/:a/compare/:b", "routes/api.edition.compare.ts"),
+  route("api/v1/changes", "routes/api.changes.ts"),
+  route("api/v1/sources/:source", "routes/api.source.ts"),
   route("api/*", "routes/api.unknown.ts"),
 
   // Resources for pages (session only)

@@ -1,8 +1,9 @@
 import { createHash } from "node:crypto";
 import { database } from "#app/db/database.server.ts";
-import { type Edition, findDetailsAsOf, findValuesAsOf } from "./editions.queries.server.ts";
-import { findSources } from "./read.server.ts";
-import { fileHead, fileLine } from "./tableFile.ts";
+import { type Edition, findDetailsAsOf, findSourceDetailsAsOf } from "./editions.queries.server.ts";
+import { findSources, findSpeciesWithValues } from "./read.server.ts";
+import { type BesideTheLines, csvFormat, type TableFormat } from "./tableFile.ts";
+import { findIdsWithoutValue } from "./tableFile.queries.server.ts";
 
 /** What is known of a file before its bytes are sent. */
 export interface FileDigest {
@@ -15,36 +16,40 @@ export interface FileDigest {
 const PORTION = 1_000;
 
 /**
- * The lines of an edition's CSV in portions; its values never stand in memory all at once. An edition never changes, so
- * portions read one after another belong together.
+ * The file of an edition in portions; its values never stand in memory all at once. An edition never changes, so portions
+ * read one after another belong together.
  */
-export async function* tableFilePortions(n: number, size = PORTION): AsyncGenerator<Buffer> {
+export async function* tableFilePortions(
+  edition: Edition,
+  format: TableFormat = csvFormat,
+  size = PORTION,
+): AsyncGenerator<Buffer> {
+  const n = edition.number;
   const details = await findDetailsAsOf(n, {}, database());
   const sources = await findSources(n);
-  yield Buffer.from(fileHead(), "utf8");
+  yield Buffer.from(format.head(edition, sources, details), "utf8");
   for (let first = 0; first < details.length; first += size) {
-    const portion = new Map(details.slice(first, first + size).map((detail) => [detail.speciesId, detail]));
-    const values = await findValuesAsOf(n, { speciesIds: [...portion.keys()] }, database());
-    const lines = values.flatMap((value) => {
-      const detail = portion.get(value.speciesId);
-      return detail ? [fileLine({ edition: n, value, detail, sources })] : [];
-    });
-    yield Buffer.from(lines.join(""), "utf8");
+    const { species } = await findSpeciesWithValues(n, details.slice(first, first + size));
+    const texts = species.map(({ detail, values }, index) =>
+      format.species(edition, detail, values, sources, first + index === 0),
+    );
+    yield Buffer.from(texts.join(""), "utf8");
   }
+  if (format.foot !== "") yield Buffer.from(format.foot, "utf8");
 }
 
 // What was hashed once need not be hashed again: an edition's file is bound to its digest. A cache of a few bytes each.
 const known = new Map<string, FileDigest>();
 const MOST_KNOWN = 1_000;
 
-/** SHA-256 and length of an edition's CSV. */
-export async function digestTableFile(edition: Edition): Promise<FileDigest> {
-  const name = edition.digest.toString("hex");
+/** SHA-256 and length of an edition's file. */
+export async function digestTableFile(edition: Edition, format: TableFormat = csvFormat): Promise<FileDigest> {
+  const name = `${edition.digest.toString("hex")}.${format.extension}`;
   const found = known.get(name);
   if (found) return found;
   const hash = createHash("sha256");
   let length = 0;
-  for await (const portion of tableFilePortions(edition.number)) {
+  for await (const portion of tableFilePortions(edition, format)) {
     hash.update(portion);
     length += portion.length;
   }
@@ -54,9 +59,19 @@ export async function digestTableFile(edition: Edition): Promise<FileDigest> {
   return digest;
 }
 
-/** The edition's CSV as a stream of bytes. */
-export function streamTableFile(edition: Edition): ReadableStream<Uint8Array> {
-  return streamOf(tableFilePortions(edition.number));
+/** What belongs to an edition beside the lines of its CSV. */
+export async function findBesideTheLines(edition: Edition): Promise<BesideTheLines> {
+  const n = edition.number;
+  const bare = await findIdsWithoutValue(n, database());
+  return {
+    sources: await findSourceDetailsAsOf(n, {}, database()),
+    speciesWithoutValues: await findDetailsAsOf(n, { speciesIds: bare }, database()),
+  };
+}
+
+/** The edition's file as a stream of bytes. */
+export function streamTableFile(edition: Edition, format: TableFormat = csvFormat): ReadableStream<Uint8Array> {
+  return streamOf(tableFilePortions(edition, format));
 }
 
 /** Portions of a file as a stream, each made when it is asked for. */

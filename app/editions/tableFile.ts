@@ -1,6 +1,25 @@
 import { fullCitation } from "#app/sources/citation.ts";
 import { propertyInfo } from "#app/thermo/property.ts";
-import type { DetailAsOf, Sources, ValueAsOf } from "./editions.queries.server.ts";
+import type { DetailAsOf, Edition, SourceAsOf, Sources, ValueAsOf } from "./editions.queries.server.ts";
+
+/**
+ * A form in which a whole edition is written: what stands first, what stands for each species, and what stands last. The
+ * species come in the order of the bytes of their keys, each with its values in the order of the properties.
+ */
+export interface TableFormat {
+  /** Ends the name of the file. */
+  extension: string;
+  contentType: string;
+  head: (edition: Edition, sources: Sources, details: readonly DetailAsOf[]) => string;
+  species: (
+    edition: Edition,
+    detail: DetailAsOf,
+    values: readonly ValueAsOf[],
+    sources: Sources,
+    isFirst: boolean,
+  ) => string;
+  foot: string;
+}
 
 /** A line of the file before it is written: a value with its species and what they are read from. */
 export interface FileRow {
@@ -13,7 +32,7 @@ export interface FileRow {
 interface FileColumn {
   name: string;
   title: string;
-  datatype: "string" | "decimal" | "integer";
+  datatype: "string" | "decimal" | "integer" | "json";
   required: boolean;
   text: (row: FileRow) => string;
 }
@@ -75,6 +94,8 @@ const COLUMNS: readonly FileColumn[] = [
   column("citation", "Citation", "string", (row) => citationOf(row), false),
   column("doi", "DOI", "string", (row) => row.sources.get(row.value.sourceId)?.doi ?? "", false),
   column("since", "Edition in which the value came in", "integer", (row) => String(row.value.since)),
+  column("inchikey", "InChIKey", "string", (row) => row.detail.inchikey ?? "", false),
+  column("synonyms", "Other names, as a JSON list", "json", (row) => synonymsOf(row.detail), false),
   column("hash", "SHA-256 of the value's published fields", "string", (row) => row.value.rowHash.toString("hex")),
 ];
 
@@ -86,6 +107,11 @@ function column(
   required = true,
 ): FileColumn {
   return { name, title, datatype, required, text };
+}
+
+/** Names hold commas and semicolons, so a list of them is written as JSON. */
+function synonymsOf({ synonyms }: DetailAsOf): string {
+  return synonyms.length === 0 ? "" : JSON.stringify(synonyms);
 }
 
 function citationOf({ value, sources }: FileRow): string {
@@ -108,16 +134,36 @@ export function fileLine(row: FileRow): string {
   return csvRecord(COLUMNS.map((one) => one.text(row)));
 }
 
+/** The edition as CSV: one header line, one line a value. */
+export const csvFormat: TableFormat = {
+  extension: "csv",
+  contentType: "text/csv; charset=utf-8; header=present",
+  head: () => fileHead(),
+  species: (edition, detail, values, sources) =>
+    values.map((value) => fileLine({ edition: edition.number, value, detail, sources })).join(""),
+  foot: "",
+};
+
 /** The name an edition's file is saved under. */
-export function fileName(edition: number): string {
-  return `tablewright-edition-${edition}.csv`;
+export function fileName(edition: number, { extension }: Pick<TableFormat, "extension"> = csvFormat): string {
+  return `tablewright-edition-${edition}.${extension}`;
+}
+
+/** What belongs to an edition beside the lines of its CSV. */
+export interface BesideTheLines {
+  sources: readonly SourceAsOf[];
+  speciesWithoutValues: readonly DetailAsOf[];
 }
 
 /**
  * The description of the file as W3C CSVW has it (Metadata Vocabulary for Tabular Data, 2015). It holds what belongs to
- * this edition alone and nothing that a later one could change.
+ * this edition alone and nothing that a later one could change. Its notes hold what the lines do not: the citations as
+ * CSL-JSON, species without a value and the previous digest, so that the digest can be made again from both files.
  */
-export function fileDescription(edition: { number: number; publishedAt: Date; licence: string; digest: Buffer }) {
+export function fileDescription(
+  edition: Pick<Edition, "number" | "publishedAt" | "licence" | "digest" | "previousDigest">,
+  { sources, speciesWithoutValues }: BesideTheLines,
+) {
   return {
     "@context": "http://www.w3.org/ns/csvw",
     url: "table.csv",
@@ -137,5 +183,16 @@ export function fileDescription(edition: { number: number; publishedAt: Date; li
       })),
       primaryKey: ["species", "property"],
     },
+    notes: [
+      {
+        previousDigest: edition.previousDigest?.toString("hex") ?? null,
+        sources: sources.map(({ sourceId: id, citation, doi, kind, notice }) => ({ id, citation, doi, kind, notice })),
+        speciesWithoutValues: speciesWithoutValues.map(
+          ({ speciesId: id, key, printed: formula, label, name, cas, inchikey, synonyms }) => ({
+            ...{ id, species: key, formula, label, name, cas, inchikey, synonyms },
+          }),
+        ),
+      },
+    ],
   };
 }

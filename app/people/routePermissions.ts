@@ -114,7 +114,11 @@ export const routePermissions: Readonly<Record<string, RouteDoors>> = {
   "/api/v1/editions/:edition/lookup": { read: null, change: { scope: "read" } },
   "/api/v1/editions/:edition/table.csv": reads({ scope: "read" }),
   "/api/v1/editions/:edition/table.csv-metadata.json": reads({ scope: "read" }),
+  "/api/v1/editions/:edition/table.json": reads({ scope: "read" }),
+  "/api/v1/editions/:edition/table.ndjson": reads({ scope: "read" }),
   "/api/v1/editions/:a/compare/:b": reads({ scope: "read" }),
+  "/api/v1/changes": reads({ scope: "read" }),
+  "/api/v1/sources/:source": reads({ scope: "read" }),
   // Says only that there is nothing.
   "/api/*": both("public"),
 

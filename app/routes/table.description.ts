@@ -1,4 +1,5 @@
 import { fileDescription } from "#app/editions/tableFile.ts";
+import { findBesideTheLines } from "#app/editions/tableFile.server.ts";
 import { textAnswer } from "#app/http/caching.server.ts";
 import { forPage } from "#app/http/respond.server.ts";
 import { requireActing } from "#app/people/visitor.server.ts";
@@ -9,7 +10,7 @@ import { pinnedEdition } from "./edition/pin.server.ts";
 export const loader = forPage(async ({ request, params }: Route.LoaderArgs) => {
   await requireActing(request, "table:read");
   const edition = await pinnedEdition(request, params.edition);
-  return textAnswer(request, JSON.stringify(fileDescription(edition), null, 2), {
+  return textAnswer(request, JSON.stringify(fileDescription(edition, await findBesideTheLines(edition)), null, 2), {
     contentType: "application/csvm+json",
     keeping: "asked",
   });

@@ -36,8 +36,11 @@ const server = useServer({
 const PASSING = new Set(["date", "x-request-id", "connection", "keep-alive", "transfer-encoding"]);
 
 /** Status, headers and the SHA-256 of the bytes of one answer. */
-async function fetched(path: string): Promise<string> {
-  const answer = await server.fetch(`/api/v1${path}`, { headers: { Authorization: `Bearer ${key}` } });
+async function fetched(path: string, question?: unknown): Promise<string> {
+  const answer = await server.fetch(`/api/v1${path}`, {
+    headers: { Authorization: `Bearer ${key}`, ...(question ? { "Content-Type": "application/json" } : {}) },
+    ...(question ? { method: "POST", body: JSON.stringify(question) } : {}),
+  });
   const body = createHash("sha256")
     .update(Buffer.from(await answer.arrayBuffer()))
     .digest("hex");
@@ -46,6 +49,19 @@ async function fetched(path: string): Promise<string> {
     .map(([name, value]) => `${name}: ${value}`);
   return [String(answer.status), ...headers.sort(), body].join("\n");
 }
+
+/** Asked of every edition: keys of old and new, names, numbers, and what is ambiguous or unknown. */
+const QUESTION = [
+  "H2O(l)",
+  "water",
+  "7732-18-5",
+  "NH3(g)",
+  "ammonia",
+  "azane",
+  "NH3(g,ammonia)",
+  "CaCO3(cr)",
+  "XeF6(g)",
+];
 
 /** Every frozen answer of these editions, by address: each species by itself, its values, the list and the files. */
 async function frozenAnswers(editions: readonly number[]): Promise<Map<string, string>> {
@@ -58,9 +74,13 @@ async function frozenAnswers(editions: readonly number[]): Promise<Map<string, s
       `/editions/${n}/values?species=${encodeURIComponent(species.map((one) => one.key).join(","))}`,
       `/editions/${n}/table.csv`,
       `/editions/${n}/table.csv-metadata.json`,
+      `/editions/${n}/table.json`,
+      `/editions/${n}/table.ndjson`,
       ...species.map((one) => `/editions/${n}/species/${encodeURIComponent(one.key)}`),
     ];
     for (const path of paths) answers.set(path, await fetched(path));
+    const lookup = `/editions/${n}/lookup`;
+    answers.set(lookup, await fetched(lookup, { species: QUESTION }));
   }
   return answers;
 }

@@ -40,7 +40,11 @@ const addresses: readonly [operation: string, path: string][] = [
   ["get /editions/{edition}/values", "/editions/2/values?species=H2O(l),Na+(aq)&property=entropy,enthalpyOfFormation"],
   ["get /editions/{edition}/table.csv", "/editions/2/table.csv"],
   ["get /editions/{edition}/table.csv-metadata.json", "/editions/2/table.csv-metadata.json"],
+  ["get /editions/{edition}/table.json", "/editions/2/table.json"],
+  ["get /editions/{edition}/table.ndjson", "/editions/2/table.ndjson"],
   ["get /editions/{a}/compare/{b}", "/editions/1/compare/3"],
+  ["get /changes", "/changes?since=1"],
+  ["get /sources/{source}", "/sources/src_codata1989"],
   ["get /openapi.json", "/openapi.json"],
 ];
 const locked = addresses.filter(([operation]) => !operation.endsWith("openapi.json"));
@@ -185,12 +189,19 @@ describe("what is not there", () => {
 
 describe("pinning", () => {
   test.each(locked)("%s is kept for good under a number only where it never changes", async (operation, path) => {
-    const asked = /\/editions$|\/editions\/\{edition\}$|compare/.test(operation);
+    const asked = /\/editions$|\/editions\/\{edition\}$|compare|changes|sources/.test(operation);
     expect((await ask(path)).headers.get("Cache-Control")).toBe(asked ? "private, no-cache" : FROZEN);
   });
 
   test("current answers the newest edition's body, for moments, and names the numbered address", async () => {
-    for (const path of ["/species/H2O(l)", "/values?species=H2O(l)", "/table.csv", "/species?limit=2"]) {
+    for (const path of [
+      "/species/H2O(l)",
+      "/values?species=H2O(l)",
+      "/table.csv",
+      "/table.json",
+      "/table.ndjson",
+      "/species?limit=2",
+    ]) {
       const current = await ask(`/editions/current${path}`);
       const numbered = await ask(`/editions/3${path}`);
       expect(current.status).toBe(200);
@@ -446,6 +457,63 @@ describe("comparison", () => {
       cursor = page.next;
     }
     expect(changes).toEqual(whole.changes);
+  });
+});
+
+describe("news", () => {
+  const since = async (query: string) => {
+    const answer = await ask(`/changes${query}`);
+    return { status: answer.status, body: (await answer.json()) as Record<string, unknown> };
+  };
+
+  test("are the editions after the one that is known, the newest first, with their counts", async () => {
+    const { editions: all } = (await (await ask("/editions")).json()) as { editions: { number: number }[] };
+    const newest = all[0]?.number ?? 0;
+    for (const known of [0, 1, newest]) {
+      const { body } = await since(`?since=${known}`);
+      expect(body).toEqual({ edition: newest, since: known, editions: all.filter((one) => one.number > known) });
+    }
+  });
+
+  test.each([
+    ["", "/since"],
+    ["?since=-1", "/since"],
+    ["?since=01", "/since"],
+    ["?since=current", "/since"],
+    ["?since=999", "/since"],
+  ])("/changes%s is 422", async (query, pointer) => {
+    const { status, body } = await since(query);
+    expect([status, body]).toMatchObject([422, { errors: [{ pointer }] }]);
+  });
+});
+
+describe("a source", () => {
+  test("is cited as the newest edition cites it, with its DOI and as CSL-JSON", async () => {
+    const answer = await ask("/sources/src_nbstables1982");
+    const source = (await answer.json()) as Record<string, unknown>;
+    expect(source).toMatchObject({
+      id: "src_nbstables1982",
+      doi: "10.1063/1.555845",
+      csl: { title: expect.any(String) as string },
+    });
+    const value = (await (await ask("/editions/current/values?species=H2O(l)&property=heatCapacity")).json()) as {
+      values: { source: { citation: string } }[];
+    };
+    expect(source["citation"]).toBe(value.values[0]?.source.citation);
+  });
+
+  test("is the CSL item by itself where the caller accepts that", async () => {
+    const type = "application/vnd.citationstyles.csl+json";
+    const plain = await ask("/sources/src_nbstables1982");
+    const csl = await ask("/sources/src_nbstables1982", { headers: { Accept: `${type}, */*;q=0.1` } });
+    expect(csl.headers.get("Content-Type")?.split(";")[0]).toBe(type);
+    expect(csl.headers.get("ETag")).not.toBe(plain.headers.get("ETag"));
+    const { csl: item } = (await plain.json()) as { csl: object };
+    expect(await csl.json()).toMatchObject({ ...item, id: "src_nbstables1982" });
+  });
+
+  test.each(["nothing", "__proto__", "src_CODATA1989", "a%2Fb"])("%s is none", async (id) => {
+    expect((await ask(`/sources/${id}`)).status).toBe(404);
   });
 });
 

@@ -16,6 +16,7 @@ import {
   type ValueAsOf,
 } from "#app/editions/editions.queries.server.ts";
 import { EVERY_SPECIES, readSearch, type SpeciesFilter } from "#app/editions/search.ts";
+import { csvFormat } from "#app/editions/tableFile.ts";
 import { tableFilePortions } from "#app/editions/tableFile.server.ts";
 import { useDatabase } from "#tests/support/database.ts";
 import { publishThreeEditions } from "#tests/support/editions.ts";
@@ -86,9 +87,10 @@ describe("reading as of an edition", () => {
 
 test("a download read in portions is the whole, in order, whatever their size", async () => {
   workOn(database.app);
+  const edition = await findEdition(2, database.app);
   const read = async (size: number) => {
     const portions: Buffer[] = [];
-    for await (const portion of tableFilePortions(2, size)) portions.push(portion);
+    for await (const portion of edition ? tableFilePortions(edition, csvFormat, size) : []) portions.push(portion);
     return Buffer.concat(portions).toString("utf8");
   };
   const whole = await read(1_000);

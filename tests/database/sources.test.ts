@@ -302,7 +302,7 @@ describe("the page of a source", () => {
       for await (const portion of portions) parts.push(portion);
       return Buffer.concat(parts).toString("utf8").split("\r\n").filter(Boolean);
     };
-    const whole = await textOf(tableFilePortions(2));
+    const whole = await textOf(tableFilePortions(await edition(2)));
     const source = await findSourceIn(await edition(2), CODATA);
     const own = await textOf(sourceFilePortions(2, source, 1));
     expect(own).toEqual(whole.filter((line, index) => index === 0 || line.includes(CODATA)));

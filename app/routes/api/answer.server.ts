@@ -1,6 +1,6 @@
 import type { Edition } from "#app/editions/editions.queries.server.ts";
 import type { ResolvedEdition } from "#app/editions/resolve.server.ts";
-import { fileName } from "#app/editions/tableFile.ts";
+import { csvFormat, fileName, type TableFormat } from "#app/editions/tableFile.ts";
 import { digestTableFile, streamTableFile } from "#app/editions/tableFile.server.ts";
 import { bodyDigest, type Keeping, keptAnswer } from "#app/http/caching.server.ts";
 import { BadRequest, Invalid } from "#app/http/errors.ts";
@@ -50,18 +50,19 @@ export function alone(name: string, given: Readonly<Record<string, unknown>>, ot
   if (clash) throw new BadRequest(`The parameter "${name}" names one species by itself; leave "${clash}" out.`);
 }
 
-/** The answer that downloads an edition's CSV, for programs and for people alike. */
+/** The answer that downloads a whole edition in one form, for programs and for people alike. */
 export async function tableFileAnswer(
   request: Request,
   edition: Edition,
   keeping: Keeping,
   headers: Readonly<Record<string, string>>,
+  format: TableFormat = csvFormat,
 ): Promise<Response> {
-  const { sha256, length } = await digestTableFile(edition);
+  const { sha256, length } = await digestTableFile(edition, format);
   const head = {
-    contentType: "text/csv; charset=utf-8; header=present",
+    contentType: format.contentType,
     keeping,
-    headers: { "Content-Disposition": `attachment; filename="${fileName(edition.number)}"`, ...headers },
+    headers: { "Content-Disposition": `attachment; filename="${fileName(edition.number, format)}"`, ...headers },
   };
-  return keptAnswer(request, head, bodyDigest(sha256, length), () => streamTableFile(edition));
+  return keptAnswer(request, head, bodyDigest(sha256, length), () => streamTableFile(edition, format));
 }

@@ -198,6 +198,7 @@ export type ApiSpecies = z.output<typeof speciesShape>;
 export type ApiEdition = z.output<typeof editionShape>;
 export type ApiValueChange = z.output<typeof valueChangeShape>;
 export type ApiComparison = z.output<typeof comparison>;
+export type ApiSourceFacts = Omit<ApiTableSource, "hash">;
 export type ApiLookupEntry = z.output<typeof lookupEntry>;
 
 // --- What a request may say ---------------------------------------------------
@@ -261,6 +262,9 @@ const editionParameter = z.object({
 });
 
 const NONE = z.object({});
+
+/** A citation by itself, as the Citation Style Language has it. */
+export const CSL_TYPE = "application/vnd.citationstyles.csl+json";
 
 // --- Operations ----------------------------------------------------------------
 
@@ -456,6 +460,122 @@ export const downloadTable = operation({
   scope: "read",
 });
 
+const hash = sha256.meta({ description: "SHA-256 that the digest of the edition is made from." });
+
+const editionFacts = {
+  edition: editionNumber,
+  publishedAt: time,
+  notes: z.string(),
+  licence: z.string().meta({ description: "SPDX licence identifier." }),
+  digest: sha256,
+  previousDigest: sha256.nullable(),
+  withdraws: z.object({ edition: editionNumber, reason: z.string() }).nullable(),
+};
+
+const sourceFacts = {
+  citation: z.string(),
+  csl: z.record(z.string(), z.unknown()).meta({ description: "The citation as CSL-JSON." }),
+  doi: z.string().nullable(),
+  kind: z.enum(["measurement", "evaluation", "calculation", "estimate"]).meta({
+    description: "How the values of the source came about.",
+  }),
+  notice: z.string().nullable().meta({ description: "A retraction, a correction or another warning." }),
+  since: editionNumber.meta({ description: "The edition in which it was first cited so." }),
+};
+
+const { key: _key, values: _values, ...speciesFacts } = speciesShape.shape;
+const { id: _id, species: _species, property: _property, source: _source, ...valueFacts } = valueShape.shape;
+
+const fileSource = z.object({ ...sourceFacts, hash }).meta({ id: "TableSource" });
+const fileSpecies = z.object({ ...speciesFacts, hash }).meta({ id: "TableSpecies" });
+const fileValue = z
+  .object({
+    ...valueFacts,
+    source: z.string().meta({ description: "Id of the source." }),
+    digitsOf: z
+      .object({ temperature: digitsText.optional(), standardPressure: digitsText.optional() })
+      .optional()
+      .meta({ description: "The digits of those that a number does not keep, such as 298.150." }),
+    hash,
+  })
+  .meta({ id: "TableValue", description: "A value in the file of a whole edition, under its species and property." });
+
+const tableJson = z
+  .object({
+    ...editionFacts,
+    sources: z.record(z.string(), fileSource).meta({ description: "By id." }),
+    species: z.record(z.string(), fileSpecies).meta({ description: "By key, in the order of its UTF-8 bytes." }),
+    values: z.record(z.string(), z.partialRecord(property, fileValue)).meta({
+      description:
+        "By key, then property: the JSON Pointer /values/H2O(l)/entropy stays. A species without values has none.",
+    }),
+  })
+  .meta({ id: "Table" });
+
+const tableLine = z
+  .discriminatedUnion("kind", [
+    z.object({ kind: z.literal("edition"), ...editionFacts }),
+    z.object({
+      kind: z.literal("source"),
+      id: z.string(),
+      sourceKind: sourceFacts.kind,
+      ...omitKind(fileSource.shape),
+    }),
+    z.object({ kind: z.literal("species"), key, ...fileSpecies.shape }),
+    z.object({ kind: z.literal("value"), species: key, property, ...fileValue.shape }),
+  ])
+  .meta({
+    id: "TableLine",
+    description:
+      "One line of table.ndjson: the edition first, then its sources, then each species followed by its values.",
+  });
+
+function omitKind({ kind: _kind, ...rest }: typeof fileSource.shape) {
+  return rest;
+}
+
+export type ApiTableSource = z.output<typeof fileSource>;
+export type ApiTableSpecies = z.output<typeof fileSpecies>;
+export type ApiTableValue = z.output<typeof fileValue>;
+export type ApiTableLine = z.output<typeof tableLine>;
+export type ApiEditionFacts = Pick<z.output<typeof tableJson>, keyof typeof editionFacts>;
+
+export const downloadTableJson = operation({
+  id: "downloadTableJson",
+  group: "Tables",
+  method: "get",
+  path: "/editions/{edition}/table.json",
+  summary: "The whole edition as one JSON document",
+  description:
+    "Sources by id, species by key, values by species key and property, each in the order of the UTF-8 bytes. Holds every field that the digest is made from. The bytes never change.",
+  parameters: editionParameter,
+  query: NONE,
+  answer: { description: "The table.", mediaType: "application/json", schema: tableJson },
+  otherStatuses: [304, 400, 404],
+  headers: ["Content-Disposition", "Content-Location"],
+  scope: "read",
+});
+
+export const downloadTableLines = operation({
+  id: "downloadTableLines",
+  group: "Tables",
+  method: "get",
+  path: "/editions/{edition}/table.ndjson",
+  summary: "The whole edition as lines of JSON",
+  description:
+    "One JSON document a line (TableLine), for reading as it arrives: the edition, its sources, then each species with its values behind it. Holds every field that the digest is made from. The bytes never change.",
+  parameters: editionParameter,
+  query: NONE,
+  answer: {
+    description: "The table. The shape is that of one line.",
+    mediaType: "application/x-ndjson",
+    schema: tableLine,
+  },
+  otherStatuses: [304, 400, 404],
+  headers: ["Content-Disposition", "Content-Location"],
+  scope: "read",
+});
+
 export const describeTable = operation({
   id: "describeTable",
   group: "Tables",
@@ -494,6 +614,61 @@ export const compareEditions = operation({
   scope: "read",
 });
 
+export const readSource = operation({
+  id: "readSource",
+  group: "Sources",
+  method: "get",
+  path: "/sources/{source}",
+  summary: "A source",
+  description:
+    "As the newest edition cites it: its citation in one line and as CSL-JSON, its DOI, and a notice such as a retraction. With Accept: application/vnd.citationstyles.csl+json the answer is the CSL item itself, which names the edition in its member custom. May change: ask again with If-None-Match.",
+  parameters: z.object({
+    source: z.string().meta({
+      description: "Id of the source, as values name it.",
+      example: "src_3f1c0a9be2d84c55a7d1f0e6b9c84d21",
+    }),
+  }),
+  query: NONE,
+  answer: {
+    description: "The source.",
+    mediaType: "application/json",
+    schema: z.object({ edition: editionNumber, id: z.string(), ...sourceFacts }).meta({ id: "Source" }),
+    others: { [CSL_TYPE]: z.looseObject({ id: z.string(), custom: z.object({ edition: editionNumber }) }) },
+  },
+  otherStatuses: [304, 400, 404],
+  headers: ["Vary"],
+  scope: "read",
+});
+
+export const listChanges = operation({
+  id: "listChanges",
+  group: "Editions",
+  method: "get",
+  path: "/changes",
+  summary: "Editions since one that is known",
+  description:
+    "The cheap way to ask for news: the editions after since, the newest first, each with its change counts; an empty list when there are none. Send the ETag back in If-None-Match and nothing new answers 304.",
+  parameters: NONE,
+  query: z.object({
+    since: z
+      .string("Say since which edition: a number, or 0 for all.")
+      .regex(/^(?:0|[1-9]\d{0,8})$/, "Give the number of an edition, or 0 for all.")
+      .transform(Number)
+      .meta({ description: "Number of the edition that is known; 0 asks for all.", example: "1" }),
+  }),
+  answer: {
+    description: "The editions.",
+    mediaType: "application/json",
+    schema: z.object({
+      edition: editionNumber.nullable().meta({ description: "Number of the newest edition; null before the first." }),
+      since: z.int(),
+      editions: z.array(editionShape).meta({ description: "The newest first." }),
+    }),
+  },
+  otherStatuses: [304, 400, 422],
+  scope: "read",
+});
+
 export const readContract = operation({
   id: "readContract",
   group: "Contract",
@@ -518,6 +693,10 @@ export const readingOperations = [
   lookUpSpecies,
   downloadTable,
   describeTable,
+  downloadTableJson,
+  downloadTableLines,
   compareEditions,
+  listChanges,
+  readSource,
   readContract,
 ] as const;

@@ -1,12 +1,12 @@
 import type { ValueChange } from "#app/editions/compare.ts";
-import type { DetailAsOf, Edition, Sources, ValueAsOf } from "#app/editions/editions.queries.server.ts";
+import type { DetailAsOf, Edition, SourceAsOf, Sources, ValueAsOf } from "#app/editions/editions.queries.server.ts";
 import { API_BASE } from "#app/http/apiContract.ts";
 import { paths } from "#app/paths.ts";
 import { fullCitation } from "#app/sources/citation.ts";
 import { toNumber } from "#app/thermo/digits.ts";
 import { readNumber } from "#app/thermo/number.ts";
 import { propertyInfo } from "#app/thermo/property.ts";
-import type { ApiEdition, ApiSpecies, ApiValue, ApiValueChange } from "./contract.ts";
+import type { ApiEdition, ApiSourceFacts, ApiSpecies, ApiValue, ApiValueChange } from "./contract.ts";
 
 /** An address inside an edition, as a path. Keys are encoded so that a slash in one does not end the segment. */
 export const apiPaths = {
@@ -18,7 +18,10 @@ export const apiPaths = {
   values: (edition: number | string) => `${API_BASE}/editions/${edition}/values`,
   lookup: (edition: number | string) => `${API_BASE}/editions/${edition}/lookup`,
   table: (edition: number | string) => `${API_BASE}/editions/${edition}/table.csv`,
+  tableJson: (edition: number | string) => `${API_BASE}/editions/${edition}/table.json`,
+  tableLines: (edition: number | string) => `${API_BASE}/editions/${edition}/table.ndjson`,
   tableDescription: (edition: number | string) => `${API_BASE}/editions/${edition}/table.csv-metadata.json`,
+  source: (id: string) => `${API_BASE}/sources/${encodeURIComponent(id)}`,
   compare: (a: number | string, b: number | string) => `${API_BASE}/editions/${a}/compare/${b}`,
 } as const;
 
@@ -81,6 +84,11 @@ export function apiSpecies(detail: DetailAsOf, values: readonly ValueAsOf[], sou
     since: detail.since,
     values: values.map((value) => apiValue(value, sources)),
   };
+}
+
+/** A source as the API answers it, without its id. */
+export function apiSource({ citation, doi, kind, notice, since }: SourceAsOf): ApiSourceFacts {
+  return { citation: fullCitation(citation), csl: citation, doi, kind, notice, since };
 }
 
 /** An edition as the API answers it; `publicUrl` is the service's origin. */
