@@ -268,7 +268,12 @@ describe("words", () => {
 
   test("a species called otherwise says only what changes", () => {
     expect(changesOf(detail("copper(II) oxide", "1317-38-0"), detail("cupric oxide", "1317-38-0"))).toEqual([
-      { label: "name", before: "cupric oxide", after: "copper(II) oxide" },
+      {
+        label: "name",
+        before: "cupric oxide",
+        after: "copper(II) oxide",
+        runs: expect.arrayContaining([{ kind: "same", text: " oxide" }]),
+      },
     ]);
   });
 });

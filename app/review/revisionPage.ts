@@ -1,4 +1,5 @@
 import type { Severity, SourceKind, Suggestion } from "#app/checks/types.ts";
+import { type TextRun, wordRuns } from "#app/editions/comparePage.ts";
 import { type Digits, subtract } from "#app/thermo/digits.ts";
 import { showDigits } from "#app/thermo/notation.ts";
 import { type Property, PROPERTIES, propertyInfo } from "#app/thermo/property.ts";
@@ -173,6 +174,8 @@ export interface TextChange {
   label: string;
   before: string | null;
   after: string | null;
+  /** Word by word, where a text was changed in part. */
+  runs?: readonly TextRun[];
 }
 
 export interface SuggestionView {
@@ -705,5 +708,16 @@ export function textChanges(
   return fields(after)
     .map(([label, said]) => ({ label, before: stood.get(label) || null, after: said || null }))
     .filter((change) => change.before !== change.after)
-    .filter((change) => told === null || change.after === null || !told.startsWith(change.after));
+    .filter((change) => told === null || change.after === null || !told.startsWith(change.after))
+    .map(wordByWord);
+}
+
+/** Registry numbers and keys are read whole: one letter more or less is another one. */
+const READ_WHOLE: readonly string[] = ["key", "formula", "form", "CAS", "InChIKey", "DOI", "kind"];
+
+function wordByWord(change: TextChange): TextChange {
+  const { label, before, after } = change;
+  if (before === null || after === null || READ_WHOLE.includes(label)) return change;
+  const runs = wordRuns({ field: label, before, after });
+  return runs.some((run) => run.kind === "same" && run.text.trim() !== "") ? { ...change, runs } : change;
 }

@@ -397,7 +397,7 @@ describe("what a species is called", () => {
     const form = { ...sent, seen: await seen(path), cas: "64-17-5", reason: "As on the bottle." };
     const asked = await post(path, form);
     expect(asked.status).toBe(422);
-    expect(asked.text).toContain("(g,ethanol) , a species of another formula, carries the CAS number 64-17-5 already.");
+    expect(asked.text).toContain(", a species of another formula, carries the CAS number 64-17-5 already.");
     const answer = fieldOf(asked.html, "answer") ?? "";
     expect(answer).not.toBe("");
     expect((await post(path, { ...form, answer: "something else" })).status).toBe(422);

@@ -257,18 +257,22 @@ function Figured({ line, tails }: { line: LineView; tails: Tails }) {
 /** What is said in words: what stood struck out, what shall stand underlined. */
 function Changes({ changes }: { changes: readonly TextChange[] }) {
   if (changes.length === 0) return <span className="text-soft">as it stands</span>;
-  return changes.map(({ label, before, after }, index) => (
+  return changes.map(({ label, before, after, runs }, index) => (
     <span key={label}>
       {index > 0 && <span className="text-soft"> · </span>}
       {label !== "name" && label !== "citation" && <span className="text-soft">{label} </span>}
-      {before !== null && (
+      {runs?.map(({ kind, text }, at) => {
+        if (kind === "went") return <del key={at}>{text}</del>;
+        return kind === "came" ? <ins key={at}>{text}</ins> : <span key={at}>{text}</span>;
+      })}
+      {!runs && before !== null && (
         <>
           <del>
             <Words label={label} text={before} />
           </del>{" "}
         </>
       )}
-      {after !== null && (
+      {!runs && after !== null && (
         <ins>
           <Words label={label} text={after} />
         </ins>
