@@ -34,6 +34,7 @@ const LABELS: Readonly<Record<string, string>> = {
   by: "by way of",
   sha256: "SHA-256",
   cas: "CAS number",
+  email: "address",
   endsAt: "good until",
   speciesId: "species",
   sourceId: "source",
@@ -79,7 +80,9 @@ function membersInWords(members: Readonly<Record<string, unknown>>): DetailLine[
 }
 
 function labelOf(name: string): string {
-  return LABELS[name] ?? name.replace(/([a-z0-9])([A-Z])/g, (_pair, a: string, b: string) => `${a} ${b.toLowerCase()}`);
+  // Details come from forms too: a member may be named like one of an object's own.
+  if (Object.hasOwn(LABELS, name)) return LABELS[name] ?? name;
+  return name.replace(/([a-z0-9])([A-Z])/g, (_pair, a: string, b: string) => `${a} ${b.toLowerCase()}`);
 }
 
 function isObject(value: unknown): value is Record<string, unknown> {

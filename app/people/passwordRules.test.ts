@@ -1,6 +1,6 @@
 import { describe, expect, test } from "vitest";
 import { commonWords, ownWords } from "./commonPasswords.ts";
-import { LONGEST_PASSWORD, passwordProblem } from "./passwordRules.ts";
+import { asTyped, isTooLong, LONGEST_PASSWORD, passwordProblem } from "./passwordRules.ts";
 
 describe("length", () => {
   test("seven characters are too few, eight are enough", () => {
@@ -22,6 +22,21 @@ describe("length", () => {
     const phrase = "seven grey kettles ".repeat(20);
     expect(passwordProblem(phrase.slice(0, LONGEST_PASSWORD))).toBeNull();
     expect(passwordProblem(phrase.slice(0, LONGEST_PASSWORD + 1))).toMatch(/longer than 256/);
+  });
+});
+
+describe("one form of a password", () => {
+  test("wide letters and letters of two code points count as what they stand for", () => {
+    expect(asTyped("ｖＫ９ＭA\u0308rz")).toBe("vK9MÄrz");
+    expect(passwordProblem("ｋｚｖ\u3000ｍｑｅ")).toMatch(/7 characters/);
+    expect(passwordProblem("ｐａｓｓｗｏｒｄ１２３")).toMatch(/tried first/);
+  });
+
+  test("a sign that stands for many letters does not slip past the longest", () => {
+    // U+FDFA is written out in 18 characters (Unicode's own data, from memory).
+    expect(isTooLong("\uFDFA".repeat(20))).toBe(true);
+    // 256 letters with their accents apart are 512 code points as typed.
+    expect(isTooLong("é".normalize("NFD").repeat(256))).toBe(false);
   });
 });
 

@@ -45,8 +45,7 @@ export const loader = forPage(async ({ request, params }: Route.LoaderArgs) => {
       number,
       at,
       act,
-      to: objectName ?? objectId,
-      objectKind,
+      to: objectId === person.id ? "own account" : `${objectKind} ${objectName ?? objectId}`,
     })),
   };
 });
@@ -140,9 +139,7 @@ export default function PersonPageView({ loaderData, actionData }: Route.Compone
                     <Time at={entry.at} withTime />
                   </td>
                   <td>{actInWords(entry.act)}</td>
-                  <td>
-                    {entry.objectKind} <span className="break-all">{entry.to}</span>
-                  </td>
+                  <td className="break-words">{entry.to}</td>
                 </tr>
               ))}
             </tbody>

@@ -17,8 +17,9 @@ import type { Route } from "./+types/record";
 
 export const meta: Route.MetaFunction = () => [{ title: "Record · Tablewright" }];
 
-/** Lines of an entry's detail that stand open in its row. */
-const WORDS_SHOWN = 4;
+/** Lines of an entry's detail that stand open in its row: the short ones. */
+const WORDS_SHOWN = 3;
+const SHORT = 140;
 
 export const loader = forPage(async ({ request }: Route.LoaderArgs) => {
   const acting = await requireActing(request, "record:read");
@@ -196,8 +197,13 @@ function nameOf(act: string): string {
 }
 
 function Row({ entry }: { entry: Entry }) {
+  const open = entry.words
+    .filter(({ body }) => body.length <= SHORT && !/^[0-9a-f]{64}$/.test(body))
+    .slice(0, WORDS_SHOWN);
+  const folded = entry.words.filter((line) => !open.includes(line));
   const to = objectPath(entry.objectKind, entry.objectId);
-  const name = entry.objectName ?? entry.objectId;
+  const own = entry.objectKind === "person" && entry.objectId === entry.actor;
+  const name = own ? "own account" : (entry.objectName ?? entry.objectId);
   return (
     <tr>
       <th scope="row" className="figure">
@@ -206,34 +212,33 @@ function Row({ entry }: { entry: Entry }) {
       <td className="tight">
         <Time at={entry.at} withTime />
       </td>
-      <td>
+      <td className="tight">
         {entry.person && entry.actor ? (
           <Link to={paths.person(entry.actor)}>{entry.person}</Link>
         ) : (
           "the service itself"
         )}
-        {entry.keyName && <span className="text-soft"> with the key “{entry.keyName}”</span>}
+        {entry.keyName && <span className="block text-soft">with the key “{entry.keyName}”</span>}
       </td>
       <td>{actInWords(entry.act)}</td>
       <td>
         {entry.objectKind} {to ? <Link to={to}>{name}</Link> : <span className="break-all text-soft">{name}</span>}
       </td>
       <td className="wide">
-        {entry.words.length > 0 && (
-          <ul className="list-none">
-            {entry.words.slice(0, WORDS_SHOWN).map(({ label, body }) => (
-              <li key={label} className="break-words">
+        {open.length > 0 && (
+          <p className="break-words">
+            {open.map(({ label, body }, index) => (
+              <span key={label}>
+                {index > 0 && " · "}
                 <span className="text-soft">{label}</span> {body}
-              </li>
+              </span>
             ))}
-          </ul>
+          </p>
         )}
         <details className="disclosure">
-          <summary>
-            {entry.words.length > WORDS_SHOWN ? "more, and its place in the chain" : "place in the chain"}
-          </summary>
-          <dl className="max-w-[32rem] text-fine">
-            {entry.words.slice(WORDS_SHOWN).map(({ label, body }) => (
+          <summary>{folded.length > 0 ? "more, and its place in the chain" : "its place in the chain"}</summary>
+          <dl className="max-w-[36rem] text-fine">
+            {folded.map(({ label, body }) => (
               <Fact key={label} label={label} body={body} />
             ))}
             <Fact label="hash" body={entry.hash} />

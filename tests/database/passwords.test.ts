@@ -36,6 +36,18 @@ async function resetToken(email: string): Promise<string> {
   return linkIn(outbox.newestTo(email)).replace("/reset/", "");
 }
 
+test("typed in wide or narrow letters, as one code point or two, a password is the same", async () => {
+  const analyst = await makePerson("Two Keyboards", "analyst");
+  const chosen = "ｎｉｎｅ\u3000ｏａｋ drawers for März";
+  await changePassword(
+    analyst,
+    { current: PASSWORD, password: chosen },
+    { sessionId: "00".repeat(32), address: from().address },
+  );
+  expect(await canSignIn(analyst.person.email, "nine oak drawers for März".normalize("NFD"))).toBe(true);
+  expect(await canSignIn(analyst.person.email, "nine oak drawers for Marz")).toBe(false);
+});
+
 describe("changing the password", () => {
   test("needs the current one; a wrong one changes nothing", async () => {
     const analyst = await makePerson("No Current", "analyst");
