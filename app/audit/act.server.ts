@@ -53,6 +53,8 @@ const CONSTRAINT_SENTENCES: Record<string, string> = {
     "Another accepted line already waits for this source; publish it or have it declined first.",
   revision_line_once_species: "This revision already has a line for this value.",
   revision_line_once_source: "This revision already has a line for this source.",
+  species_detail_key_once_an_edition:
+    "Two species of this edition would have one key. Have one of the lines that name them declined or written anew.",
   person_email_unique: "There is already an account with this address.",
   edition_withdrawn_once: "That edition was already withdrawn.",
   finding_set_aside_once: "This finding was already set aside.",

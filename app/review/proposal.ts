@@ -314,3 +314,6 @@ export const NEW_SOURCE = "new";
 
 /** Name of the box that withdraws a value, or moves it to another species. */
 export const takesField = (property: Property): string => `takes.${property}`;
+
+/** Name of the box that takes them all. */
+export const TAKES_ALL = "takes.all";

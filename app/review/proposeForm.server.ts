@@ -4,6 +4,7 @@ import { findNewestEdition } from "#app/editions/editions.queries.server.ts";
 import type { FieldError } from "#app/http/errors.ts";
 import { demand } from "#app/people/permissions.ts";
 import type { Acting } from "#app/people/person.ts";
+import { newSourceId } from "#app/sources/newId.server.ts";
 import { describedSource, readSourceForm } from "#app/sources/sourceForm.ts";
 import { findChoosableSources } from "#app/sources/sources.queries.server.ts";
 import { readIdentity } from "#app/species/identityForm.ts";
@@ -24,6 +25,7 @@ import {
   readNames,
   readValues,
   reasonOf,
+  TAKES_ALL,
   takesField,
   type Typed,
   wrong,
@@ -98,7 +100,7 @@ async function sourceOf(
       for (const { field, detail } of described.errors) wrong(trouble, `source.${field}`, detail);
       return null;
     }
-    const id = `src_${randomUUID().replaceAll("-", "")}`;
+    const id = newSourceId();
     return { id, isNew: true, line: sourceLine(id, { kind: "source", ...describedSource(described.source) }) };
   }
   const edition = (await findNewestEdition(trx))?.number ?? 0;
@@ -208,7 +210,9 @@ export async function proposeWithdrawal(acting: Acting, key: string, typed: Type
 /** The values ticked in a form, of those that stand or wait. */
 function takenProperties(species: ProposableSpecies, typed: Typed, trouble: FormTrouble): Property[] {
   const properties = PROPERTIES.filter(
-    (property) => typed(takesField(property)) === "on" && species.places.get(property)?.content.kind === "value",
+    (property) =>
+      (typed(takesField(property)) === "on" || typed(TAKES_ALL) === "on") &&
+      species.places.get(property)?.content.kind === "value",
   );
   if (properties.length === 0) wrong(trouble, "takes", "Tick at least one value.");
   return properties;

@@ -5,6 +5,8 @@ import { Forbidden, Invalid, NotFound, Refused } from "#app/http/errors.ts";
 import type { Acting } from "#app/people/person.ts";
 import type { ProposedLine } from "#app/review/propose.server.ts";
 import { proposeLines } from "#app/review/propose.server.ts";
+import { proposeMove, proposeNames, proposeSpecies, proposeWithdrawal } from "#app/review/proposeForm.server.ts";
+import { findProposePage } from "#app/review/proposePage.server.ts";
 import { findLines, findNewestExamination, findWaitingForPlace } from "#app/review/review.queries.server.ts";
 import { findLinesWithBases, sendToReview, takeLineOut } from "#app/review/revise.server.ts";
 import type { Property } from "#app/thermo/property.ts";
@@ -228,5 +230,97 @@ describe("two people at once", () => {
     const [later] = await findLines(other, database.app);
     expect(first?.againstRow).not.toBeNull();
     expect(later?.againstRow).toBe(first?.againstRow);
+  });
+});
+
+/** A form as a browser sends it. */
+const sent =
+  (fields: Record<string, string>) =>
+  (name: string): string =>
+    fields[name] ?? "";
+
+async function seen(key: string): Promise<string> {
+  return (await findProposePage(steward, key, null)).species.seen;
+}
+
+describe("forms of two people at once", () => {
+  test("one new species is brought once", async () => {
+    const form = sent({ formula: "H2O2", phase: "l", name: "hydrogen peroxide", reason: "Wanted.", title: "Peroxide" });
+    const outcomes = await Promise.all([proposeSpecies(steward, form), proposeSpecies(second, form)]);
+    const made = outcomes.flatMap((one) => (one.ok ? [one.revisionId] : []));
+    expect(made).toHaveLength(1);
+    expect(outcomes.find((one) => !one.ok)).toMatchObject({
+      errors: [expect.objectContaining({ detail: expect.stringContaining(`proposed in revision ${made[0]} already`) })],
+    });
+  });
+
+  test("a name is not written over one that was accepted after its form was opened", async () => {
+    const opened = await seen("O2(g)");
+    const names = (name: string, title: string) =>
+      sent({ formula: "O2", label: "", name, reason: "No name yet.", title, seen: opened });
+    const first = await proposeNames(steward, "O2(g)", names("dioxygen", "One name"));
+    await acceptAll(steward, reviewer, first.ok ? first.revisionId : 0);
+    await expect(proposeNames(second, "O2(g)", names("oxygen", "Another name"))).rejects.toThrow(
+      "What O2(g) is called was changed in the table since you opened the page.",
+    );
+    // The page now shows what waits, and a proposal is written against that.
+    const page = await findProposePage(second, "O2(g)", null);
+    expect(page.species.detail.name).toBe("dioxygen");
+  });
+});
+
+describe("to the next edition", () => {
+  test("a whole species loses its values and keeps its name; the edition before keeps both", async () => {
+    const before = await edition();
+    const outcome = await proposeWithdrawal(
+      steward,
+      "H2O(g)",
+      sent({ "takes.all": "on", reason: "Measured on wet gas.", title: "Vapour goes out", seen: await seen("H2O(g)") }),
+    );
+    await acceptAll(steward, reviewer, outcome.ok ? outcome.revisionId : 0);
+    await publishWaiting(reviewer);
+    const now = await edition();
+    expect(now).toBe(before + 1);
+    const id = await speciesId("H2O(g)");
+    expect(await findValuesAsOf(now, { speciesIds: [id] }, database.app)).toEqual([]);
+    expect(await findValuesAsOf(before, { speciesIds: [id] }, database.app)).toHaveLength(1);
+    expect(await findDetailsAsOf(now, { speciesIds: [id] }, database.app)).toHaveLength(1);
+  });
+
+  test("values of the wrong species stand with the right one, digit by digit, with their source", async () => {
+    const id = await speciesId("H2O(l)");
+    const [stood] = await findValuesAsOf(
+      await edition(),
+      { speciesIds: [id], properties: ["enthalpyOfFormation"] },
+      database.app,
+    );
+    const outcome = await proposeMove(
+      steward,
+      "H2O(l)",
+      sent({
+        "takes.enthalpyOfFormation": "on",
+        formula: "D2O",
+        phase: "l",
+        name: "heavy water",
+        reason: "The sample was heavy water.",
+        title: "Heavy water",
+        seen: await seen("H2O(l)"),
+      }),
+    );
+    await acceptAll(steward, reviewer, outcome.ok ? outcome.revisionId : 0);
+    await publishWaiting(reviewer);
+    const now = await edition();
+    const moved = await findValuesAsOf(now, { speciesIds: [await speciesId("D2O(l)")] }, database.app);
+    expect(moved).toMatchObject([
+      {
+        property: "enthalpyOfFormation",
+        digits: stood?.digits,
+        sourceId: stood?.sourceId,
+        uncertainty: stood?.uncertainty,
+      },
+    ]);
+    expect(await findValuesAsOf(now, { speciesIds: [id], properties: ["enthalpyOfFormation"] }, database.app)).toEqual(
+      [],
+    );
   });
 });

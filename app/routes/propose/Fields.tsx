@@ -1,7 +1,7 @@
 import { useState } from "react";
 import { Link } from "react-router";
 import { paths } from "#app/paths.ts";
-import { ANSWER, answerTo, NEW_SOURCE, takesField, valueField } from "#app/review/proposal.ts";
+import { ANSWER, answerTo, NEW_SOURCE, TAKES_ALL, takesField, valueField } from "#app/review/proposal.ts";
 import type { ProposeChoices } from "#app/review/proposePage.server.ts";
 import { showDigits } from "#app/thermo/notation.ts";
 import { readDigits } from "#app/thermo/digits.ts";
@@ -343,6 +343,18 @@ export function TakenValues({
           </span>
         </label>
       ))}
+      {!ticked && standing.length > 1 && (
+        <label className="my-1 flex items-start gap-2.5">
+          <input
+            className="check"
+            type="checkbox"
+            name={TAKES_ALL}
+            value="on"
+            defaultChecked={form.typed(TAKES_ALL) === "on"}
+          />
+          <span>all of them, the whole species</span>
+        </label>
+      )}
       <FieldError field={field} />
     </fieldset>
   );

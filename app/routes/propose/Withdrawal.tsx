@@ -25,8 +25,8 @@ export function WithdrawalForm({
       <input type="hidden" name="seen" value={page.species.seen} />
       <Section head="What goes out">
         <p className="field-hint mb-3">
-          It goes out with the next edition; the editions before it keep it. Tick every value to take the whole species
-          out.
+          It goes out with the next edition; the editions before it keep it. A species without values keeps its name, so
+          that links to it lead somewhere.
         </p>
         <TakenValues form={form} places={page.places} ticked={false} />
       </Section>
