@@ -64,6 +64,12 @@ export const paths = {
   sourceValues: (edition: EditionInPath, source: string) =>
     `/editions/${edition}/sources/${segment(source)}/values.csv`,
   conventions: () => "/conventions",
+  conventionsSymbols: () => "/conventions/symbols",
+  conventionsStates: () => "/conventions/states",
+  conventionsUnits: () => "/conventions/units",
+  conventionsUncertainty: () => "/conventions/uncertainty",
+  conventionsSpellings: () => "/conventions/spellings",
+  conventionsChecks: () => "/conventions/checks",
   conventionsCheck: (check: string) => `/conventions/checks/${segment(check)}`,
 
   // People

@@ -44,6 +44,12 @@ export default [
   route("editions/:edition/sources/:source", "routes/edition.source.tsx"),
   route("editions/:edition/sources/:source/values.csv", "routes/edition.source.values.ts"),
   route("conventions", "routes/conventions.tsx"),
+  route("conventions/symbols", "routes/conventions.symbols.tsx"),
+  route("conventions/states", "routes/conventions.states.tsx"),
+  route("conventions/units", "routes/conventions.units.tsx"),
+  route("conventions/uncertainty", "routes/conventions.uncertainty.tsx"),
+  route("conventions/spellings", "routes/conventions.spellings.tsx"),
+  route("conventions/checks", "routes/conventions.checks.tsx"),
   route("conventions/checks/:check", "routes/conventions.check.tsx"),
 
   // People

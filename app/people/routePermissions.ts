@@ -86,6 +86,12 @@ export const routePermissions: Readonly<Record<string, RouteDoors>> = {
   "/editions/:edition/sources/:source": reads("table:read"),
   "/editions/:edition/sources/:source/values.csv": reads("table:read"),
   "/conventions": reads("public"),
+  "/conventions/symbols": reads("public"),
+  "/conventions/states": reads("public"),
+  "/conventions/units": reads("public"),
+  "/conventions/uncertainty": reads("public"),
+  "/conventions/spellings": reads("public"),
+  "/conventions/checks": reads("public"),
   "/conventions/checks/:check": reads("public"),
 
   // People

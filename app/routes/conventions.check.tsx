@@ -1,12 +1,12 @@
 import { data, Link } from "react-router";
 import { checkOf } from "#app/checks/registry.ts";
 import { paths } from "#app/paths.ts";
-import { Leaf } from "#app/ui/Leaf.tsx";
 import { InlineMark } from "#app/ui/MarginMark.tsx";
 import { Prose } from "#app/ui/Prose.tsx";
 import { Section } from "#app/ui/Section.tsx";
 import { markWords } from "#app/ui/Signs.tsx";
 import type { Route } from "./+types/conventions.check";
+import { ConventionsLeaf } from "./conventions/ConventionsLeaf.tsx";
 
 export const meta: Route.MetaFunction = ({ loaderData }) => [
   { title: `${loaderData?.title ?? "No such check"} · Conventions · Tablewright` },
@@ -15,7 +15,7 @@ export const meta: Route.MetaFunction = ({ loaderData }) => [
 export function loader({ params }: Route.LoaderArgs) {
   const check = checkOf(params.check);
   if (!check) {
-    const detail = `There is no check called “${params.check}”. The page of conventions lists them all.`;
+    const detail = `There is no check called “${params.check}”. The page “What is checked” lists them all.`;
     throw data({ kind: "not-found", title: "Not found", detail }, { status: 404 });
   }
   const { run: _run, ...entry } = check;
@@ -31,7 +31,7 @@ const meanings = {
 /** One check: what it asks, its rule, where the rule comes from, and how to read a finding. Every finding leads here. */
 export default function CheckPage({ loaderData: check }: Route.ComponentProps) {
   return (
-    <Leaf heading={<Prose text={check.title} />} section="conventions" lede={<Prose text={check.appliesTo} />}>
+    <ConventionsLeaf part="checks" heading={<Prose text={check.title} />} lede={<Prose text={check.appliesTo} />}>
       <Section head="The rule">
         <div className="border-l border-rule pl-4">
           {check.formula.map((line) => (
@@ -72,8 +72,8 @@ export default function CheckPage({ loaderData: check }: Route.ComponentProps) {
       </Section>
       <p className="fine mt-8">
         Code <code className="font-sans">{check.code}</code>, version {check.version} ·{" "}
-        <Link to={`${paths.conventions()}#checks`}>all checks</Link>
+        <Link to={paths.conventionsChecks()}>all checks</Link>
       </p>
-    </Leaf>
+    </ConventionsLeaf>
   );
 }
