@@ -25,6 +25,7 @@ export async function findComparePage(acting: Acting, from: Edition, to: Edition
     beyond: net.values.filter((change) => change.normalizedError !== null && change.normalizedError > 1).length,
     changes: net.values.slice((page - 1) * COMPARE_PAGE, page * COMPARE_PAGE).map(shownChange),
     page,
+    pageSize: COMPARE_PAGE,
     pages: Math.max(1, Math.ceil(net.values.length / COMPARE_PAGE)),
     drawn: drawnDifferences(net.values),
     species: net.species.map(({ what, before, after, texts }) => ({

@@ -1,3 +1,5 @@
+import { comparableDoi, isDoi } from "#app/sources/doi.ts";
+
 /*
  * What somebody typed into the find box, read every way it can be meant. Pure.
  */
@@ -40,8 +42,8 @@ export function holdsWords(text: string, typed: string): boolean {
   );
 }
 
-/** A DOI as it is stored, from any way of writing it: "https://doi.org/10.1063/1.555845". */
+/** A DOI in the form in which DOIs are compared, from any way of writing it: "https://doi.org/10.1063/1.555845". */
 export function readDoi(text: string): string | null {
-  const [, doi] = /^(?:https?:\/\/(?:dx\.)?doi\.org\/|doi:\s*)?(10\.\d{4,9}\/\S+)$/i.exec(text.trim()) ?? [];
-  return doi?.toLowerCase() ?? null;
+  const doi = comparableDoi(text);
+  return isDoi(doi) ? doi : null;
 }

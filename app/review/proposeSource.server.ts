@@ -10,12 +10,9 @@ import { newSourceId } from "#app/sources/newId.server.ts";
 import { type DescribedSource, describedSource, type NewSource } from "#app/sources/sourceForm.ts";
 import { type ChoosableSource, findChoosableSources } from "#app/sources/sources.queries.server.ts";
 import { type Twin, twinsOf } from "#app/sources/twins.ts";
+import { findWritableRevisions } from "./propose.queries.server.ts";
 import { proposeLines } from "./propose.server.ts";
-import { findRevisionsOf, findWaitingForPlace } from "./review.queries.server.ts";
-import { isWritable } from "./states.ts";
-
-/** Revisions of one person that are looked through for those still written. */
-const LOOKED_AT = 200;
+import { findWaitingForPlace } from "./review.queries.server.ts";
 
 /** Where a proposal goes and why it is made. */
 export interface ProposalFrame {
@@ -26,17 +23,11 @@ export interface ProposalFrame {
   reason: string;
 }
 
-/** A revision that lines can be added to. */
-export interface OpenDraft {
-  id: number;
-  title: string;
-}
-
 /** The person's own revisions that are written now, the newest first. @throws Forbidden */
-export async function findOpenDrafts(acting: Acting): Promise<OpenDraft[]> {
+export async function findOpenDrafts(acting: Acting): Promise<{ id: number; title: string }[]> {
   demand(acting, "revision:write");
-  const own = await findRevisionsOf(acting.person.id, LOOKED_AT, database());
-  return own.filter((revision) => isWritable(revision.state)).map(({ id, title }) => ({ id, title }));
+  const own = await findWritableRevisions(acting.person.id, null, database());
+  return own.map(({ id, title }) => ({ id, title }));
 }
 
 /** What came of proposing a new source. */

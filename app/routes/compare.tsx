@@ -16,6 +16,7 @@ import { EmptyPage } from "#app/ui/EmptyPage.tsx";
 import { count } from "#app/ui/figure.ts";
 import { Leaf } from "#app/ui/Leaf.tsx";
 import { InlineMark } from "#app/ui/MarginMark.tsx";
+import { PageTurner } from "#app/ui/PageTurner.tsx";
 import { QuantityHead } from "#app/ui/QuantityHead.tsx";
 import { Columns, Fine, Section } from "#app/ui/Section.tsx";
 import { SpeciesName } from "#app/ui/SpeciesName.tsx";
@@ -103,7 +104,13 @@ export default function CompareRoute({ loaderData: page }: Route.ComponentProps)
             rowKey={(change) => `${change.speciesId} ${change.property}`}
             className="min-w-[60rem]"
           />
-          <Pages page={page} />
+          <PageTurner
+            label="Pages of the changes"
+            page={page.page}
+            pages={page.pages}
+            pageSize={page.pageSize}
+            rows={counts.came + counts.went + counts.changed}
+          />
           <Fine>
             The difference is what stands less what stood. <i>E</i>
             <sub>n</sub> is its size over the joined expanded uncertainties of both; above 1 it is larger than both
@@ -254,20 +261,6 @@ function changeColumns({ from, to, citations }: ComparePage): Column<ShownChange
         ),
     },
   ];
-}
-
-function Pages({ page: { page, pages, from, to } }: { page: ComparePage }) {
-  if (pages === 1) return null;
-  const at = (number: number): string => `${paths.compare(from.number, to.number)}?page=${number}`;
-  return (
-    <nav className="mt-3 flex gap-4" aria-label="Pages of the changes">
-      <span className="text-soft">
-        page {page} of {pages}
-      </span>
-      {page > 1 && <Link to={at(Math.min(page - 1, pages))}>the page before</Link>}
-      {page < pages && <Link to={at(page + 1)}>the next page</Link>}
-    </nav>
-  );
 }
 
 /** Species and sources that came, went or are called otherwise, word by word. */

@@ -150,6 +150,9 @@ function WaysOn({ number }: { number: number }) {
       <a href={paths.tableDownload(number)} download>
         download<span className="said"> edition {number}</span>
       </a>
+      <Link to={`${paths.edition(number)}#cite`}>
+        cite<span className="said"> edition {number}</span>
+      </Link>
     </p>
   );
 }

@@ -1,4 +1,4 @@
-import { Form, Link, useSearchParams, useSubmit } from "react-router";
+import { Form, Link, useSubmit } from "react-router";
 import { findTablePage, type TablePage, type TableRow } from "#app/editions/tablePage.server.ts";
 import { readTableQuery } from "#app/editions/tableQuery.ts";
 import { forPage } from "#app/http/respond.server.ts";
@@ -16,6 +16,7 @@ import { count, tailOf } from "#app/ui/figure.ts";
 import { Leaf } from "#app/ui/Leaf.tsx";
 import { InlineMark } from "#app/ui/MarginMark.tsx";
 import { Note } from "#app/ui/Note.tsx";
+import { PageTurner } from "#app/ui/PageTurner.tsx";
 import { QuantityHead } from "#app/ui/QuantityHead.tsx";
 import { Fine } from "#app/ui/Section.tsx";
 import { SpeciesName } from "#app/ui/SpeciesName.tsx";
@@ -84,7 +85,13 @@ function TableOfEdition({ page }: { page: TablePage }) {
           </EmptyPage>
         }
       />
-      <Pages page={page} />
+      <PageTurner
+        label="Pages of the table"
+        page={page.page}
+        pages={page.pages}
+        pageSize={page.pageSize}
+        rows={page.count}
+      />
       {rows.length > 0 && (
         <Fine>
           Figures in parentheses are the standard uncertainty in the last digits. <Symbol of="ΔfG°" /> set in the
@@ -252,25 +259,4 @@ function columnsFor({ frame, columns: shown, rows, sources }: TablePage): Column
         )),
     },
   ];
-}
-
-/** The way to the other pages of a long table. */
-function Pages({ page: { page, pages, pageSize, count: found } }: { page: TablePage }) {
-  const [search] = useSearchParams();
-  if (pages === 1) return null;
-  const to = (number: number): string => {
-    const query = new URLSearchParams(search);
-    query.set("page", String(number));
-    return `?${query.toString()}`;
-  };
-  const first = (page - 1) * pageSize + 1;
-  return (
-    <nav className="mt-3 flex gap-4" aria-label="Pages of the table">
-      <span className="text-soft">
-        {count(Math.min(first, found))} to {count(Math.min(page * pageSize, found))} of {count(found)}
-      </span>
-      {page > 1 && <Link to={to(Math.min(page - 1, pages))}>the page before</Link>}
-      {page < pages && <Link to={to(page + 1)}>the next page</Link>}
-    </nav>
-  );
 }

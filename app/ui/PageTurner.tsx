@@ -12,9 +12,11 @@ interface PageTurnerProps {
 }
 
 /** Which part of a long list is shown, and the way to the other parts. The rest of the address stays as it is. */
-export function PageTurner({ label, page, pages, pageSize, rows }: PageTurnerProps) {
+export function PageTurner({ label, page: asked, pages, pageSize, rows }: PageTurnerProps) {
   const [search] = useSearchParams();
   if (pages === 1) return null;
+  // An address may ask for a page beyond the last.
+  const page = Math.min(asked, pages);
   const to = (number: number): string => {
     const query = new URLSearchParams(search);
     query.set("page", String(number));

@@ -1,4 +1,3 @@
-import type { OpenDraft } from "#app/review/proposeSource.server.ts";
 import { Field, Select, TextArea } from "#app/ui/Field.tsx";
 import { type FieldState, plainField } from "#app/ui/fieldState.ts";
 import { FormErrors } from "#app/ui/FormErrors.tsx";
@@ -7,7 +6,7 @@ import type { SourceOutcome } from "./outcome.ts";
 import { describedFields, SourceFields } from "./SourceFields.tsx";
 
 interface DeskProps {
-  drafts: readonly OpenDraft[];
+  drafts: readonly { id: number; title: string }[];
   outcome: SourceOutcome | undefined;
   /** What stands in the fields before anything was typed. */
   initial: Readonly<Record<string, string>>;
