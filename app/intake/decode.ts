@@ -318,8 +318,9 @@ function firstBadLine(bytes: Uint8Array): number {
 }
 
 /**
- * The delimiter that divides most rows into one same number of columns. Between equals the rarer sign wins: a comma
- * between semicolons is a decimal comma, a semicolon between commas would have made the rows uneven.
+ * The delimiter that divides a row into heads that mean something and most rows into one same number of columns. Between
+ * equals the rarer sign wins: a comma between semicolons is a decimal comma, a semicolon between commas would have made
+ * the rows uneven.
  */
 function guessDelimiter(text: string): Delimiter | null {
   let best: { delimiter: Delimiter; agreeing: number } | null = null;
@@ -329,9 +330,15 @@ function guessDelimiter(text: string): Delimiter | null {
     for (const row of data) counts.set(row.length, (counts.get(row.length) ?? 0) + 1);
     let agreeing = 0;
     for (const [columns, rows] of counts) if (columns > 1) agreeing = Math.max(agreeing, rows);
+    if (agreeing > 0 && data.slice(0, TITLES_AT_MOST).some(namesColumns)) agreeing += data.length;
     if (agreeing > 0 && (best === null || agreeing > best.agreeing)) best = { delimiter, agreeing };
   }
   return best?.delimiter ?? null;
+}
+
+/** Whether at least two cells are heads that mean something. */
+function namesColumns(cells: readonly string[]): boolean {
+  return cells.filter((cell) => readHead(cell).means !== null).length >= 2;
 }
 
 type Parsed = { outcome: "parsed"; rows: DecodedRow[] } | { outcome: "refused"; sentence: string };
@@ -398,7 +405,7 @@ function findHeads(rows: readonly DecodedRow[]): number {
     const filled = row.cells.filter((cell) => cell.trim() !== "");
     if (filled.length < 2 || isComment(row.cells)) continue;
     if (filled.some((cell) => /^[-−+±]?\s*\d+(?:[.,]\d+)?$/.test(cell.trim()))) break;
-    if (filled.filter((cell) => readHead(cell).means !== null).length >= 2) return index;
+    if (namesColumns(filled)) return index;
     if (wordsOnly === -1) wordsOnly = index;
   }
   return wordsOnly;

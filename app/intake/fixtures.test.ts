@@ -1,9 +1,6 @@
 import { readFileSync } from "node:fs";
 import { describe, expect, test } from "vitest";
-import { decodeSheet } from "./decode.ts";
-import { type MatchOutcome, matchSpecies, settleRows } from "./match.ts";
-import { checkPlan, NO_CONTEXT, planColumns } from "./plan.ts";
-import { readRows } from "./readRows.ts";
+import { readPurely } from "#tests/support/readPurely.ts";
 
 /*
  * The sheets in fixtures/ read the whole pure way, as their guessed plans have them: bytes, columns, rows, species. The
@@ -11,36 +8,12 @@ import { readRows } from "./readRows.ts";
  */
 
 function readFixture(name: string) {
-  const decoding = decodeSheet(readFileSync(new URL(`../../fixtures/${name}`, import.meta.url)));
-  if (decoding.outcome === "refused") throw new Error(decoding.sentence);
-  const { sheet } = decoding;
-  const { plan, settings: guessed } = planColumns(sheet, NO_CONTEXT);
-  const settings = {
-    ...guessed,
-    temperature: "298.15" as const,
-    standardPressure: "100000" as const,
-    uncertaintyKind: "expanded" as const,
-  };
-  for (const column of plan) if (column.means === "value") column.unit ??= "cal/(mol K)";
-  const frame = { heads: sheet.heads, headRow: sheet.headRow, plan, settings };
-  const outcomes = readRows(
-    sheet.rows.map((row) => ({ ...row, answer: null })),
-    frame,
+  const { guess, errors, final } = readPurely(
+    readFileSync(new URL(`../../fixtures/${name}`, import.meta.url)),
+    { uncertaintyKind: "expanded" },
+    { missingUnit: "cal/(mol K)" },
   );
-  const read = sheet.rows.flatMap((row, index) => {
-    const outcome = outcomes[index];
-    return outcome?.outcome === "read" ? [{ number: row.number, answer: null, reading: outcome.reading }] : [];
-  });
-  const matched = new Map(read.map((row, index) => [row.number, matchSpecies(read, [], frame)[index] as MatchOutcome]));
-  const toSettle = [...matched].flatMap(([number, outcome]) =>
-    outcome.outcome === "read" ? [{ number, reading: outcome.reading }] : [],
-  );
-  const settled = settleRows(toSettle, frame);
-  const final = new Map<number, MatchOutcome | (typeof outcomes)[number]>(
-    sheet.rows.map((row, index) => [row.number, matched.get(row.number) ?? outcomes[index]!]),
-  );
-  for (const [index, row] of toSettle.entries()) final.set(row.number, settled[index]!);
-  return { plan, errors: checkPlan(plan, settings), final };
+  return { plan: guess.plan, errors, final };
 }
 
 const of = (final: ReturnType<typeof readFixture>["final"], outcome: string) =>

@@ -124,6 +124,7 @@ const WORDS: Readonly<Record<string, ColumnMeans>> = Object.assign(Object.create
   compoundname: "name",
   chemicalname: "name",
   iupacname: "name",
+  nameiupac: "name",
   systematicname: "name",
   synonym: "synonyms",
   synonyms: "synonyms",

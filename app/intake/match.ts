@@ -345,7 +345,8 @@ function compareMentions(row: Mention, other: Mention, phase: Phase): Verdict {
   if (row.cas !== null && other.cas !== null) {
     if (row.cas === other.cas)
       return row.label !== null && other.label !== null && !sameLabel ? verdict("other") : verdict("same");
-    if (samePrint && sameLabel) {
+    // Another number and another name leave no doubt; one of them alone may be a slip.
+    if (samePrint && sameLabel && names !== "differ") {
       return verdict(
         "unsure",
         `The CAS numbers differ (${row.cas} here, ${other.cas} there): another substance, or a wrong number.`,

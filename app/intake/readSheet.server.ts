@@ -50,8 +50,13 @@ export async function readSheet(sheetId: number): Promise<void> {
     const now = await findSheetForUpdate(sheetId, trx);
     if (now?.state !== "reading") return;
     await upsertRows(sheetId, settleStored(await findReadRows(sheetId, trx), frame), trx);
+    const counts = await countRows(sheetId, trx);
+    const accounted = counts.read + counts.refused + counts.leftOut + counts.skipped;
+    if (accounted !== rows.length) {
+      throw new Error(`sheet ${sheetId} has ${rows.length} rows, but ${accounted} are read, refused or skipped`);
+    }
     await updateSheetRead(sheetId, trx);
-    record({ act: "sheet.read", objectId: sheetId, detail: await countRows(sheetId, trx) });
+    record({ act: "sheet.read", objectId: sheetId, detail: { rows: rows.length, ...counts } });
   });
 }
 

@@ -33,12 +33,12 @@ export function Rows({ page, rows, failed }: { page: SheetPage; rows: PageRows; 
     <>
       <Section head="Rows" id="rows">
         <p role="status" id="rows-status" tabIndex={-1}>
-          {count(page.sheet.rowsTotal)} rows = {count(counts.read)} read + {count(counts.refused + counts.leftOut)}{" "}
-          refused + {count(counts.skipped)} skipped · read to {count(counts.values)} values of{" "}
-          {count(rows.species.known + rows.species.new)} species, {count(rows.species.new)} of them new ·{" "}
-          {count(counts.refused)} refused
-          {counts.leftOut > 0 && ` · ${count(counts.leftOut)} left out`}
-          {counts.skipped > 0 && ` · ${count(counts.skipped)} skipped`}
+          {rowsInWords(page.sheet.rowsTotal)} = {count(counts.read)} read + {count(counts.refused + counts.leftOut)}{" "}
+          refused + {count(counts.skipped)} skipped
+          {counts.leftOut > 0 && ` · ${count(counts.leftOut)} of the refused left out`}
+          {" · "}
+          {count(counts.values)} {counts.values === 1 ? "value" : "values"} of{" "}
+          {count(rows.species.known + rows.species.new)} species, {count(rows.species.new)} of them new
         </p>
         <Asides rows={rows} page={page} />
         {rows.refused.length > 0 && <RefusedTable page={page} rows={rows} open={open} />}
@@ -48,6 +48,8 @@ export function Rows({ page, rows, failed }: { page: SheetPage; rows: PageRows; 
     </>
   );
 }
+
+const rowsInWords = (n: number): string => `${count(n)} ${n === 1 ? "row" : "rows"}`;
 
 /** Why rows were skipped and what was taken for granted, for whoever wants to know. */
 function Asides({ rows, page }: { rows: PageRows; page: SheetPage }) {
@@ -323,9 +325,11 @@ function useFocusOnNext(counts: PageRows["counts"]): void {
 
 function ReadTable({ rows }: { rows: PageRows }) {
   const more = rows.counts.read - rows.read.length;
+  const keyed = rows.read.some((row) => row.sourceKey !== null);
+  const valued = rows.counts.values > 0;
   return (
     <Section head="What was read">
-      <Table caption="The first rows that were read" className="max-w-[60rem]">
+      <Table caption="The first rows that were read" className="max-w-[72rem]">
         <thead>
           <tr>
             <th scope="col" className="figure">
@@ -333,7 +337,9 @@ function ReadTable({ rows }: { rows: PageRows }) {
             </th>
             <th scope="col">Species</th>
             <th scope="col">In the table</th>
-            <th scope="col">Values, in the table’s units</th>
+            {valued && <th scope="col">Values, in the table’s units</th>}
+            {valued && <th scope="col">Converted</th>}
+            {keyed && <th scope="col">Source</th>}
           </tr>
         </thead>
         <tbody>
@@ -343,12 +349,23 @@ function ReadTable({ rows }: { rows: PageRows }) {
               <th scope="row">
                 <SpeciesName speciesKey={row.key} />
               </th>
-              <td className="text-soft">{row.isNew ? "new" : "known"}</td>
-              <td>
-                {row.values.map((value, index) => (
-                  <ShownValue key={value.property} value={value} first={index === 0} />
-                ))}
+              <td className="text-soft">
+                {row.isNew ? "new" : "known"}
+                {row.adds && <> · gets {additionInWords(row.adds)}</>}
               </td>
+              {valued && (
+                <td>
+                  {row.values.map((value, index) => (
+                    <ShownValue key={value.property} value={value} first={index === 0} />
+                  ))}
+                </td>
+              )}
+              {valued && (
+                <td className="text-soft">
+                  <Conversions values={row.values} />
+                </td>
+              )}
+              {keyed && <td>{row.sourceKey && <SheetText text={row.sourceKey} />}</td>}
             </tr>
           ))}
         </tbody>
@@ -356,6 +373,31 @@ function ReadTable({ rows }: { rows: PageRows }) {
       {more > 0 && <Fine>and {count(more)} more rows.</Fine>}
     </Section>
   );
+}
+
+/** "the name water, CAS 7732-18-5, the synonym steam" */
+function additionInWords({ name, cas, synonyms }: NonNullable<ReadRowLine["adds"]>): string {
+  const parts = [name === null ? "" : `the name ${name}`, cas === null ? "" : `CAS ${cas}`];
+  if (synonyms.length > 0)
+    parts.push(`${synonyms.length === 1 ? "the synonym" : "the synonyms"} ${synonyms.join(", ")}`);
+  return parts.filter(Boolean).join(", ");
+}
+
+/** What was done to the figures of the sheet, each conversion once with the quantities it was done to. */
+function Conversions({ values }: { values: ReadRowLine["values"] }) {
+  const byNote = new Map<string, string[]>();
+  for (const { property, note } of values) {
+    // A step of nothing is kept on the line, and says nothing here.
+    const shown = (note ?? "").replace(/(?:; )?1 atm to 1 bar: no change$/, "");
+    if (shown === "" || !isProperty(property)) continue;
+    byNote.set(shown, [...(byNote.get(shown) ?? []), propertyInfo[property].symbol]);
+  }
+  return [...byNote].map(([note, symbols], index) => (
+    <span key={note} className="mr-2">
+      {index > 0 && "· "}
+      <Prose text={`${symbols.join(", ")} ${note}`} />
+    </span>
+  ));
 }
 
 function ShownValue({ value, first }: { value: ReadRowLine["values"][number]; first: boolean }) {
