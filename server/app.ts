@@ -29,7 +29,7 @@ function facts(request: Request): RequestFacts {
 
 /** Paths that carry a secret are logged without it. */
 function loggedPath(path: string): string {
-  return path.replace(/^\/(reset|invitation)\/[^/.]+/, "/$1/(left out)");
+  return path.replace(/^\/(reset|invitation|address)\/[^/.]+/, "/$1/(left out)");
 }
 
 /** What a client may go on sending after it was answered, in bytes. */
