@@ -41,6 +41,24 @@ CREATE FUNCTION public.edition_digest(n integer) RETURNS bytea
 COMMENT ON FUNCTION public.edition_digest(n integer) IS 'The digest of an edition from its rows; app/editions/digest.ts computes the same outside the database.';
 
 --
+-- Name: hill_order(text); Type: FUNCTION; Schema: public; Owner: -
+--
+
+CREATE FUNCTION public.hill_order(hill text) RETURNS text
+    LANGUAGE sql IMMUTABLE STRICT PARALLEL SAFE
+    AS $$
+      select regexp_replace(regexp_replace(regexp_replace(hill, '([A-Z][a-z]?)(?![a-z0-9])', '\11', 'g'),
+                                           '([0-9]+)', '000\1', 'g'),
+                            '0*([0-9]{4})(?![0-9])', '\1', 'g') collate "C"
+    $$;
+
+--
+-- Name: FUNCTION hill_order(hill text); Type: COMMENT; Schema: public; Owner: -
+--
+
+COMMENT ON FUNCTION public.hill_order(hill text) IS 'A formula in Hill order with every count written in four digits, so that C2H6 stands before C10H8 when compared by bytes.';
+
+--
 -- Name: line_hands(bigint); Type: FUNCTION; Schema: public; Owner: -
 --
 
@@ -169,6 +187,22 @@ CREATE FUNCTION public.seal_edition(n integer) RETURNS bytea
 --
 
 COMMENT ON FUNCTION public.seal_edition(n integer) IS 'Seals the open edition after holding its rows against the decisions. TW004: not open; TW008: a row without an accepted line, or every line the publisher''s own.';
+
+--
+-- Name: species_names(text, text[]); Type: FUNCTION; Schema: public; Owner: -
+--
+
+CREATE FUNCTION public.species_names(name text, synonyms text[]) RETURNS text
+    LANGUAGE sql IMMUTABLE STRICT PARALLEL SAFE
+    AS $$ select lower(name || E'
+' || array_to_string(synonyms, E'
+')) $$;
+
+--
+-- Name: FUNCTION species_names(name text, synonyms text[]); Type: COMMENT; Schema: public; Owner: -
+--
+
+COMMENT ON FUNCTION public.species_names(name text, synonyms text[]) IS 'Everything a species is called, in small letters, one name a line: what a search by name looks in.';
 
 --
 -- Name: tg_comment_answers(); Type: FUNCTION; Schema: public; Owner: -
@@ -2283,10 +2317,34 @@ CREATE INDEX source_detail_until ON public.source_detail USING btree (until);
 CREATE INDEX species_detail_cas ON public.species_detail USING btree (cas) WHERE (cas IS NOT NULL);
 
 --
+-- Name: species_detail_key; Type: INDEX; Schema: public; Owner: -
+--
+
+CREATE INDEX species_detail_key ON public.species_detail USING btree (key);
+
+--
+-- Name: species_detail_key_part; Type: INDEX; Schema: public; Owner: -
+--
+
+CREATE INDEX species_detail_key_part ON public.species_detail USING gin (lower(key) public.gin_trgm_ops);
+
+--
+-- Name: species_detail_name_part; Type: INDEX; Schema: public; Owner: -
+--
+
+CREATE INDEX species_detail_name_part ON public.species_detail USING gin (public.species_names(name, synonyms) public.gin_trgm_ops);
+
+--
 -- Name: species_detail_since; Type: INDEX; Schema: public; Owner: -
 --
 
 CREATE INDEX species_detail_since ON public.species_detail USING btree (since);
+
+--
+-- Name: species_detail_species; Type: INDEX; Schema: public; Owner: -
+--
+
+CREATE INDEX species_detail_species ON public.species_detail USING btree (species_id);
 
 --
 -- Name: species_detail_until; Type: INDEX; Schema: public; Owner: -
@@ -2295,10 +2353,28 @@ CREATE INDEX species_detail_since ON public.species_detail USING btree (since);
 CREATE INDEX species_detail_until ON public.species_detail USING btree (until);
 
 --
+-- Name: species_elements; Type: INDEX; Schema: public; Owner: -
+--
+
+CREATE INDEX species_elements ON public.species USING gin (composition);
+
+--
 -- Name: species_hill; Type: INDEX; Schema: public; Owner: -
 --
 
 CREATE INDEX species_hill ON public.species USING btree (hill, charge, phase);
+
+--
+-- Name: species_in_hill_order; Type: INDEX; Schema: public; Owner: -
+--
+
+CREATE INDEX species_in_hill_order ON public.species USING btree (public.hill_order(hill) COLLATE "C", id);
+
+--
+-- Name: table_value_in_order; Type: INDEX; Schema: public; Owner: -
+--
+
+CREATE INDEX table_value_in_order ON public.table_value USING btree (property, value);
 
 --
 -- Name: table_value_one_standing; Type: INDEX; Schema: public; Owner: -
@@ -2317,6 +2393,12 @@ CREATE INDEX table_value_since ON public.table_value USING btree (since);
 --
 
 CREATE INDEX table_value_source ON public.table_value USING btree (source_id);
+
+--
+-- Name: table_value_species; Type: INDEX; Schema: public; Owner: -
+--
+
+CREATE INDEX table_value_species ON public.table_value USING btree (species_id, property);
 
 --
 -- Name: table_value_until; Type: INDEX; Schema: public; Owner: -
@@ -3000,6 +3082,12 @@ GRANT USAGE ON SCHEMA public TO tablewright_app;
 GRANT ALL ON FUNCTION public.edition_digest(n integer) TO tablewright_app;
 
 --
+-- Name: FUNCTION hill_order(hill text); Type: ACL; Schema: public; Owner: -
+--
+
+GRANT ALL ON FUNCTION public.hill_order(hill text) TO tablewright_app;
+
+--
 -- Name: FUNCTION line_hands(of_line bigint); Type: ACL; Schema: public; Owner: -
 --
 
@@ -3018,6 +3106,12 @@ GRANT ALL ON FUNCTION public.open_edition(expected_previous integer, publisher u
 
 REVOKE ALL ON FUNCTION public.seal_edition(n integer) FROM PUBLIC;
 GRANT ALL ON FUNCTION public.seal_edition(n integer) TO tablewright_app;
+
+--
+-- Name: FUNCTION species_names(name text, synonyms text[]); Type: ACL; Schema: public; Owner: -
+--
+
+GRANT ALL ON FUNCTION public.species_names(name text, synonyms text[]) TO tablewright_app;
 
 --
 -- Name: TABLE address_change; Type: ACL; Schema: public; Owner: -
