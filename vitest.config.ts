@@ -4,6 +4,8 @@ const common = {
   environment: "node" as const,
   env: { NODE_ENV: "test", LOG_LEVEL: "silent" },
   restoreMocks: true,
+  // Long enough for a machine that is busy with something else: no test is about time.
+  testTimeout: 30_000,
 };
 
 /**
@@ -35,7 +37,6 @@ export default defineConfig({
           name: "served",
           include: ["tests/{database,routes,api,browser}/**/*.test.ts"],
           globalSetup: ["tests/support/globalSetup.ts"],
-          testTimeout: 30_000,
           hookTimeout: 60_000,
         },
       },

@@ -53,6 +53,9 @@ describe("heads of uncertainties", () => {
 describe("temperature and pressure in a head", () => {
   test.each([
     ["ΔfH°(0 K) kJ/mol", "0"],
+    ["ΔHf°0 (kcal/mol)", "0"],
+    ["ΔfH°₀ / kJ mol-1", "0"],
+    ["ΔfH⁰ kJ/mol", null],
     ["ΔfH°(0)", "0"],
     ["dHf_0K", "0"],
     ["ΔfH°(298.15 K)", "298.15"],

@@ -230,6 +230,9 @@ function withoutRemarks(plain: string): {
       if (changed) break;
     }
   }
+  // Older tables mark the values at absolute zero by a lowered 0 behind the sign of the standard state: ΔHf°0.
+  const atZero = /^(.*[a-z].*°)\s*_?\{?0\}?$/i.exec(rest);
+  if (atZero?.[1] !== undefined && found.temperature === null) return { symbol: atZero[1], ...found, temperature: "0" };
   return { symbol: rest, ...found };
 }
 
