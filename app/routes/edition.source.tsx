@@ -69,7 +69,7 @@ export default function SourceRoute({ loaderData: { page, writes } }: Route.Comp
     >
       <WithdrawnNotice frame={frame} />
       {source.notice !== null && <Notice word="notice" text={source.notice} />}
-      <p>
+      <p className="my-3">
         {sourceKindSentence[source.kind]} {count(all)} {all === 1 ? "value" : "values"} of edition {frame.number}{" "}
         {all === 1 ? "leans" : "lean"} on it; it came in with{" "}
         <Link to={paths.edition(source.since)}>edition {source.since}</Link>.

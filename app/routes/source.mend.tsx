@@ -13,6 +13,7 @@ import { Leaf } from "#app/ui/Leaf.tsx";
 import { Note } from "#app/ui/Note.tsx";
 import { Reference } from "#app/ui/Reference.tsx";
 import type { Route } from "./+types/source.mend";
+import { Answer } from "./source/Answer.tsx";
 import { outcomeOf, readSent, refusedForm } from "./source/act.server.ts";
 import { SourceDesk } from "./source/Desk.tsx";
 import type { SourceOutcome } from "./source/outcome.ts";
@@ -103,7 +104,7 @@ export default function MendSourcePage({ loaderData, actionData }: Route.Compone
 function Change({ outcome }: { outcome: SourceOutcome | undefined }) {
   if (!outcome || outcome.change === null) return null;
   return (
-    <div role="status">
+    <Answer key={JSON.stringify(outcome)} label="The change">
       <Note kind="remark" word="the change">
         {outcome.change.length > 0 ? (
           <ChangedWords texts={outcome.change} />
@@ -111,6 +112,6 @@ function Change({ outcome }: { outcome: SourceOutcome | undefined }) {
           <p>It would be printed as it is printed now.</p>
         )}
       </Note>
-    </div>
+    </Answer>
   );
 }

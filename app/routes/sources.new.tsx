@@ -12,6 +12,7 @@ import { plainField } from "#app/ui/fieldState.ts";
 import { Leaf } from "#app/ui/Leaf.tsx";
 import { Note } from "#app/ui/Note.tsx";
 import type { Route } from "./+types/sources.new";
+import { Answer } from "./source/Answer.tsx";
 import { outcomeOf, readSent, refusedForm } from "./source/act.server.ts";
 import { SourceDesk } from "./source/Desk.tsx";
 import type { SourceOutcome } from "./source/outcome.ts";
@@ -75,7 +76,7 @@ function Twins({ outcome }: { outcome: SourceOutcome | undefined }) {
   if (!outcome || outcome.twins.length === 0) return null;
   const sameDoi = outcome.twins.some((twin) => twin.sameDoi);
   return (
-    <div role="alert">
+    <Answer key={JSON.stringify(outcome)} label="Known already?">
       <Note kind={sameDoi ? "block" : "look"} word="known already?">
         <p>
           {sameDoi ? "A source with this DOI is there already:" : "This looks like a source that is there already:"}
@@ -94,6 +95,6 @@ function Twins({ outcome }: { outcome: SourceOutcome | undefined }) {
           <Check field={plainField("anyway")} label="It is another work; propose it all the same." />
         )}
       </Note>
-    </div>
+    </Answer>
   );
 }

@@ -62,16 +62,20 @@ const PAGES = [
 test.each([
   ["light", 1440],
   ["dark", 320],
-] as const)("every page is accessible in %s colours and no wider than %i pixels", async (colorScheme, width) => {
-  const page = await openAs(steward, "/editions/3/sources", width);
-  await page.emulateMedia({ colorScheme });
-  for (const path of PAGES) {
-    await page.goto(path);
-    await page.waitForLoadState("networkidle");
-    await expectAccessible(page);
-    expect([path, await overflow(page)]).toEqual([path, 0]);
-  }
-});
+] as const)(
+  "every page is accessible in %s colours and no wider than %i pixels",
+  async (colorScheme, width) => {
+    const page = await openAs(steward, "/editions/3/sources", width);
+    await page.emulateMedia({ colorScheme });
+    for (const path of PAGES) {
+      await page.goto(path);
+      await page.waitForLoadState("networkidle");
+      await expectAccessible(page);
+      expect([path, await overflow(page)]).toEqual([path, 0]);
+    }
+  },
+  120_000,
+);
 
 test("a source added by hand is accepted, published and on its page", async () => {
   const page = await openAs(steward, "/editions/3/sources");
@@ -97,7 +101,9 @@ test("a source added by hand is accepted, published and on its page", async () =
   await page.getByLabel("DOI").fill("https://doi.org/10.1063/1.555845");
   browser.expectConsoleError("409");
   await page.getByRole("button", { name: "Propose the source" }).click();
-  await page.getByText("A source with this DOI is there already").waitFor();
+  const known = page.getByRole("group", { name: "Known already?" });
+  await known.getByText("A source with this DOI is there already").waitFor();
+  expect(await known.evaluate((element) => element === document.activeElement)).toBe(true);
   await expectAccessible(page);
 
   await page.getByLabel("DOI").fill("10.5555/jbc.2019.101");
@@ -111,7 +117,7 @@ test("a source added by hand is accepted, published and on its page", async () =
   await page.waitForURL("**/editions/4/sources");
   await page.getByRole("link", { name: "Marin and Okafor", exact: true }).click();
   await page.waitForURL(/\/editions\/4\/sources\/src_/);
-  expect(await page.getByRole("heading", { level: 1 }).innerText()).toBe("Marin and Okafor");
+  await page.getByRole("heading", { level: 1, name: "Marin and Okafor" }).waitFor();
   const doi = page.getByRole("link", { name: "doi:10.5555/jbc.2019.101" });
   expect(await doi.getAttribute("href")).toBe("https://doi.org/10.5555/jbc.2019.101");
   await page.getByText("No value of edition 4 leans on it.").waitFor();
@@ -120,7 +126,7 @@ test("a source added by hand is accepted, published and on its page", async () =
   browser.expectConsoleError("404");
   await page.goto(address.replace("/4/", "/3/"));
   await page.getByText("it came in with edition 4").waitFor();
-});
+}, 120_000);
 
 test("a mended citation stands from the next edition on, with its notice beside the values; the older one keeps its own", async () => {
   const page = await openAs(steward, "/editions/1/sources/src_nbstables1982");
@@ -129,7 +135,7 @@ test("a mended citation stands from the next edition on, with its notice beside 
   await page.getByLabel("Title", { exact: true }).fill("The NBS tables, an excerpt");
   await page.getByLabel("Notice").fill("Its ammonia value was retracted.");
   await page.getByRole("button", { name: "Show the change" }).click();
-  await page.getByRole("status").getByText("excerpt").waitFor();
+  await page.getByRole("group", { name: "The change" }).getByText("excerpt").waitFor();
   await expectAccessible(page);
   // What was typed is still there.
   expect(await page.getByLabel("Notice").inputValue()).toBe("Its ammonia value was retracted.");
@@ -154,7 +160,7 @@ test("a mended citation stands from the next edition on, with its notice beside 
 
   await page.goto("/editions/1/sources/src_nbstables1982");
   expect(await page.locator("main").innerText()).toBe(before);
-});
+}, 120_000);
 
 test("a page of a source is fit for print: its reference, values and history, without buttons", async () => {
   const page = await openAs(steward, "/editions/1/sources/src_nbstables1982");
