@@ -49,14 +49,15 @@ test("a messy sheet is mended in place and becomes a revision", { timeout: 90_00
   // What is missing is told at once, with a link to each place, and takes the focus.
   await page.getByRole("button", { name: "Read the rows" }).click();
   const summary = page.getByRole("alert");
-  await summary.getByText("4 things to put right").waitFor();
+  // Temperature and pressure stand in the sheet's own title and are filled in.
+  await summary.getByText("2 things to put right").waitFor();
   expect(await summary.evaluate((element) => element === document.activeElement)).toBe(true);
-  await summary.getByRole("link", { name: "Temperature of the values" }).click();
-  expect(await page.evaluate(() => document.activeElement?.id)).toBe("temperature");
+  await summary.getByRole("link", { name: "Kind of the uncertainties" }).click();
+  expect(await page.evaluate(() => document.activeElement?.id)).toBe("uncertaintyKind");
   await expectAccessible(page);
 
-  await page.getByLabel("Temperature of the values").selectOption("298.15");
-  await page.getByLabel("Standard pressure").selectOption("100000");
+  expect(await page.getByLabel("Temperature of the values").inputValue()).toBe("298.15");
+  expect(await page.getByLabel("Standard pressure").inputValue()).toBe("100000");
   await page.getByLabel("Kind of the uncertainties").selectOption("expanded");
   await page.getByRole("combobox", { name: "Source" }).selectOption("new");
   await page.getByLabel("Title").fill("Solution calorimetry (invented)");
@@ -92,6 +93,43 @@ test("a messy sheet is mended in place and becomes a revision", { timeout: 90_00
   await page.waitForURL(/\/revisions\/\d+$/);
   // Joules for kilojoules, which only the table could tell.
   await page.getByText("is 1/1000 of what stands").waitFor();
+});
+
+test("an encoding that was guessed is shown by its signs, and another can be tried", async () => {
+  const page = await steward();
+  await page.setInputFiles("#sheet", path.join("fixtures", "sheets", "windows-1252.csv"));
+  await page.getByRole("button", { name: "Send the sheet" }).click();
+  await page.getByText("Read as Windows-1252: row 1 is not valid UTF-8").waitFor();
+  await expectAccessible(page);
+  await page.getByLabel("Encoding").selectOption("UTF-8");
+  await page.getByRole("button", { name: "Read the bytes again" }).click();
+  await page.getByRole("alert").getByText("Row 1 is not valid UTF-8").waitFor();
+  expect(await page.getByLabel("Encoding").inputValue()).toBe("Windows-1252");
+});
+
+test("each key of a column gets its source, and its rows say so", { timeout: 60_000 }, async () => {
+  const page = await steward();
+  await page.setInputFiles("#sheet", path.join("fixtures", "sheets", "source-keys.csv"));
+  await page.getByRole("button", { name: "Send the sheet" }).click();
+  await page.getByLabel("Source of notebook 14").waitFor();
+  await expectAccessible(page);
+  await page.getByLabel("Temperature of the values").selectOption("298.15");
+  await page.getByLabel("Standard pressure").selectOption("100000");
+  await page.getByLabel("Kind of the uncertainties").selectOption("expanded");
+  for (const key of ["CODATA", "Cox1989"]) {
+    await page.getByLabel(`Source of ${key}`).selectOption({ label: "Calder Point Laboratory, 2026" });
+  }
+  await page.getByLabel("Source of notebook 14").selectOption("new");
+  await page.getByRole("button", { name: "Read the rows" }).click();
+  // What is missing of the new source is told at its own fields.
+  await page.getByRole("alert").getByText("2 things to put right").waitFor();
+  await expectAccessible(page);
+  await page.getByLabel("Title", { exact: true }).fill("Notebook 14");
+  await page.getByLabel("How the values came about").selectOption("measurement");
+  await page.getByRole("button", { name: "Read the rows" }).click();
+  await page.getByText("7 rows = 5 read + 2 refused + 0 skipped").waitFor();
+  await page.getByText("No source was chosen for the key “notebook 3”.").waitFor();
+  await expectAccessible(page);
 });
 
 test("a file that is no sheet is refused on the form", async () => {

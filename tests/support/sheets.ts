@@ -29,7 +29,8 @@ export const notebook: NewSource = {
 
 export interface Confirmation {
   settings?: Partial<SheetSettings>;
-  source?: SourceChoice;
+  /** Null for a sheet without values. */
+  source?: SourceChoice | null;
   columns?: (columns: ColumnPlan) => ColumnPlan;
 }
 
@@ -46,7 +47,7 @@ export async function confirmGuess(steward: Acting, sheetId: number, confirmatio
       uncertaintyKind: "expanded",
       ...confirmation.settings,
     },
-    source: confirmation.source ?? { kind: "new", source: notebook },
+    source: confirmation.source === undefined ? { kind: "new", source: notebook } : confirmation.source,
   });
 }
 
