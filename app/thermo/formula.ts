@@ -1,5 +1,5 @@
 import { type ChargedText, enclosingBracket, spellCharge, splitCharge } from "./charge.ts";
-import { elementOf } from "./elements.ts";
+import { elementOf, isMetal } from "./elements.ts";
 import {
   type Fraction,
   fractionToNumber,
@@ -168,6 +168,10 @@ function notAFormula(marked: string, text: string): string | undefined {
   if (/(?:^|[·.*]\s*[\d./]*\s*)[HD]_?\{?20\}?$/.test(marked)) {
     return `${quote(text)} holds 20 atoms of hydrogen. Was the letter O meant, as in H2O?`;
   }
+  const chlorine = chlorineWithAOne(marked);
+  if (chlorine !== undefined) {
+    return `${quote(text)} counts carbon with a 1. Was the letter l meant, as in ${chlorine}? If not, leave the 1 out.`;
+  }
   const mass = /^\(?(\d{1,3})\)?([A-Z][a-z]?)/.exec(marked);
   if (mass !== null && isMassNumber(Number(mass[1]), mass[2] ?? "")) {
     return (
@@ -188,6 +192,21 @@ function notAFormula(marked: string, text: string): string | undefined {
 function isMassNumber(mass: number, symbol: string): boolean {
   const element = elementOf(symbol) ?? elementOf(symbol[0] ?? "");
   return element !== undefined && mass >= element.atomicNumber && mass <= 3 * element.atomicNumber && mass > 1;
+}
+
+/**
+ * The formula with chlorine in it, where a digit 1 stands for its letter l: at the end of `NaC1` and `C1-`, in `KC1O3`, and
+ * in `MgC12`, since no metal has twelve carbon atoms and nothing else. `C1H4` and `C1O2` say what they mean.
+ */
+function chlorineWithAOne(marked: string): string | undefined {
+  const match = /^(.*?)C1([2-9]|O[2-4]?)?((?:[-+^·.*\s({].*)?)$/.exec(marked);
+  if (match === null) return undefined;
+  const [, before = "", more = "", after = ""] = match;
+  const metal = /([A-Z][a-z]?)[)\d]*$/.exec(before)?.[1];
+  const isMeant = /^[2-9]/.test(more)
+    ? metal !== undefined && isMetal(metal) && !/[HD]/.test(before)
+    : before !== "" || /^\s*[-({^]/.test(after);
+  return isMeant ? `${before}Cl${more}${after}` : undefined;
 }
 
 /**
