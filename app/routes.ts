@@ -82,6 +82,10 @@ export default [
   route("api/v1/editions/:a/compare/:b", "routes/api.edition.compare.ts"),
   route("api/v1/changes", "routes/api.changes.ts"),
   route("api/v1/sources/:source", "routes/api.source.ts"),
+  route("api/v1/sheets", "routes/api.sheets.ts"),
+  route("api/v1/sheets/:sheet", "routes/api.sheet.ts"),
+  route("api/v1/sheets/:sheet/rows", "routes/api.sheet.rows.ts"),
+  route("api/v1/sheets/:sheet/findings", "routes/api.sheet.findings.ts"),
   route("api/*", "routes/api.unknown.ts"),
 
   // Resources for pages (session only)

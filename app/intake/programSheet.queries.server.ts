@@ -23,6 +23,18 @@ export async function findOwnOpenSheetOfBytes(
   return row?.id;
 }
 
+/** The newest sheet that a person handed in. */
+export async function findNewestSheetOf(personId: string, db: Database): Promise<number | undefined> {
+  const row = await db
+    .selectFrom("sheet")
+    .select("id")
+    .where("uploaded_by", "=", personId)
+    .orderBy("id", "desc")
+    .limit(1)
+    .executeTakeFirst();
+  return row?.id;
+}
+
 function rememberedPlans(db: Database) {
   return db
     .selectFrom("column_plan as c")

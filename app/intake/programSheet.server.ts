@@ -14,6 +14,7 @@ import {
   findBuiltRevision,
   findExaminedAfter,
   findNewestRememberedPlan,
+  findNewestSheetOf,
   findOwnOpenSheetOfBytes,
   findProblemsAfter,
   findRememberedPlan,
@@ -36,6 +37,12 @@ export interface HandIn {
   source: string | null;
 }
 
+/** The number of a sheet, and whether it was taken in just now. */
+export interface HandedIn {
+  id: number;
+  isNew: boolean;
+}
+
 /**
  * Takes a sheet in. The same bytes again, while they are being worked on, are the same sheet, so a program may repeat what
  * it is not sure of. Where a remembered plan fits the heads, its source is named and nothing about the columns is in
@@ -43,29 +50,26 @@ export interface HandIn {
  * @throws Invalid when the bytes are no sheet, when the plan named is of other heads or the source is not known; Refused
  *   when somebody else is working on the same bytes
  */
-export async function handInSheet(
-  acting: Acting,
-  { upload, plan, source }: HandIn,
-): Promise<{ id: number; isNew: boolean }> {
+export async function handInSheet(acting: Acting, { upload, plan, source }: HandIn): Promise<HandedIn> {
   demand(acting, "sheet:work");
   const chosen = plan === null ? null : await planOfHeads(plan, upload);
   if (source !== null) await demandSource(source);
   const sha256 = createHash("sha256").update(upload.bytes).digest();
   const twin = await findOwnOpenSheetOfBytes(sha256, acting.person.id, database());
-  const id = twin ?? (await receivedOnce(acting, upload, sha256));
+  const { id, isNew } = twin === undefined ? await receivedOnce(acting, upload, sha256) : { id: twin, isNew: false };
   const sheet = await ownSheet(acting, id);
   const confirmed = sheet.state === "planned" ? await confirmable(sheet, chosen, source) : null;
   if (confirmed) await confirmPlan(acting, id, confirmed);
-  return { id, isNew: twin === undefined };
+  return { id, isNew };
 }
 
 /** Two requests with the same bytes at the same moment: the later one finds the sheet of the earlier one. */
-async function receivedOnce(acting: Acting, upload: UploadedSheet, sha256: Buffer): Promise<number> {
+async function receivedOnce(acting: Acting, upload: UploadedSheet, sha256: Buffer): Promise<HandedIn> {
   try {
-    return await receiveSheet(acting, upload);
+    return { id: await receiveSheet(acting, upload), isNew: true };
   } catch (error) {
     const twin = error instanceof Refused && (await findOwnOpenSheetOfBytes(sha256, acting.person.id, database()));
-    if (twin) return twin;
+    if (twin) return { id: twin, isNew: false };
     throw error;
   }
 }
@@ -116,6 +120,12 @@ async function ownSheet(acting: Acting, id: number): Promise<Sheet> {
   const sheet = await findSheet(id, database());
   if (!sheet || sheet.uploadedBy !== acting.person.id) throw new NotFound(`You handed in no sheet ${id}.`);
   return sheet;
+}
+
+/** Number of the sheet that a person handed in last; null before the first. */
+export async function findNewestOwnSheet(acting: Acting): Promise<number | null> {
+  demand(acting, "sheet:work");
+  return (await findNewestSheetOf(acting.person.id, database())) ?? null;
 }
 
 /** How far a sheet of one's own is. */

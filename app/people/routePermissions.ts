@@ -125,6 +125,10 @@ export const routePermissions: Readonly<Record<string, RouteDoors>> = {
   "/api/v1/editions/:a/compare/:b": reads({ scope: "read" }),
   "/api/v1/changes": reads({ scope: "read" }),
   "/api/v1/sources/:source": reads({ scope: "read" }),
+  "/api/v1/sheets": { read: null, change: { scope: "sheets:write" } },
+  "/api/v1/sheets/:sheet": reads({ scope: "sheets:write" }),
+  "/api/v1/sheets/:sheet/rows": reads({ scope: "sheets:write" }),
+  "/api/v1/sheets/:sheet/findings": reads({ scope: "sheets:write" }),
   // Says only that there is nothing.
   "/api/*": both("public"),
 

@@ -1,4 +1,4 @@
-import { nextLink, placeOf } from "./api/answer.server.ts";
+import { nextLink, placeWithin } from "./api/answer.server.ts";
 import { apiPaths, apiValueChange, writeCursor } from "./api/shape.ts";
 import { countChanges, pageOfChanges } from "#app/editions/compare.ts";
 import { compareEditions } from "./api/contract.ts";
@@ -14,10 +14,11 @@ const api = apiRoute(
     const a = await resolveEdition(params["a"]);
     const b = await resolveEdition(params["b"]);
     const net = await compareEditionsNet(a.edition, b.edition);
-    const place = placeOf(query.cursor, 2);
+    const within = [a.edition.number, b.edition.number];
+    const place = placeWithin(within, query.cursor, 2);
     const { page, more } = pageOfChanges(net.values, place, query.limit);
     const last = page.at(-1);
-    const next = more && last ? writeCursor([last.key, last.property]) : null;
+    const next = more && last ? writeCursor([...within.map(String), last.key, last.property]) : null;
     const body = {
       edition: b.edition.number,
       from: a.edition.number,

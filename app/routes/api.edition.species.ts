@@ -1,4 +1,4 @@
-import { alone, keepingOf, nextLink, placeOf, searchOf } from "./api/answer.server.ts";
+import { alone, keepingOf, nextLink, placeWithin, searchOf } from "./api/answer.server.ts";
 import { apiPaths, apiSpecies, writeCursor } from "./api/shape.ts";
 import { listSpecies } from "./api/contract.ts";
 import { browseSpecies } from "#app/editions/browse.server.ts";
@@ -30,19 +30,19 @@ const api = apiRoute(
         holds: query.property ?? [],
         lacks: [],
       },
-      after: placeOf(query.cursor, 1)?.[0] ?? null,
+      after: placeWithin([number], query.cursor, 1)?.[0] ?? null,
       limit: query.limit,
     });
     const { species, sources } = await findSpeciesWithValues(number, details);
     const last = details.at(-1);
-    const next = more && last ? writeCursor([last.key]) : null;
+    const next = more && last ? writeCursor([String(number), last.key]) : null;
     const body = {
       edition: number,
       species: species.map(({ detail, values }) => apiSpecies(detail, values, sources)),
       next,
     };
-    const address = apiPaths.species(params["edition"] ?? number);
-    const link: Record<string, string> = next ? { Link: nextLink(request, address, next) } : {};
+    // Under current too the next page is of this edition: a list goes on in the table it began in.
+    const link: Record<string, string> = next ? { Link: nextLink(request, apiPaths.species(number), next) } : {};
     return jsonAnswer(request, body, { keeping, headers: { ...headers, ...link } });
   }),
 );

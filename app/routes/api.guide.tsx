@@ -1,13 +1,15 @@
 import { Link } from "react-router";
 import { config } from "#app/config.server.ts";
 import { findCurrentEdition } from "#app/editions/editions.server.ts";
+import { findSources } from "#app/editions/read.server.ts";
 import { API_BASE } from "#app/http/apiContract.ts";
 import { problemKinds } from "#app/http/problem.ts";
 import { forPage } from "#app/http/respond.server.ts";
+import { findNewestOwnSheet } from "#app/intake/programSheet.server.ts";
 import { paths } from "#app/paths.ts";
 import { LONGEST_KEY_DAYS, MOST_KEYS } from "#app/people/key.ts";
 import { may } from "#app/people/permissions.ts";
-import { findVisitor } from "#app/people/visitor.server.ts";
+import { findVisitor, type Visitor } from "#app/people/visitor.server.ts";
 import { ButtonLink } from "#app/ui/Button.tsx";
 import { Caution } from "#app/ui/Caution.tsx";
 import { Leaf } from "#app/ui/Leaf.tsx";
@@ -17,7 +19,7 @@ import type { Route } from "./+types/api.guide";
 import { LONGEST_PAGE } from "./api/contract.ts";
 import { openApiDocument } from "./api/document.server.ts";
 import { examplesFor } from "./api/examples.ts";
-import { referenceOf } from "./api/reference.ts";
+import { type ExampleFacts, referenceOf } from "./api/reference.ts";
 import { ReferenceSection } from "./api/ReferenceSection.tsx";
 
 export const meta: Route.MetaFunction = () => [{ title: "For programs · Tablewright" }];
@@ -30,13 +32,24 @@ export const loader = forPage(async ({ request }: Route.LoaderArgs) => {
   const visitor = await findVisitor(request);
   const { publicUrl } = config();
   const reads = visitor !== null && may(visitor.roles, "table:read");
+  const edition = (reads ? await findCurrentEdition() : null) ?? 1;
   return {
     publicUrl,
-    examples: examplesFor(publicUrl, (reads ? await findCurrentEdition() : null) ?? 1),
+    examples: examplesFor(publicUrl, edition),
     mayMakeKeys: visitor !== null && may(visitor.roles, "key:own"),
-    reference: referenceOf(openApiDocument(publicUrl)),
+    reference: referenceOf(openApiDocument(publicUrl), await factsFor(visitor, edition)),
   };
 });
+
+/** A source and a sheet that this reader can ask for, so that the examples answer as they stand. */
+async function factsFor(visitor: Visitor | null, edition: number): Promise<ExampleFacts> {
+  const [source] = visitor && may(visitor.roles, "table:read") ? (await findSources(edition)).keys() : [];
+  const sheet =
+    visitor && may(visitor.roles, "sheet:work")
+      ? await findNewestOwnSheet({ person: visitor, apiKeyId: null, requestId: null })
+      : null;
+  return { edition: String(edition), ...(source ? { source } : {}), ...(sheet ? { sheet: String(sheet) } : {}) };
+}
 
 /** A shortened answer: the value of water as CODATA Key Values (Cox, Wagman, Medvedev, 1989) print it. */
 const ANSWER = `{ "edition": 1, "key": "H2O(l)", "name": "water", …
@@ -158,7 +171,10 @@ export default function ApiGuidePage({ loaderData }: Route.ComponentProps) {
             A parameter given twice, and one that an address does not know, is 400 and not passed over: a typing mistake
             in a filter must not widen the answer.
           </li>
-          <li>For the whole of an edition fetch table.csv once, and keep it; do not walk the species one by one.</li>
+          <li>
+            For the whole of an edition fetch table.csv, table.json or table.ndjson once, and keep it; do not walk the
+            species one by one.
+          </li>
         </ul>
       </Section>
 

@@ -2,6 +2,7 @@ import { Link } from "react-router";
 import { problemKinds } from "#app/http/problem.ts";
 import { paths } from "#app/paths.ts";
 import { Prose } from "#app/ui/Prose.tsx";
+import { Shell } from "#app/ui/Shell.tsx";
 import { Table } from "#app/ui/Table.tsx";
 import type { Reference, ReferenceAnswer, ReferenceEndpoint, ReferenceField, ReferenceShape } from "./reference.ts";
 
@@ -30,7 +31,7 @@ export function ReferenceSection({ reference }: { reference: Reference }) {
 }
 
 function Endpoint({ endpoint }: { endpoint: ReferenceEndpoint }) {
-  const { id, method, path, summary, description, needsKey, parameters, answers } = endpoint;
+  const { id, method, path, summary, description, needsKey, parameters, bodies, command, answers } = endpoint;
   return (
     <div className="mt-9 border-t border-rule pt-4">
       <h3 className="font-semibold break-words" id={id}>
@@ -64,6 +65,19 @@ function Endpoint({ endpoint }: { endpoint: ReferenceEndpoint }) {
           </tbody>
         </Table>
       )}
+      {bodies.map(({ mediaType, fields }) =>
+        fields.length > 0 ? (
+          <div key={mediaType} className="mt-4">
+            <p className="mb-1 text-soft">Sent as {mediaType}:</p>
+            <Fields caption={`Fields of the ${mediaType} body of ${method} ${path}`} fields={fields} />
+          </div>
+        ) : (
+          <p key={mediaType} className="mt-3 text-soft">
+            Sent as {mediaType}: the bytes of the file.
+          </p>
+        ),
+      )}
+      <Shell label={`Example of ${method} ${path}`}>{command}</Shell>
       <dl className="mt-3 max-w-[72ch] space-y-1">
         {answers.map((answer) => (
           <div key={answer.status} className="flex gap-x-4">

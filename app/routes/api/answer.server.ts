@@ -40,8 +40,38 @@ export function placeOf(cursor: string | undefined, parts: number): string[] | n
   if (cursor === undefined) return null;
   const place = readCursor(cursor, parts);
   if (place) return place;
-  const detail = "This is no cursor that a page gave out. Leave it out to begin at the first page.";
-  throw new Invalid(detail, [{ pointer: "/cursor", detail }]);
+  throw noCursor();
+}
+
+function noCursor(
+  detail = "This is no cursor that a page gave out. Leave it out to begin at the first page.",
+): Invalid {
+  return new Invalid(detail, [{ pointer: "/cursor", detail }]);
+}
+
+/**
+ * The numbers of a place.
+ * @throws Invalid when a part of it is no whole number
+ */
+export function numbersOf(place: readonly string[] | null): number[] {
+  return (place ?? []).map((part) => {
+    if (!/^\d{1,9}$/.test(part)) throw noCursor();
+    return Number(part);
+  });
+}
+
+/**
+ * The place of a cursor that holds within certain editions, which stand in it first.
+ * @throws Invalid when the cursor is none, or of other editions
+ */
+export function placeWithin(editions: readonly number[], cursor: string | undefined, parts: number): string[] | null {
+  const place = placeOf(cursor, editions.length + parts);
+  if (place === null) return null;
+  const [own, rest] = [place.slice(0, editions.length), place.slice(editions.length)];
+  if (own.some((edition, index) => edition !== String(editions[index]))) {
+    throw noCursor(`This cursor is of edition ${own.join(" and ")}. Follow the Link header, which names the edition.`);
+  }
+  return rest;
 }
 
 /** @throws BadRequest when a parameter is given together with others that it makes meaningless */

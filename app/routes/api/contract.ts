@@ -12,7 +12,7 @@ import { splitKeys } from "#app/editions/search.ts";
  * none is ever taken away or given another meaning.
  */
 
-const property = z.enum(PROPERTIES as readonly [Property, ...Property[]]).meta({
+export const property = z.enum(PROPERTIES as readonly [Property, ...Property[]]).meta({
   id: "Property",
   description:
     "enthalpyOfFormation, gibbsEnergyOfFormation and enthalpyIncrement are in kJ/mol; entropy and heatCapacity in J/(mol K).",
@@ -21,7 +21,7 @@ const phase = z.enum(PHASES as readonly [Phase, ...Phase[]]).meta({
   id: "Phase",
   description: "g gas, l liquid, s solid, cr crystal, am amorphous, vit glass, aq dissolved in water.",
 });
-const digitsText = z
+export const digitsText = z
   .string()
   .regex(/^-?\d+(\.\d+)?$/)
   .meta({ description: "A decimal number with the digits as printed: 205.10 is not 205.1.", example: "-285.830" });
@@ -30,7 +30,7 @@ const sha256 = z
   .string()
   .regex(/^[0-9a-f]{64}$/)
   .meta({ description: "SHA-256 in hexadecimal." });
-const time = z.iso.datetime().meta({ description: "RFC 3339, in UTC.", example: "2026-03-12T09:30:00.000Z" });
+export const time = z.iso.datetime().meta({ description: "RFC 3339, in UTC.", example: "2026-03-12T09:30:00.000Z" });
 const key = z.string().meta({ description: "Species key in that edition.", example: "H2O(l)" });
 const speciesId = z.string().meta({
   description: "Opaque id of the species. It stays when the species is renamed.",
@@ -233,7 +233,7 @@ const casNumber = z.string().transform((text, context): string => {
 export const LONGEST_PAGE = 500;
 const USUAL_PAGE = 100;
 
-const limit = z
+export const limit = z
   .string()
   .optional()
   .transform((text, context): number => {
@@ -248,7 +248,7 @@ const limit = z
     param: { example: "100" },
   });
 
-const cursor = z
+export const cursor = z
   .string()
   .max(1000)
   .optional()
@@ -313,8 +313,14 @@ export const listSpecies = operation({
         "One species by its key or a variant of it: for keys with a slash where %2F cannot travel in a path. Unknown is 404.",
     }),
     q: z.string().max(200).optional().meta({ description: "Key, formula in any usual spelling, name or CAS number." }),
-    element: elementList.optional().meta({ description: "Element symbols, separated by commas; all must occur." }),
-    phase: phaseList.optional().meta({ description: "Phases, separated by commas; any of them." }),
+    element: elementList.optional().meta({
+      description: "Element symbols, separated by commas; all must occur.",
+      param: { example: "H" },
+    }),
+    phase: phaseList.optional().meta({
+      description: "Phases, separated by commas; any of them.",
+      param: { example: "g" },
+    }),
     cas: casNumber.optional().meta({ description: "CAS Registry Number." }),
     property: propertyList.optional().meta({ description: "Properties, separated by commas; all must have a value." }),
     limit,
@@ -363,7 +369,10 @@ export const listValues = operation({
         description: "Species keys, separated by commas outside brackets; all species when left out.",
         param: { example: "H2O(l),CO2(g)" },
       }),
-    property: propertyList.optional().meta({ description: "Properties, separated by commas; all when left out." }),
+    property: propertyList.optional().meta({
+      description: "Properties, separated by commas; all when left out.",
+      param: { example: "enthalpyOfFormation" },
+    }),
   }),
   answer: { description: "The values.", mediaType: "application/json", schema: valueList },
   otherStatuses: [304, 400, 404, 422],
@@ -433,7 +442,15 @@ export const lookUpSpecies = operation({
   description: `Up to ${MOST_ASKED} items, by what they are called in that edition, whatever the case of a name. The answer has one entry for each, in order; nothing is left out and nothing guessed: what may be two species is ambiguous. Under a number the same question has the same answer, byte for byte, for ever.`,
   parameters: editionParameter,
   query: NONE,
-  body: { description: "What is asked.", content: { "application/json": { schema: lookupQuestion } } },
+  body: {
+    description: "What is asked.",
+    content: {
+      "application/json": {
+        schema: lookupQuestion,
+        example: { species: ["H2O(l)", "SO4 2-(aq)", "7732-18-5"], properties: ["enthalpyOfFormation"] },
+      },
+    },
+  },
   answer: {
     description: "One entry for each item asked.",
     mediaType: "application/json",

@@ -2,11 +2,12 @@ import { z } from "zod";
 import { createDocument, type ZodOpenApiPathsObject, type ZodOpenApiResponsesObject } from "zod-openapi";
 import { readingOperations } from "./contract.ts";
 import { headersOf } from "./headers.ts";
+import { sheetOperations } from "./sheetContract.ts";
 import { API_BASE, API_GROUPS, type ApiOperation } from "#app/http/apiContract.ts";
 import { PROBLEM_TYPE } from "#app/http/problem.ts";
 
 /** Every operation of the API; a test compares this list with the addresses in `app/routes.ts`. */
-export const operations: readonly ApiOperation[] = [...readingOperations];
+export const operations: readonly ApiOperation[] = [...readingOperations, ...sheetOperations];
 
 const problem = z
   .object({

@@ -30,6 +30,14 @@ export interface ReferenceAnswer {
   description: string;
   mediaType: string | null;
   fields: readonly ReferenceField[];
+  /** Whether it is to be saved as a file. */
+  isFile: boolean;
+}
+
+/** One form in which a request's body may be sent. */
+export interface ReferenceBody {
+  mediaType: string;
+  fields: readonly ReferenceField[];
 }
 
 export interface ReferenceEndpoint {
@@ -40,6 +48,9 @@ export interface ReferenceEndpoint {
   description: string;
   needsKey: boolean;
   parameters: readonly ReferenceParameter[];
+  bodies: readonly ReferenceBody[];
+  /** A request as it is typed, with the contract's own examples; the key stands in the variable TABLEWRIGHT_KEY. */
+  command: string;
   answers: readonly ReferenceAnswer[];
 }
 
@@ -58,6 +69,9 @@ export interface Reference {
 
 type Schema = oas31.SchemaObject | oas31.ReferenceObject;
 
+/** What stands in an example in place of the contract's own: a number or an id that this reader can ask for. */
+export type ExampleFacts = Readonly<Record<string, string>>;
+
 const METHODS = ["get", "post", "put", "patch", "delete"] as const;
 const TYPE_WORDS: Readonly<Record<string, string>> = {
   string: "text",
@@ -74,6 +88,7 @@ const shapeName = ({ $ref }: oas31.ReferenceObject): string => $ref.slice($ref.l
 /** A type in words, and the shape it names. */
 function typeOf(schema: Schema): { type: string; shape: string | null } {
   if (isReference(schema)) return { type: shapeName(schema), shape: shapeName(schema) };
+  if (schema.const !== undefined) return { type: JSON.stringify(schema.const), shape: null };
   if (schema.enum) return { type: schema.enum.map((value) => JSON.stringify(value)).join(", "), shape: null };
   const either = schema.anyOf ?? schema.oneOf;
   if (either) {
@@ -96,14 +111,29 @@ function typeOf(schema: Schema): { type: string; shape: string | null } {
   return { type: types.map((one) => TYPE_WORDS[one] ?? one).join(" or "), shape: null };
 }
 
-/** The members of an inline object, through lists and alternatives. */
+/** The members of an inline object, through lists and alternatives; those of several alternatives together. */
 function membersOf(schema: Schema): oas31.SchemaObject | null {
   if (isReference(schema)) return null;
   if (schema.properties) return schema;
   if (schema.items) return membersOf(schema.items);
-  const inside = (schema.anyOf ?? schema.oneOf ?? []).map(membersOf).find((one) => one !== null);
-  return inside ?? null;
+  const inside = (schema.anyOf ?? schema.oneOf ?? []).map(membersOf).filter((one) => one !== null);
+  return inside.length > 1 ? inside.reduce(together) : (inside[0] ?? null);
 }
+
+/** What either of two shapes has; what the other lacks may be missing, and a fixed word is one of two. */
+function together(a: oas31.SchemaObject, b: oas31.SchemaObject): oas31.SchemaObject {
+  const properties = { ...a.properties, ...b.properties };
+  for (const [name, one] of Object.entries(a.properties ?? {})) {
+    const other = b.properties?.[name];
+    if (!other || isReference(one) || isReference(other)) continue;
+    const words = [...fixedWords(one), ...fixedWords(other)];
+    if (words.length > 1) properties[name] = { ...one, const: undefined, enum: words };
+  }
+  return { properties, required: (a.required ?? []).filter((name) => b.required?.includes(name)) };
+}
+
+const fixedWords = (schema: oas31.SchemaObject): unknown[] =>
+  schema.const === undefined ? (schema.enum ?? []) : [schema.const];
 
 function fieldsOf(schema: Schema, prefix = ""): ReferenceField[] {
   const members = membersOf(schema);
@@ -137,16 +167,63 @@ function answerOf(status: string, answer: oas31.ResponseObject): ReferenceAnswer
     status: Number(status),
     description: answer.description,
     mediaType: content?.[0] ?? null,
+    isFile: Number(status) < 300 && answer.headers?.["Content-Disposition"] !== undefined,
     // Problem documents have one shape, which is printed once.
     fields: schema && Number(status) < 400 ? fieldsOf(schema) : [],
   };
 }
 
-function endpointOf(path: string, method: string, operation: oas31.OperationObject): ReferenceEndpoint {
+/** Text as one word of a shell. */
+const quoted = (text: string): string => `'${text.replaceAll("'", "'\\''")}'`;
+
+/** A value in an address; what needs no escape there is left readable. */
+const inAddress = (text: string): string => encodeURIComponent(text).replaceAll("%2C", ",");
+
+/** The request that the contract's examples make. */
+function commandOf(
+  { method, path, needsKey, parameters, answers }: Omit<ReferenceEndpoint, "command">,
+  body: oas31.RequestBodyObject | undefined,
+  base: string,
+  facts: ExampleFacts,
+): string {
+  const exampleOf = ({ name, example }: ReferenceParameter): string | null => facts[name] ?? example;
+  const address = path.replace(/\{(\w+)\}/g, (_whole, name: string) => {
+    const parameter = parameters.find((one) => one.where === "path" && one.name === name);
+    return inAddress((parameter && exampleOf(parameter)) ?? name);
+  });
+  const query = parameters.flatMap((one) =>
+    one.where === "query" && one.example !== null ? [`${one.name}=${inAddress(exampleOf(one) ?? "")}`] : [],
+  );
+  const [sent] = Object.entries(body?.content ?? {});
+  const isFile = answers.some((answer) => answer.isFile);
+  const options = [
+    ...(isFile ? ["-OJ"] : []),
+    ...(needsKey ? ['-H "Authorization: Bearer $TABLEWRIGHT_KEY"'] : []),
+    ...(sent ? [`-H ${quoted(`Content-Type: ${sent[0]}`)}`, `--data-binary ${dataOf(sent)}`] : []),
+    // A body makes it a POST by itself.
+    ...(method !== "GET" && !sent ? [`-X ${method}`] : []),
+  ];
+  return `curl ${options.join(" ")}${options.length > 0 ? " \\\n  " : ""}${quoted(`${base}${address}${query.length > 0 ? `?${query.join("&")}` : ""}`)}`;
+}
+
+/** JSON is typed; anything else is sent from a file. */
+function dataOf([mediaType, { example }]: [string, oas31.MediaTypeObject]): string {
+  return /json$/.test(mediaType) ? quoted(JSON.stringify(example)) : "@calorimeter.csv";
+}
+
+function endpointOf(
+  path: string,
+  method: string,
+  operation: oas31.OperationObject,
+  shapes: Readonly<Record<string, Schema>>,
+  base: string,
+  facts: ExampleFacts,
+): ReferenceEndpoint {
+  const body = operation.requestBody && !isReference(operation.requestBody) ? operation.requestBody : undefined;
   const parameters = (operation.parameters ?? []).filter(
     (parameter): parameter is oas31.ParameterObject => !isReference(parameter),
   );
-  return {
+  const endpoint = {
     id: operation.operationId ?? `${method} ${path}`,
     method: method.toUpperCase(),
     path,
@@ -154,22 +231,29 @@ function endpointOf(path: string, method: string, operation: oas31.OperationObje
     description: operation.description ?? "",
     needsKey: operation.security?.length !== 0,
     parameters: parameters.map(parameterOf),
+    bodies: Object.entries(body?.content ?? {}).map(([mediaType, { schema }]) => ({
+      mediaType,
+      fields: schema ? fieldsOf(isReference(schema) ? (shapes[shapeName(schema)] ?? {}) : schema) : [],
+    })),
     answers: Object.entries(operation.responses ?? {}).flatMap(([status, answer]) =>
       isReference(answer) ? [] : [answerOf(status, answer)],
     ),
   };
+  return { ...endpoint, command: commandOf(endpoint, body, base, facts) };
 }
 
 /** What the guide prints of the contract. */
-export function referenceOf(document: oas31.OpenAPIObject): Reference {
+export function referenceOf(document: oas31.OpenAPIObject, facts: ExampleFacts = {}): Reference {
+  const base = document.servers?.[0]?.url ?? "";
+  const schemas = document.components?.schemas ?? {};
   return {
     endpoints: Object.entries(document.paths ?? {}).flatMap(([path, item]) =>
       METHODS.flatMap((method) => {
         const operation = item[method];
-        return operation ? [endpointOf(path, method, operation)] : [];
+        return operation ? [endpointOf(path, method, operation, schemas, base, facts)] : [];
       }),
     ),
-    shapes: Object.entries(document.components?.schemas ?? {}).map(([name, schema]) => ({
+    shapes: Object.entries(schemas).map(([name, schema]) => ({
       name,
       description: schema.description ?? "",
       fields: fieldsOf(schema),

@@ -22,6 +22,9 @@ export const apiPaths = {
   tableLines: (edition: number | string) => `${API_BASE}/editions/${edition}/table.ndjson`,
   tableDescription: (edition: number | string) => `${API_BASE}/editions/${edition}/table.csv-metadata.json`,
   source: (id: string) => `${API_BASE}/sources/${encodeURIComponent(id)}`,
+  sheet: (sheet: number) => `${API_BASE}/sheets/${sheet}`,
+  sheetRows: (sheet: number) => `${API_BASE}/sheets/${sheet}/rows`,
+  sheetFindings: (sheet: number) => `${API_BASE}/sheets/${sheet}/findings`,
   compare: (a: number | string, b: number | string) => `${API_BASE}/editions/${a}/compare/${b}`,
 } as const;
 
