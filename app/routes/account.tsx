@@ -7,6 +7,7 @@ import { type FormReply, invalidReply, refusedReply } from "#app/http/formReply.
 import { requestContext } from "#app/http/requestContext.server.ts";
 import { forPage } from "#app/http/respond.server.ts";
 import { paths } from "#app/paths.ts";
+import { agentInWords } from "#app/people/agent.ts";
 import { addressForm, changePasswordForm, renameForm, sessionsForm } from "#app/people/forms.ts";
 import { PASSWORD_HINT } from "#app/people/passwordRules.ts";
 import { changePassword } from "#app/people/passwords.server.ts";
@@ -155,7 +156,7 @@ export default function AccountPage({ loaderData, actionData }: Route.ComponentP
           <tbody>
             {sessions.map((session) => (
               <tr key={session.id}>
-                <th scope="row">{session.here ? <b>This one</b> : session.agent || "not named"}</th>
+                <th scope="row">{session.here ? <b>This one</b> : agentInWords(session.agent)}</th>
                 <td className="tight">
                   <Time at={session.begunAt} withTime />
                 </td>
@@ -170,7 +171,7 @@ export default function AccountPage({ loaderData, actionData }: Route.ComponentP
                         kind="text"
                         name="intent"
                         value="end-session"
-                        aria-label={`End the session of ${session.agent || "an unnamed browser"}`}
+                        aria-label={`End the session of ${agentInWords(session.agent)}`}
                       >
                         End
                       </Button>

@@ -5,6 +5,7 @@ import { readForm } from "#app/http/forms.server.ts";
 import { requestContext } from "#app/http/requestContext.server.ts";
 import { forPage } from "#app/http/respond.server.ts";
 import { paths } from "#app/paths.ts";
+import { agentInWords } from "#app/people/agent.ts";
 import { scopeInfo } from "#app/people/key.ts";
 import { findPersonPage, type PersonPage } from "#app/people/personPage.server.ts";
 import { requireActing, requireVisitor } from "#app/people/visitor.server.ts";
@@ -257,7 +258,7 @@ function Sessions({ person }: { person: PersonPage }) {
               {person.sessions.map((session) => (
                 <tr key={session.id}>
                   <th scope="row" className="wide">
-                    {session.agent || "not named"}
+                    {agentInWords(session.agent)}
                   </th>
                   <td className="tight">
                     <Time at={session.begunAt} withTime />
@@ -272,7 +273,7 @@ function Sessions({ person }: { person: PersonPage }) {
                         kind="text"
                         name="intent"
                         value="end-session"
-                        aria-label={`End the session of ${session.agent || "an unnamed browser"}`}
+                        aria-label={`End the session of ${agentInWords(session.agent)}`}
                       >
                         End
                       </Button>

@@ -109,7 +109,7 @@ describe("one's own address", () => {
     const analyst = await makePerson("Left Behind", "analyst");
     await askForReset(analyst.person.email, from());
     await runJobs(database);
-    const reset = await database.owner
+    const reset = database.owner
       .selectFrom("password_reset")
       .select("used_at")
       .where("person_id", "=", analyst.person.id);

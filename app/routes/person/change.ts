@@ -1,3 +1,4 @@
+import { agentInWords } from "#app/people/agent.ts";
 import type { PersonChange } from "#app/people/forms.ts";
 import { orderRoles, type Role } from "#app/people/person.ts";
 
@@ -128,7 +129,7 @@ export function questionOf(change: PersonChange, account: Changed): Question {
       const agent = account.sessions.find(({ id }) => id === change.session)?.agent;
       return {
         head: `End a session of ${name}?`,
-        sentences: [`It was begun with ${agent || "a browser that gave no name"}.`],
+        sentences: [`It was begun with ${agent ? agentInWords(agent) : "a browser that gave no name"}.`],
         verb: "End the session",
       };
     }
