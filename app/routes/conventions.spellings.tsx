@@ -1,8 +1,9 @@
-import { NOT_READ, type Notation, notationName, READ } from "#app/thermo/spellings.ts";
+import { type Notation, notationName, READ } from "#app/thermo/spellings.ts";
 import { Section } from "#app/ui/Section.tsx";
 import type { Route } from "./+types/conventions.spellings";
 import { ConventionsLeaf } from "./conventions/ConventionsLeaf.tsx";
 import { ReadTable, UnreadTable } from "./conventions/Spellings.tsx";
+import { toldBy } from "./conventions/unread.ts";
 
 export const meta = () => [{ title: "Spellings · Conventions · Tablewright" }];
 
@@ -16,7 +17,7 @@ export function loader() {
       notation,
       name: notationName[notation],
       read: READ[notation],
-      unread: NOT_READ[notation],
+      unread: toldBy(notation),
     })),
   };
 }

@@ -4,7 +4,7 @@ import { showTerm } from "#app/thermo/notation.ts";
 import { PHASES, phaseName } from "#app/thermo/phase.ts";
 import { referenceStateOf } from "#app/thermo/referenceStates.ts";
 import { readKey } from "#app/thermo/speciesKey.ts";
-import { NOT_READ, READ } from "#app/thermo/spellings.ts";
+import { READ } from "#app/thermo/spellings.ts";
 import { entropyStepToBar, gasFormed, gibbsStepToBar } from "#app/thermo/standardState.ts";
 import { trueMinus } from "#app/ui/formulaPieces.ts";
 import { Prose } from "#app/ui/Prose.tsx";
@@ -14,6 +14,7 @@ import { Table } from "#app/ui/Table.tsx";
 import type { Route } from "./+types/conventions.states";
 import { ConventionsLeaf } from "./conventions/ConventionsLeaf.tsx";
 import { ReadTable, UnreadTable } from "./conventions/Spellings.tsx";
+import { toldBy } from "./conventions/unread.ts";
 
 export const meta = () => [{ title: "States · Conventions · Tablewright" }];
 
@@ -40,11 +41,16 @@ const STEP_EXAMPLES = [
   "Cl-(aq)",
 ];
 
+/** A step with its sign, `+0.1094`; 0 where nothing changes. */
+function shownStep(step: number): string {
+  return step === 0 ? "0" : showTerm(step, 4).replace(" ", "");
+}
+
 /** The states as the readers and the arithmetic know them. */
 export function loader() {
   return {
     read: READ.phase,
-    unread: NOT_READ.phase,
+    unread: toldBy("phase"),
     elements: elementSymbols().flatMap((symbol) => {
       const state = referenceStateOf(symbol);
       return state === undefined ? [] : [{ symbol, name: elementOf(symbol)?.name ?? "", key: state.key }];
@@ -57,8 +63,8 @@ export function loader() {
         {
           key,
           formed: trueMinus(String(gasFormed(reading.value) ?? "")),
-          entropy: showTerm(entropyStepToBar(reading.value), 4),
-          gibbs: showTerm(gibbsStepToBar(reading.value) ?? 0, 4),
+          entropy: shownStep(entropyStepToBar(reading.value)),
+          gibbs: shownStep(gibbsStepToBar(reading.value) ?? 0),
         },
       ];
     }),

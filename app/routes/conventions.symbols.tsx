@@ -138,7 +138,14 @@ export default function SymbolsPage() {
                 </th>
                 <td className="wide">{name}</td>
                 <td className="tight">
-                  <Figure value={value} /> <UnitText unit={unit} />
+                  <Figure value={value} />{" "}
+                  {unit === "1/mol" ? (
+                    <>
+                      mol<sup>−1</sup>
+                    </>
+                  ) : (
+                    <UnitText unit={unit} />
+                  )}
                 </td>
               </tr>
             ))}

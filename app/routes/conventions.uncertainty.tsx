@@ -53,7 +53,7 @@ export default function UncertaintyPage() {
               <th scope="col">Meaning</th>
               <th scope="col">As the source gave it</th>
               <th scope="col" className="figure">
-                <Prose text="u" />
+                <i>u</i>
               </th>
               <th scope="col">In the table</th>
             </tr>
@@ -81,8 +81,8 @@ export default function UncertaintyPage() {
       <Columns>
         <Section head="Figures in brackets" id="brackets">
           <p className="mb-2">
-            <b>Brackets hold the standard uncertainty in the last digits</b>: −285.830(20) is −285.830 with u = 0.020.
-            At most two digits of it are shown, and the value is rounded to the same place; what is stored is not
+            <b>Brackets hold the standard uncertainty in the last digits</b>: −285.830(20) is −285.830 with <i>u</i> =
+            0.020. At most two digits of it are shown, and the value is rounded to the same place; what is stored is not
             rounded.
           </p>
           <p>

@@ -1,4 +1,4 @@
-import { NOT_READ, READ } from "#app/thermo/spellings.ts";
+import { READ } from "#app/thermo/spellings.ts";
 import { propertyInfo } from "#app/thermo/property.ts";
 import { exactDecimalFactor, isLikeUnit, type Unit, UNITS } from "#app/thermo/unit.ts";
 import { Prose } from "#app/ui/Prose.tsx";
@@ -8,6 +8,7 @@ import { UnitText } from "#app/ui/UnitText.tsx";
 import type { Route } from "./+types/conventions.units";
 import { ConventionsLeaf } from "./conventions/ConventionsLeaf.tsx";
 import { ReadTable, UnreadTable } from "./conventions/Spellings.tsx";
+import { toldBy } from "./conventions/unread.ts";
 
 export const meta = () => [{ title: "Units · Conventions · Tablewright" }];
 
@@ -26,7 +27,7 @@ export function loader() {
     const own = isLikeUnit(unit, "kJ/mol") ? "kJ/mol" : propertyInfo.entropy.unit;
     return { unit, own, factor: exactDecimalFactor(unit, own) ?? "", definition: definitionOf(unit) };
   });
-  return { factors, read: READ.unit, unread: NOT_READ.unit };
+  return { factors, read: READ.unit, unread: toldBy("unit") };
 }
 
 /** Accepted units with exact factors, and what is refused. Readable by everybody. */

@@ -1,33 +1,22 @@
 import { describe, expect, it, test } from "vitest";
 import { readFormula } from "./formula.ts";
-import { readNumber, spellNumber } from "./number.ts";
+import { readNumber } from "./number.ts";
 import { readPhase } from "./phase.ts";
-import { readQuantity, spellQuantity } from "./quantity.ts";
-import { mapReading, type Reading } from "./reading.ts";
-import { formatKey, readKey } from "./speciesKey.ts";
+import { readAs } from "./readAs.ts";
+import type { Reading } from "./reading.ts";
 import { NOT_READ, type Notation, READ } from "./spellings.ts";
 import { readUnit } from "./unit.ts";
 
-/** Each reader, with its reading brought to the plain spelling that the table of spellings writes. */
-const readers: Record<Notation, (text: string) => Reading<string>> = {
-  number: (text) => mapReading(readNumber(text), spellNumber),
-  quantity: (text) => mapReading(readQuantity(text), spellQuantity),
-  unit: (text) => mapReading(readUnit(text), (unit) => unit),
-  formula: (text) => mapReading(readFormula(text), ({ printed }) => printed),
-  phase: (text) =>
-    mapReading(readPhase(text), ({ phase, label }) => (label === undefined ? phase : `${phase},${label}`)),
-  key: (text) => mapReading(readKey(text), formatKey),
-};
-const notations = Object.keys(readers) as Notation[];
+const notations = Object.keys(readAs) as Notation[];
 
 describe.each(notations)("%s: spellings with one reading", (notation) => {
   describe.each(READ[notation])("$why", ({ rows }) => {
     it.each(rows)("%j is %s", (text, reading) => {
-      expect(readers[notation](text)).toMatchObject({ outcome: "read", value: reading });
+      expect(readAs[notation](text)).toMatchObject({ outcome: "read", value: reading });
     });
 
     it.each(rows)("and what %j is read as is read back as itself", (_text, reading) => {
-      expect(readers[notation](reading)).toMatchObject({ outcome: "read", value: reading });
+      expect(readAs[notation](reading)).toMatchObject({ outcome: "read", value: reading });
     });
   });
 });
@@ -35,7 +24,7 @@ describe.each(notations)("%s: spellings with one reading", (notation) => {
 describe.each(notations)("%s: spellings that are refused or asked about", (notation) => {
   describe.each(NOT_READ[notation])("$why", ({ rows }) => {
     it.each(rows)("%j: %j", (text, expected) => {
-      const reading = readers[notation](text);
+      const reading = readAs[notation](text);
       if (typeof expected === "string") {
         expect(reading).toMatchObject({ outcome: "refused", sentence: expect.stringContaining(expected) });
       } else {

@@ -10,6 +10,18 @@ import { useServer } from "../support/server.ts";
 const server = useServer({ env: { SPECIMENS: "on" } });
 const browser = useBrowser();
 
+/** Pages that anybody may read, signed in or not. */
+const CONVENTIONS = [
+  "/conventions",
+  "/conventions/symbols",
+  "/conventions/states",
+  "/conventions/units",
+  "/conventions/uncertainty",
+  "/conventions/spellings",
+  "/conventions/checks",
+  "/conventions/checks/gibbs-closure",
+];
+
 /** Another window on the same browser, of another size or without scripts. */
 async function windowLike(options: BrowserContextOptions): Promise<Page> {
   const first = await browser.newWindow(server.url);
@@ -27,7 +39,7 @@ describe("in every window", () => {
     ["dark", 1440],
   ] as const)("%s, %d px wide: axe finds nothing, and only tables scroll sideways", async (colorScheme, width) => {
     const page = await windowLike({ colorScheme, viewport: { width, height: 900 } });
-    for (const address of ["/ui?errors", "/conventions", "/no/such/page"]) {
+    for (const address of ["/ui?errors", ...CONVENTIONS, "/no/such/page"]) {
       await page.goto(address);
       await expectAccessible(page);
       const wide = await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth);
@@ -147,6 +159,30 @@ describe("a change of page in the browser", () => {
   });
 });
 
+describe("the conventions", () => {
+  it("lead from the first page to each of their pages, from there to every other, and to each check and back", async () => {
+    const page = await browser.newWindow(server.url);
+    await page.goto("/conventions");
+    await page.getByRole("main").getByRole("link", { name: "Symbols" }).click();
+    for (const [name, heading] of [
+      ["States", "States"],
+      ["Units", "Units"],
+      ["Uncertainty", "Uncertainty"],
+      ["Spellings", "Spellings"],
+      ["Checks", "What is checked"],
+    ] as const) {
+      const pages = page.getByRole("navigation", { name: "Pages of the conventions" });
+      await pages.getByRole("link", { name }).click();
+      await page.getByRole("heading", { level: 1, name: heading }).waitFor();
+      expect(await pages.getByRole("link", { name }).getAttribute("aria-current")).toBe("page");
+    }
+    await page.getByRole("link", { name: "Gibbs closure" }).click();
+    await page.getByRole("heading", { level: 1, name: "Gibbs closure" }).waitFor();
+    await page.getByRole("link", { name: "all checks" }).click();
+    await page.waitForURL("**/conventions/checks");
+  });
+});
+
 describe("a form with something wrong", () => {
   it("shows a summary that takes the focus and leads to the field", async () => {
     const page = await browser.newWindow(server.url);
@@ -176,7 +212,7 @@ describe("before scripts arrive", () => {
 describe("what is rendered", () => {
   it("holds only characters that the shipped font files have", async () => {
     const page = await browser.newWindow(server.url);
-    for (const address of ["/ui", "/conventions", "/conventions/checks/gibbs-closure"]) {
+    for (const address of ["/ui", ...CONVENTIONS]) {
       await page.goto(address);
       const text = await page.evaluate(() => document.body.innerText);
       // The unicode-range lists of app/styles/typeface.css.

@@ -54,21 +54,23 @@ interface ConventionsLeafProps {
 export function ConventionsLeaf({ part, heading, lede, children }: ConventionsLeafProps) {
   return (
     <Leaf heading={heading} section="conventions" lede={lede}>
-      <nav aria-label="Pages of the conventions" className="mb-6 border-b border-rule pb-3">
-        <ul className="flex flex-wrap gap-x-6 gap-y-2">
-          {conventionsParts.map(({ part: one, name, to }) => (
-            <li key={one}>
-              <Link
-                to={to}
-                aria-current={one === part ? "page" : undefined}
-                className={one === part ? "font-semibold" : undefined}
-              >
-                {name}
-              </Link>
-            </li>
-          ))}
-        </ul>
-      </nav>
+      {part && (
+        <nav aria-label="Pages of the conventions" className="mb-6 border-b border-rule pb-3">
+          <ul className="flex flex-wrap gap-x-6 gap-y-2">
+            {conventionsParts.map(({ part: one, name, to }) => (
+              <li key={one}>
+                <Link
+                  to={to}
+                  aria-current={one === part ? "page" : undefined}
+                  className={one === part ? "font-semibold" : undefined}
+                >
+                  {name}
+                </Link>
+              </li>
+            ))}
+          </ul>
+        </nav>
+      )}
       {children}
     </Leaf>
   );

@@ -1,25 +1,31 @@
-import type { ReadGroup, UnreadGroup } from "#app/thermo/spellings.ts";
+import { Fragment } from "react";
+import type { ReadGroup } from "#app/thermo/spellings.ts";
 import { Pieces } from "#app/ui/Pieces.tsx";
 import { Table } from "#app/ui/Table.tsx";
 import { speltPieces } from "./spelt.ts";
+import type { ToldGroup } from "./unread.ts";
 
 /** A text as a sheet holds it; what cannot be seen stands in words. */
 export function Spelt({ text }: { text: string }) {
   if (text === "") return <i className="text-soft">an empty cell</i>;
   return (
     <code className="font-sans">
-      {speltPieces(text).map((piece, index) =>
-        "named" in piece ? (
-          <span key={index} className="text-fine text-soft">
-            {"\u2039"}
-            {piece.named}
-            {"\u203a"}
-          </span>
-        ) : (
-          <Pieces key={index} pieces={[piece]} />
-        ),
-      )}
+      <SpeltRuns text={text} />
     </code>
+  );
+}
+
+function SpeltRuns({ text }: { text: string }) {
+  return speltPieces(text).map((piece, index) =>
+    "named" in piece ? (
+      <span key={index} className="text-fine text-soft">
+        {"\u2039"}
+        {piece.named}
+        {"\u203a"}
+      </span>
+    ) : (
+      <Pieces key={index} pieces={[piece]} />
+    ),
   );
 }
 
@@ -35,22 +41,19 @@ export function ReadTable({ caption, groups }: { caption: string; groups: readon
       </thead>
       {groups.map(({ why, rows }) => (
         <tbody key={why}>
-          <tr>
-            <th scope="rowgroup" colSpan={2} className="wide">
-              {sentenceCase(why)}
-            </th>
-          </tr>
+          <GroupHead why={why} />
           {byReading(rows).map(([reading, texts]) => (
             <tr key={reading}>
               <th scope="row" className="tight">
                 <Spelt text={reading} />
               </th>
               <td className="wide">
-                {texts.map((text, index) => (
-                  <span key={text}>
-                    {index > 0 && <span className="text-pencil"> , </span>}
-                    <Spelt text={text} />
-                  </span>
+                {texts.map((text) => (
+                  <Fragment key={text}>
+                    <span className="mr-6 inline-block">
+                      <Spelt text={text} />
+                    </span>{" "}
+                  </Fragment>
                 ))}
               </td>
             </tr>
@@ -62,7 +65,7 @@ export function ReadTable({ caption, groups }: { caption: string; groups: readon
 }
 
 /** Spellings that are refused or asked about, by their reason. */
-export function UnreadTable({ caption, groups }: { caption: string; groups: readonly UnreadGroup[] }) {
+export function UnreadTable({ caption, groups }: { caption: string; groups: readonly ToldGroup[] }) {
   return (
     <Table caption={caption} even>
       <thead>
@@ -73,31 +76,27 @@ export function UnreadTable({ caption, groups }: { caption: string; groups: read
       </thead>
       {groups.map(({ why, rows }) => (
         <tbody key={why}>
-          <tr>
-            <th scope="rowgroup" colSpan={2} className="wide">
-              {sentenceCase(why)}
-            </th>
-          </tr>
-          {rows.map(([text, outcome]) => (
+          <GroupHead why={why} />
+          {rows.map(({ text, sentence, readings }) => (
             <tr key={text}>
               <th scope="row" className="tight">
                 <Spelt text={text} />
               </th>
               <td className="wide">
-                {typeof outcome === "string" ? (
-                  <>
-                    refused: <span className="text-soft">… {outcome} …</span>
-                  </>
-                ) : (
+                {readings.length > 0 ? (
                   <>
                     asked:{" "}
-                    {outcome.map((reading, index) => (
-                      <span key={reading}>
-                        {index > 0 && " or "}
+                    {readings.map((reading, index) => (
+                      <Fragment key={reading}>
+                        {index > 0 && <span className="text-soft"> or </span>}
                         <Spelt text={reading} />
-                      </span>
+                      </Fragment>
                     ))}
                   </>
+                ) : (
+                  <span className="text-soft">
+                    <SpeltRuns text={sentence} />
+                  </span>
                 )}
               </td>
             </tr>
@@ -105,6 +104,16 @@ export function UnreadTable({ caption, groups }: { caption: string; groups: read
         </tbody>
       ))}
     </Table>
+  );
+}
+
+function GroupHead({ why }: { why: string }) {
+  return (
+    <tr>
+      <th scope="rowgroup" colSpan={2} className="wide">
+        <span className="block pt-3 font-semibold">{sentenceCase(why)}</span>
+      </th>
+    </tr>
   );
 }
 

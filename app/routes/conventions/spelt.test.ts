@@ -5,6 +5,7 @@ import { speltPieces } from "./spelt.ts";
 test("raised and lowered characters are set in their place, unseen ones are named", () => {
   expect(speltPieces("SO₄²⁻")).toEqual([{ text: "SO" }, { text: "4", as: "sub" }, { text: "2−", as: "sup" }]);
   expect(speltPieces("1\u2009675.7")).toEqual([{ text: "1" }, { named: "thin space" }, { text: "675.7" }]);
+  expect(speltPieces("１２．５")).toEqual([{ named: "full-width 12.5" }]);
   expect(speltPieces("Н2О")).toEqual([{ named: "Cyrillic letter" }, { text: "2" }, { named: "Cyrillic letter" }]);
 });
 

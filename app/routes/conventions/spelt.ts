@@ -18,11 +18,12 @@ const UNSEEN: Readonly<Record<string, string>> = {
   "≥": "at least",
   "≈": "about",
   "∞": "infinity",
-  "•": "bullet",
   "⋅": "dot operator",
   ℓ: "script l",
   "－": "full-width minus",
 };
+
+const WIDE = "full-width ";
 
 /** The characters of the shipped font files (app/styles/typeface.css), less those that cannot be told apart. */
 const SHIPPED = /[ -~¡-ɏͰ-Ͽ–-⁄−]/u;
@@ -36,7 +37,14 @@ export function speltPieces(text: string): SpeltPiece[] {
   const push = (piece: SpeltPiece): void => {
     const last = pieces.at(-1);
     if (last && "text" in last && "text" in piece && last.as === piece.as) last.text += piece.text;
-    else pieces.push(piece);
+    else if (
+      last &&
+      "named" in last &&
+      "named" in piece &&
+      [last, piece].every(({ named }) => named.startsWith(WIDE))
+    ) {
+      last.named += piece.named.slice(WIDE.length);
+    } else pieces.push(piece);
   };
   for (const character of text) {
     const raised = RAISED[character];
@@ -53,7 +61,7 @@ export function speltPieces(text: string): SpeltPiece[] {
 
 function nameOf(character: string): string {
   const plain = character.normalize("NFKC");
-  if (plain !== character && SHIPPED.test(plain)) return `full-width ${plain}`;
+  if (plain !== character && SHIPPED.test(plain)) return `${WIDE}${plain}`;
   if (/\p{Script=Cyrillic}/u.test(character)) return "Cyrillic letter";
   return `U+${(character.codePointAt(0) ?? 0).toString(16).toUpperCase().padStart(4, "0")}`;
 }
