@@ -12,9 +12,9 @@ export async function* sourceFilePortions(n: number, source: SourceAsOf, size = 
   const { sourceId } = source;
   const sources = new Map([[sourceId, source]]);
   yield Buffer.from(fileHead(), "utf8");
-  for (let offset = 0; ; offset += size) {
-    const speciesIds = await findSpeciesOn(n, sourceId, null, { limit: size, offset }, database());
-    if (speciesIds.length === 0) return;
+  const all = await findSpeciesOn(n, sourceId, null, null, database());
+  for (let first = 0; first < all.length; first += size) {
+    const speciesIds = all.slice(first, first + size);
     const details = new Map(
       (await findDetailsAsOf(n, { speciesIds }, database())).map((detail) => [detail.speciesId, detail]),
     );

@@ -33,23 +33,21 @@ export async function countSpeciesOn(n: number, sourceId: string, property: Prop
   return Number(count);
 }
 
-/** Those species, in the order of their keys: a slice of the ids. */
+/** Those species, in the order of their keys: their ids, all of them or a slice. */
 export async function findSpeciesOn(
   n: number,
   sourceId: string,
   property: Property | null,
-  slice: { limit: number; offset: number },
+  slice: { limit: number; offset: number } | null,
   db: Database,
 ): Promise<string[]> {
-  const rows = await valuesOn(n, sourceId, property, db)
+  const query = valuesOn(n, sourceId, property, db)
     .innerJoin("species_detail as d", "d.species_id", "v.species_id")
     .where((eb) => standsIn(n, eb.ref("d.since"), eb.ref("d.until")))
     .select(["v.species_id as speciesId", "d.key"])
     .distinct()
-    .orderBy("d.key")
-    .limit(slice.limit)
-    .offset(slice.offset)
-    .execute();
+    .orderBy("d.key");
+  const rows = await (slice === null ? query : query.limit(slice.limit).offset(slice.offset)).execute();
   return rows.map((row) => row.speciesId);
 }
 
