@@ -48,6 +48,8 @@ export const paths = {
   revisions: () => "/revisions",
   revision: (revision: string | number) => `/revisions/${segment(revision)}`,
   revisionLine: (revision: string | number, line: string) => `/revisions/${segment(revision)}/lines/${segment(line)}`,
+  takeOver: (revision: string | number, from?: number) =>
+    `/revisions/${segment(revision)}/take-over${from === undefined ? "" : `?from=${from}`}`,
   propose: (query?: { species?: string; what?: string; property?: string; revision?: number | null }) =>
     `/propose${queryString(query)}`,
   publish: () => "/publish",

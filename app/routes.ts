@@ -31,6 +31,7 @@ export default [
   route("revisions", "routes/revisions.tsx"),
   route("revisions/:revision", "routes/revision.tsx"),
   route("revisions/:revision/lines/:line", "routes/revision.line.tsx"),
+  route("revisions/:revision/take-over", "routes/revision.takeOver.tsx"),
   route("propose", "routes/propose.tsx"),
   route("publish", "routes/publish.tsx"),
   route("record", "routes/record.tsx"),

@@ -91,25 +91,28 @@ export async function countValuesThroughEditions(n: number, sourceId: string, db
 
 /** The sheets that brought values with this source into an edition up to n, in the order they came. */
 export async function findSheetsOf(n: number, sourceId: string, db: Database) {
-  return db
-    .selectFrom("table_value as v")
-    .innerJoin("line_version as lv", "lv.id", "v.line_version_id")
-    .innerJoin("revision_line as l", "l.id", "lv.line_id")
-    .innerJoin("revision as r", "r.id", "l.revision_id")
-    .innerJoin("sheet as s", "s.id", "r.sheet_id")
-    .where("v.source_id", "=", sourceId)
-    .where("v.since", "<=", n)
-    .select((eb) => [
-      "s.id",
-      "s.name",
-      "r.id as revisionId",
-      "v.since as edition",
-      eb.fn.countAll<string>().as("values"),
-    ])
-    .groupBy(["s.id", "s.name", "r.id", "v.since"])
-    .orderBy("v.since")
-    .orderBy("s.id")
-    .execute();
+  return (
+    db
+      .selectFrom("table_value as v")
+      .innerJoin("line_version as lv", "lv.id", "v.line_version_id")
+      .innerJoin("revision_line as l", "l.id", "lv.line_id")
+      // A line that was taken over into another revision still comes from the sheet of the one it was begun in.
+      .innerJoin("revision as r", (join) => join.on("r.id", "=", (eb) => eb.fn.coalesce("l.begun_in", "l.revision_id")))
+      .innerJoin("sheet as s", "s.id", "r.sheet_id")
+      .where("v.source_id", "=", sourceId)
+      .where("v.since", "<=", n)
+      .select((eb) => [
+        "s.id",
+        "s.name",
+        "r.id as revisionId",
+        "v.since as edition",
+        eb.fn.countAll<string>().as("values"),
+      ])
+      .groupBy(["s.id", "s.name", "r.id", "v.since"])
+      .orderBy("v.since")
+      .orderBy("s.id")
+      .execute()
+  );
 }
 
 /** The edition in which a source came in; undefined while none has it. */

@@ -18,6 +18,8 @@ export function revisionSentLetter(facts: {
   by: string;
   lines: number;
   blocks: number;
+  /** Comments of earlier rounds that nobody answered. */
+  unanswered: number;
   remark: string;
 }): LetterText {
   return {
@@ -25,9 +27,50 @@ export function revisionSentLetter(facts: {
     body: lines(
       `${facts.by} sent revision ${facts.id}, "${facts.title}", to review${facts.round > 1 ? ` for the ${ordinal(facts.round)} time` : ""}.`,
       `It holds ${facts.lines} ${facts.lines === 1 ? "line" : "lines"}; ${facts.blocks === 0 ? "nothing blocks." : `${facts.blocks} ${facts.blocks === 1 ? "finding blocks" : "findings block"}.`}`,
+      facts.unanswered > 0 &&
+        `${facts.unanswered === 1 ? "One comment has" : `${facts.unanswered} comments have`} no answer yet.`,
       facts.remark.trim() !== "" && `\n${facts.remark.trim()}`,
     ),
     path: `/revisions/${facts.id}`,
+  };
+}
+
+/** To the steward, and to who wrote the comment: somebody wrote about a revision. */
+export function revisionCommentedLetter(facts: {
+  id: number;
+  title: string;
+  by: string;
+  /** The line it is about and what that says; null for the revision as a whole. */
+  about: { lineId: string; says: string } | null;
+  body: string;
+  isAnswer: boolean;
+}): LetterText {
+  const did = facts.isAnswer ? "answered a comment" : "wrote a comment";
+  return {
+    subject: `${facts.isAnswer ? "An answer" : "A comment"} on revision ${facts.id}: ${facts.title}`,
+    body: lines(
+      `${facts.by} ${did} on ${facts.about ? `a line of revision ${facts.id}, "${facts.title}" (${facts.about.says})` : `revision ${facts.id}, "${facts.title}"`}:`,
+      `\n${facts.body.trim()}`,
+    ),
+    path: `/revisions/${facts.id}${facts.about ? `#line-${facts.about.lineId}` : ""}`,
+  };
+}
+
+/** To the steward of another draft: its lines were taken over. */
+export function revisionTakenOverLetter(facts: {
+  id: number;
+  title: string;
+  into: number;
+  by: string;
+  lines: number;
+}): LetterText {
+  return {
+    subject: `The lines of revision ${facts.id} went into revision ${facts.into}: ${facts.title}`,
+    body: lines(
+      `${facts.by} took ${facts.lines === 1 ? "the line" : `${facts.lines} lines`} of your revision ${facts.id}, "${facts.title}", over into revision ${facts.into}.`,
+      `The lines keep their history and your hand in them. What was not taken over stays on record with revision ${facts.id}.`,
+    ),
+    path: `/revisions/${facts.into}`,
   };
 }
 

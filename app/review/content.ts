@@ -78,3 +78,10 @@ export function contentHash(content: LineContent): Buffer {
     .update(canonicalize(content) ?? "")
     .digest();
 }
+
+/** Whether two contents say the same. How a number was typed is no part of what it says. */
+export function saysTheSame(one: LineContent, other: LineContent): boolean {
+  const said = (content: LineContent): string | undefined =>
+    canonicalize(content.kind === "value" ? { ...content, given: null } : content);
+  return said(one) === said(other);
+}

@@ -1,4 +1,5 @@
 import { act, type ActScope } from "#app/audit/act.server.ts";
+import { checks } from "#app/checks/registry.ts";
 import { Forbidden, Invalid, NotFound, Refused } from "#app/http/errors.ts";
 import { enqueueLetter } from "#app/notify/letters.server.ts";
 import { revisionDecidedLetter, revisionReturnedLetter } from "#app/notify/reviewLetters.ts";
@@ -6,12 +7,15 @@ import { demand } from "#app/people/permissions.ts";
 import type { Acting } from "#app/people/person.ts";
 import { findAccount } from "#app/people/people.queries.server.ts";
 import { findingsOf } from "./examine.server.ts";
+import { type MixtureAnswer, MixtureRefused, questionAbout, questionInWords } from "./mixture.ts";
 import {
   findFinding,
+  findFindings,
   findGroundless,
   findLineBases,
   findLines,
   findLinesWithHandOf,
+  findNewestExamination,
   findRevisionForUpdate,
   findSetAside,
   findWaitingLines,
@@ -65,8 +69,17 @@ async function findSeen(
  * Accepts lines together. Refused as a whole when one of them was overtaken or edited, when the acting person had a hand
  * in one, or when the table as it would then be (what stands, what waits, and the accepted part of this revision) fails
  * a check that nobody set aside: so a half-updated species cannot slip through.
+ *
+ * @param answer to the question that an earlier try came back with
+ * @throws MixtureRefused when the checks find something in the mixture that the page of the revision does not say: what
+ *   blocks must be set aside with a reason, what asks for a look be confirmed
  */
-export async function acceptLines(acting: Acting, revisionId: number, seen: readonly SeenLine[]): Promise<void> {
+export async function acceptLines(
+  acting: Acting,
+  revisionId: number,
+  seen: readonly SeenLine[],
+  answer: MixtureAnswer | null = null,
+): Promise<void> {
   if (seen.length === 0) throw new Invalid("Choose at least one line.");
   await act(acting, async ({ trx, record }) => {
     await findInReview(acting, revisionId, trx);
@@ -84,22 +97,17 @@ export async function acceptLines(acting: Acting, revisionId: number, seen: read
           : "What stands has changed since this line was written. Return the revision so that the steward can restate it.",
       );
     }
-    const ids = new Set(chosen.map((line) => line.id));
-    const waiting = await findWaitingLines({ decidedOnly: false }, trx);
-    const ofThis = (await findLines(revisionId, trx)).filter((line) => ids.has(line.id) || line.state === "accepted");
-    const others = waiting.filter((line) => line.revisionId !== revisionId);
-    const { findings } = await findingsOf(ofThis, others, trx);
-    const aside = await findSetAside([revisionId], trx);
-    const touched = new Set(chosen.map((line) => line.speciesId));
-    const stops = findings.filter(
-      (one) => one.severity === "block" && touched.has(one.speciesId) && !aside.has(one.fingerprint.toString("hex")),
+    const mixture = await demandMixture(
+      acting,
+      {
+        revisionId,
+        touched: speciesOf(chosen),
+        accepts: (line) => line.state === "accepted" || chosen.some((one) => one.id === line.id),
+        deciding: "With only these lines accepted",
+      },
+      answer,
+      trx,
     );
-    const [first] = stops;
-    if (first) {
-      throw new Refused(
-        `With only these lines accepted, ${first.species} would not pass: ${first.sentence}${stops.length > 1 ? ` (and ${stops.length - 1} more)` : ""} Decide its lines together, or set the finding aside with a reason.`,
-      );
-    }
     await insertDecisions(
       chosen.map((line) => ({
         versionId: line.versionId,
@@ -118,23 +126,39 @@ export async function acceptLines(acting: Acting, revisionId: number, seen: read
           version: line.version,
           content: line.contentHash.toString("hex"),
         })),
+        ...mixture,
       },
     });
   });
 }
 
-/** Declines lines, with the reason. */
+/**
+ * Declines lines, with the reason. What stays accepted of the same species is examined without them first.
+ * @throws MixtureRefused as `acceptLines` does
+ */
 export async function declineLines(
   acting: Acting,
   revisionId: number,
   seen: readonly SeenLine[],
   reason: string,
+  answer: MixtureAnswer | null = null,
 ): Promise<void> {
   if (seen.length === 0) throw new Invalid("Choose at least one line.");
   if (!reason.trim()) throw new Invalid("Say why the line is declined.", [{ pointer: "/reason", detail: "Say why." }]);
   await act(acting, async ({ trx, record }) => {
     await findInReview(acting, revisionId, trx);
     const chosen = await findSeen(acting, revisionId, seen, trx);
+    const mixture = await demandMixture(
+      acting,
+      {
+        revisionId,
+        touched: speciesOf(chosen),
+        accepts: (line) => line.state === "accepted" && !chosen.some((one) => one.id === line.id),
+        deciding: chosen.length === 1 ? "With this line declined" : "With these lines declined",
+      },
+      answer,
+      trx,
+    );
     await insertDecisions(
       chosen.map((line) => ({
         versionId: line.versionId,
@@ -147,9 +171,85 @@ export async function declineLines(
     record({
       act: "revision.line-declined",
       objectId: revisionId,
-      detail: { lines: chosen.map((line) => ({ line: line.id, version: line.version })), reason },
+      detail: { lines: chosen.map((line) => ({ line: line.id, version: line.version })), reason, ...mixture },
     });
   });
+}
+
+const speciesOf = (lines: readonly LineRow[]): ReadonlySet<string> =>
+  new Set(lines.flatMap((line) => (line.speciesId === null ? [] : [line.speciesId])));
+
+/** Which lines of a revision would be accepted after a decision, and which species it touches. */
+interface Deciding {
+  revisionId: number;
+  touched: ReadonlySet<string>;
+  accepts: (line: LineRow) => boolean;
+  /** What was asked for, in words that begin a sentence: "With only these lines accepted". */
+  deciding: string;
+}
+
+/**
+ * Examines what would stand after a decision, and demands an answer to what the page of the revision does not say. What
+ * blocks and was answered with a reason is set aside here, since no examination of the revision holds it.
+ *
+ * @returns what the record says of it: nothing where there was nothing to ask
+ */
+async function demandMixture(
+  acting: Acting,
+  { revisionId, touched, accepts, deciding }: Deciding,
+  answer: MixtureAnswer | null,
+  trx: ActScope["trx"],
+): Promise<{ mixture?: { reason: string; findings: string[] } }> {
+  const accepted = (await findLines(revisionId, trx)).filter(accepts);
+  if (!accepted.some((line) => line.speciesId !== null && touched.has(line.speciesId))) return {};
+  const waiting = await findWaitingLines({ decidedOnly: false }, trx);
+  const others = waiting.filter((line) => line.revisionId !== revisionId);
+  const { findings } = await findingsOf(accepted, others, trx);
+  const aside = await findSetAside([revisionId], trx);
+  const examination = await findNewestExamination(revisionId, trx);
+  const told = new Set(
+    (examination ? await findFindings(examination.id, trx) : []).map((one) => one.fingerprint.toString("hex")),
+  );
+  const open = findings
+    .map((one) => ({ ...one, print: one.fingerprint.toString("hex") }))
+    .filter((one) => one.severity !== "remark" && touched.has(one.speciesId) && !aside.has(one.print));
+  // What the page says already blocks until it is set aside there; a look there was looked at before deciding.
+  const stops = open.filter((one) => one.severity === "block" && told.has(one.print));
+  const [first] = stops;
+  if (first) {
+    throw new Refused(
+      `${deciding}, ${first.species} would not pass: ${first.sentence}${stops.length > 1 ? ` (and ${stops.length - 1} more)` : ""} Decide its lines together, or set the finding aside with a reason.`,
+    );
+  }
+  const untold = open.filter((one) => !told.has(one.print));
+  if (untold.length === 0) return {};
+  const titles = new Map(checks.map((check) => [check.code, check.title]));
+  const question = questionAbout(
+    untold.map(({ severity, species, check, sentence, arithmetic, print }) => ({
+      severity,
+      species,
+      title: titles.get(check) ?? check,
+      sentence,
+      arithmetic,
+      fingerprint: print,
+    })),
+  );
+  if (answer?.token !== question.token) throw new MixtureRefused(questionInWords(deciding, question), question);
+  const reason = answer.reason.trim();
+  if (question.needsReason) {
+    if (reason === "") throw new MixtureRefused("Say why what blocks is set aside.", question);
+    const own = await findLinesWithHandOf(revisionId, acting.person.id, trx);
+    const blocks = untold.filter((one) => one.severity === "block");
+    const ofSpecies = new Set(blocks.map((one) => one.speciesId));
+    const lines = await findLines(revisionId, trx);
+    if (lines.some((line) => line.speciesId !== null && ofSpecies.has(line.speciesId) && own.has(line.id))) {
+      throw new Forbidden("You had a hand in the lines of this species, so somebody else sets its findings aside.");
+    }
+    for (const { fingerprint, sentence } of blocks) {
+      await insertSetAside({ revisionId, fingerprint, reason, by: acting.person.id, sentence }, trx);
+    }
+  }
+  return { mixture: { reason, findings: untold.map((one) => `${one.species}: ${one.sentence}`) } };
 }
 
 /** Sets a blocking finding aside, with the reason. It stays aside only while it says the same. */

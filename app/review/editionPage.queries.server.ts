@@ -30,7 +30,7 @@ export async function findHandsIn(n: number, db: Database) {
     union
     select l.revision_id, p.name
       from revision_line l
-      join revision r on r.id = l.revision_id
+      join revision r on r.id = coalesce(l.begun_in, l.revision_id)
       join sheet_repair s on s.sheet_id = r.sheet_id and s.row_number = l.row_number
       join person p on p.id = s.repaired_by
      where l.published_in = ${n}

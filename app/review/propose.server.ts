@@ -1,4 +1,3 @@
-import canonicalize from "canonicalize";
 import { act, type ActScope } from "#app/audit/act.server.ts";
 import { findDetailsAsOf, findNewestEdition } from "#app/editions/editions.queries.server.ts";
 import { Invalid, NotFound, Refused } from "#app/http/errors.ts";
@@ -9,7 +8,7 @@ import { insertSource } from "#app/sources/sources.queries.server.ts";
 import { findSpeciesByIds, insertSpecies, lockNaming } from "#app/species/species.queries.server.ts";
 import type { Phase } from "#app/thermo/phase.ts";
 import { propertyInfo } from "#app/thermo/property.ts";
-import type { LineContent } from "./content.ts";
+import { saysTheSame } from "./content.ts";
 import { examineRevision } from "./examine.server.ts";
 import { lineSays } from "./lineWords.ts";
 import { findKeyHolders, findKnownSourceIds } from "./propose.queries.server.ts";
@@ -233,10 +232,3 @@ async function writeAgainstBases(
 }
 
 const capitalized = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
-
-/** Whether two contents say the same. How a number was typed is no part of what it says. */
-function saysTheSame(one: LineContent, other: LineContent): boolean {
-  const said = (content: LineContent): string | undefined =>
-    canonicalize(content.kind === "value" ? { ...content, given: null } : content);
-  return said(one) === said(other);
-}

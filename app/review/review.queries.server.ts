@@ -37,6 +37,9 @@ export interface LineRow {
   againstVersion: string | null;
   state: "open" | "accepted" | "declined" | "dropped" | "published";
   publishedIn: number | null;
+  /** The revision it was taken over from, and when; null for a line that never left its revision. */
+  cameFrom: number | null;
+  cameAt: Date | null;
   versionId: string;
   version: number;
   content: LineContent;
@@ -176,6 +179,8 @@ function lineQuery(db: Database) {
       "l.against_version as againstVersion",
       "l.state",
       "l.published_in as publishedIn",
+      "l.came_from as cameFrom",
+      "l.came_at as cameAt",
       "v.id as versionId",
       "v.version",
       "v.content",
@@ -382,6 +387,23 @@ export async function updateLinesDropped(ids: readonly string[], trx: Database):
     .execute();
 }
 
+/** Takes lines over into another revision, after the lines it has and in the order they had. */
+export async function updateLinesRevision(ids: readonly string[], into: number, trx: Database): Promise<void> {
+  if (ids.length === 0) return;
+  await sql`
+    with last as (select coalesce(max(position), 0) as position from revision_line where revision_id = ${into}),
+         placed as (
+           select id, row_number() over (order by position, id) as n
+             from revision_line where id = any(${sql.val([...ids])}::bigint[])
+         )
+    update revision_line l
+       set revision_id = ${into}, position = last.position + placed.n,
+           begun_in = coalesce(l.begun_in, l.revision_id), came_from = l.revision_id, came_at = clock_timestamp()
+      from placed, last
+     where l.id = placed.id
+  `.execute(trx);
+}
+
 /** Marks accepted lines as published in the open edition. */
 export async function updateLinesPublished(ids: readonly string[], edition: number, trx: Database): Promise<void> {
   for (const batch of batches(ids)) {
@@ -568,7 +590,15 @@ export async function findLinesWithHandOf(revisionId: number, personId: string, 
 
 /** Writes a comment. */
 export async function insertComment(
-  comment: { revisionId: number; lineId: string | null; round: number; body: string; writtenBy: string },
+  comment: {
+    revisionId: number;
+    lineId: string | null;
+    round: number;
+    body: string;
+    writtenBy: string;
+    /** The comment it answers; left out where it opens a thread. */
+    answers?: string;
+  },
   trx: Database,
 ): Promise<void> {
   await trx
@@ -579,11 +609,12 @@ export async function insertComment(
       round: comment.round,
       body: comment.body,
       written_by: comment.writtenBy,
+      answers: comment.answers ?? null,
     })
     .execute();
 }
 
-/** The comments of a revision, oldest first. */
+/** The comments of a revision and of the lines it took over, with their answers; oldest first. */
 export function findComments(revisionId: number, db: Database) {
   return db
     .selectFrom("comment as c")
@@ -596,10 +627,41 @@ export function findComments(revisionId: number, db: Database) {
       "c.written_at as at",
       "p.name as by",
       "c.written_by as byId",
+      "c.answers",
     ])
-    .where("c.revision_id", "=", revisionId)
+    .where((eb) =>
+      eb.or([
+        eb("c.revision_id", "=", revisionId),
+        eb(
+          "c.line_id",
+          "in",
+          eb
+            .selectFrom("revision_line as l")
+            .select("l.id")
+            .where("l.revision_id", "=", revisionId)
+            .where("l.came_from", "is not", null),
+        ),
+      ]),
+    )
     .orderBy("c.id")
     .execute();
+}
+
+/** One comment with the address of who wrote it, or undefined. */
+export function findComment(id: string, db: Database) {
+  return db
+    .selectFrom("comment as c")
+    .innerJoin("person as p", "p.id", "c.written_by")
+    .select([
+      "c.id",
+      "c.revision_id as revisionId",
+      "c.line_id as lineId",
+      "c.answers",
+      "c.written_by as byId",
+      "p.email",
+    ])
+    .where("c.id", "=", id)
+    .executeTakeFirst();
 }
 
 /** A finding ready to be stored. */
@@ -719,14 +781,20 @@ export async function findSetAside(revisionIds: readonly number[], db: Database)
   return new Set(rows.map((row) => row.fingerprint.toString("hex")));
 }
 
-/** Sets a finding aside. */
+/** Sets a finding aside. `sentence` is what it says, where no examination of the revision holds it. */
 export async function insertSetAside(
-  one: { revisionId: number; fingerprint: Buffer; reason: string; by: string },
+  one: { revisionId: number; fingerprint: Buffer; reason: string; by: string; sentence?: string },
   trx: Database,
 ): Promise<void> {
   await trx
     .insertInto("finding_set_aside")
-    .values({ revision_id: one.revisionId, fingerprint: one.fingerprint, reason: one.reason, set_aside_by: one.by })
+    .values({
+      revision_id: one.revisionId,
+      fingerprint: one.fingerprint,
+      reason: one.reason,
+      set_aside_by: one.by,
+      sentence: one.sentence ?? null,
+    })
     .execute();
 }
 

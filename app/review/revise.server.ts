@@ -7,12 +7,14 @@ import { revisionSentLetter } from "#app/notify/reviewLetters.ts";
 import { demand } from "#app/people/permissions.ts";
 import { findPeopleWithRole } from "#app/people/people.queries.server.ts";
 import type { Acting } from "#app/people/person.ts";
-import { contentHash, type LineContent } from "./content.ts";
+import { contentHash, type LineContent, saysTheSame } from "./content.ts";
 import { examineRevision } from "./examine.server.ts";
 import {
+  findComments,
   findLine,
   findLineBases,
   findLines,
+  findMoves,
   findRevisionForUpdate,
   insertComment,
   insertLineVersion,
@@ -26,7 +28,9 @@ import {
   updateRevisionState,
   updateRevisionText,
 } from "./review.queries.server.ts";
+import { findVersionContents } from "./revisionPage.queries.server.ts";
 import { isWritable, mayMove, revisionStateWords } from "./states.ts";
+import { threadsOf } from "./threads.ts";
 
 export type { NewLine } from "./review.queries.server.ts";
 
@@ -68,7 +72,8 @@ export async function findWritable(acting: Acting, id: number, trx: ActScope["tr
   return revision;
 }
 
-async function findOwnLine(revisionId: number, lineId: string, trx: ActScope["trx"]): Promise<LineRow> {
+/** A line of this revision that was not taken out. @throws NotFound */
+export async function findOwnLine(revisionId: number, lineId: string, trx: ActScope["trx"]): Promise<LineRow> {
   const line = await findLine(lineId, trx);
   if (!line || line.revisionId !== revisionId || line.state === "dropped") {
     throw new NotFound(`Revision ${revisionId} has no such line.`);
@@ -96,8 +101,48 @@ export interface LineChange {
 
 /** The same inside a caller's act. */
 export async function writeLine(acting: Acting, change: LineChange, { trx, record }: ActScope): Promise<void> {
-  demandReason(change.reason, "Say why the line is changed.");
   await findWritable(acting, change.revisionId, trx);
+  const written = await insertChange(acting, change, trx);
+  await examineRevision(change.revisionId, "edit", trx);
+  record({ act: "revision.line-written", objectId: change.revisionId, detail: { ...written, reason: change.reason } });
+}
+
+/**
+ * Gives several lines of one revision a new version in one act: a slip that touched two values is mended as a whole or
+ * not at all, and stands in the record once.
+ * @throws what `rewriteLine` throws, for the first line that is refused
+ */
+export async function rewriteLines(
+  acting: Acting,
+  revisionId: number,
+  changes: readonly Omit<LineChange, "revisionId">[],
+): Promise<void> {
+  await act(acting, async ({ trx, record }) => {
+    await findWritable(acting, revisionId, trx);
+    const lines: (WrittenChange & { reason: string })[] = [];
+    for (const change of changes) {
+      lines.push({ ...(await insertChange(acting, { ...change, revisionId }, trx)), reason: change.reason });
+    }
+    await examineRevision(revisionId, "edit", trx);
+    const [only] = lines;
+    record({
+      act: "revision.line-written",
+      objectId: revisionId,
+      detail: lines.length === 1 && only ? { ...only } : { lines },
+    });
+  });
+}
+
+/** What the record says of a line that got a new version. */
+interface WrittenChange {
+  line: string;
+  version: number;
+  before: LineContent;
+  after: LineContent;
+}
+
+async function insertChange(acting: Acting, change: LineChange, trx: ActScope["trx"]): Promise<WrittenChange> {
+  demandReason(change.reason, "Say why the line is changed.");
   const line = await findOwnLine(change.revisionId, change.lineId, trx);
   if (line.version !== change.expectedVersion) {
     throw new Refused("This line was edited in the meantime. Look at what it says now, then change it.");
@@ -106,28 +151,12 @@ export async function writeLine(acting: Acting, change: LineChange, { trx, recor
   if (contentHash(change.content).equals(line.contentHash)) {
     throw new Invalid("Nothing would change: the line says this already.");
   }
+  const version = line.version + 1;
   await insertLineVersion(
-    {
-      id: line.id,
-      version: line.version + 1,
-      content: change.content,
-      madeBy: acting.person.id,
-      reason: change.reason,
-    },
+    { id: line.id, version, content: change.content, madeBy: acting.person.id, reason: change.reason },
     trx,
   );
-  await examineRevision(change.revisionId, "edit", trx);
-  record({
-    act: "revision.line-written",
-    objectId: change.revisionId,
-    detail: {
-      line: line.id,
-      version: line.version + 1,
-      before: line.content,
-      after: change.content,
-      reason: change.reason,
-    },
-  });
+  return { line: line.id, version, before: line.content, after: change.content };
 }
 
 function demandReason(reason: string, sentence: string): void {
@@ -164,17 +193,56 @@ export function isOvertaken(line: Pick<LineRow, "againstRow" | "againstVersion">
   return standingRow !== line.againstRow;
 }
 
-/** Writes every overtaken line of a revision anew against what stands or waits now, and examines it again. */
-export async function restateLines(acting: Acting, revisionId: number): Promise<number> {
+/** What restating came to. */
+export interface Restated {
+  restated: number;
+  /** Overtaken lines left as they are, because what stands now says the same, or nothing is left to withdraw. */
+  idle: number;
+}
+
+/**
+ * Writes overtaken lines of a revision anew against what stands or waits now, and examines it again: the difference and
+ * the findings are renewed, and a decision on the line before is void. A line that would change nothing any more is left.
+ *
+ * @param lineId the one line to restate; null for all that are overtaken
+ * @throws Refused where no line is overtaken, or none of them would change anything
+ */
+export async function restateLines(
+  acting: Acting,
+  revisionId: number,
+  lineId: string | null = null,
+): Promise<Restated> {
   return act(acting, async ({ trx, record }) => {
     await findWritable(acting, revisionId, trx);
-    const lines = await findLines(revisionId, trx);
+    if (lineId !== null) await findOwnLine(revisionId, lineId, trx);
+    const lines = (await findLines(revisionId, trx)).filter((line) => lineId === null || line.id === lineId);
     const bases = await findLineBases(
       lines.map((line) => line.id),
       trx,
     );
     const overtaken = lines.filter((line) => isProposing(line) && isOvertaken(line, bases.get(line.id)));
-    for (const line of overtaken) {
+    if (overtaken.length === 0) {
+      throw new Refused(
+        lineId === null
+          ? "No line of this revision is overtaken."
+          : "This line is not overtaken: what it was written against still stands.",
+      );
+    }
+    const currentVersions = overtaken.flatMap((line) => versionAt(bases.get(line.id)) ?? []);
+    const current = new Map((await findVersionContents(currentVersions, trx)).map((one) => [one.id, one.content]));
+    const changing = overtaken.filter((line) => {
+      const now = current.get(versionAt(bases.get(line.id)) ?? "");
+      if (line.content.kind === "withdrawal") return now !== undefined && now.kind !== "withdrawal";
+      return now === undefined || !saysTheSame(line.content, now);
+    });
+    if (changing.length === 0) {
+      throw new Refused(
+        overtaken.length === 1
+          ? "Nothing would change any more: what stands or waits now says the same as this line. Take it out."
+          : "Nothing would change any more: what stands or waits now says the same as these lines. Take them out.",
+      );
+    }
+    for (const line of changing) {
       const base = bases.get(line.id);
       await updateLineBase(
         line.id,
@@ -190,21 +258,25 @@ export async function restateLines(acting: Acting, revisionId: number): Promise<
           version: line.version + 1,
           content: line.content,
           madeBy: acting.person.id,
-          reason: "restated against what stands now",
+          reason: base?.waitingRevision
+            ? `restated against what waits in revision ${base.waitingRevision}`
+            : "restated against what stands now",
         },
         trx,
       );
     }
-    if (overtaken.length === 0) throw new Refused("No line of this revision is overtaken.");
     await examineRevision(revisionId, "edit", trx);
     record({
-      act: "revision.line-written",
+      act: "revision.lines-restated",
       objectId: revisionId,
-      detail: { restated: overtaken.map((line) => line.id) },
+      detail: { lines: changing.map((line) => ({ line: line.id, version: line.version + 1 })) },
     });
-    return overtaken.length;
+    return { restated: changing.length, idle: overtaken.length - changing.length };
   });
 }
+
+/** The version that stands or waits in a place now. */
+const versionAt = (base: LineBase | undefined): string | null => base?.waitingVersion ?? base?.standingVersion ?? null;
 
 /** Changes what a draft or returned revision is called. */
 export async function describeRevision(
@@ -232,6 +304,9 @@ export async function sendToReview(acting: Acting, id: number, remark: string): 
     if (lines.length === 0)
       throw new Refused("A revision without lines has nothing to review. Add a line, then send it.");
     const { findings } = await examineRevision(id, "send", trx);
+    const comments = await findComments(id, trx);
+    const threads = threadsOf(comments, await findMoves(id, trx), revision.madeBy);
+    const unanswered = threads.filter((thread) => thread.waits).length;
     const round = revision.round + 1;
     await updateRevisionState({ id, from: revision.state, to: "in_review", round, by: acting.person.id, remark }, trx);
     if (remark.trim()) {
@@ -251,13 +326,14 @@ export async function sendToReview(acting: Acting, id: number, remark: string): 
             by: acting.person.name,
             lines: lines.length,
             blocks: findings.filter((one) => one.severity === "block").length,
+            unanswered,
             remark,
           }),
         },
         trx,
       );
     }
-    record({ act: "revision.sent", objectId: id, detail: { round, lines: lines.length, remark } });
+    record({ act: "revision.sent", objectId: id, detail: { round, lines: lines.length, unanswered, remark } });
   });
 }
 
@@ -281,31 +357,6 @@ export async function withdrawRevision(acting: Acting, id: number, reason: strin
       trx,
     );
     record({ act: "revision.withdrawn", objectId: id, detail: { reason, lines: lines.length } });
-  });
-}
-
-/** Writes a comment on a revision or one of its lines. */
-export async function commentOn(
-  acting: Acting,
-  comment: { revisionId: number; lineId: string | null; body: string },
-): Promise<void> {
-  demand(acting, "revision:comment");
-  if (!comment.body.trim())
-    throw new Invalid("Write something first.", [{ pointer: "/body", detail: "Write something first." }]);
-  if (comment.body.length > 5000)
-    throw new Invalid("A comment holds at most 5 000 characters.", [
-      { pointer: "/body", detail: "At most 5 000 characters." },
-    ]);
-  await act(acting, async ({ trx, record }) => {
-    const revision = await findRevisionForUpdate(comment.revisionId, trx);
-    if (!revision) throw new NotFound(`There is no revision ${comment.revisionId}.`);
-    if (comment.lineId) await findOwnLine(comment.revisionId, comment.lineId, trx);
-    await insertComment({ ...comment, round: revision.round, writtenBy: acting.person.id }, trx);
-    record({
-      act: "revision.commented",
-      objectId: comment.revisionId,
-      detail: { line: comment.lineId, body: comment.body },
-    });
   });
 }
 

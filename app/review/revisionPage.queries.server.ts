@@ -196,6 +196,8 @@ export async function findDroppedLines(revisionId: number, db: Database): Promis
       "l.against_version as againstVersion",
       eb.ref("l.state").$castTo<LineRow["state"]>().as("state"),
       "l.published_in as publishedIn",
+      "l.came_from as cameFrom",
+      "l.came_at as cameAt",
       "v.id as versionId",
       "v.version",
       "v.content",
@@ -226,12 +228,62 @@ export async function findTakenOut(revisionId: number, db: Database) {
 /** Findings set aside in a revision: what they said, who set them aside, when and why. */
 export async function findSetAsides(revisionId: number, db: Database) {
   const result = await sql<{ sentence: string; reason: string; at: Date; by: string }>`
-    select distinct on (a.id) f.sentence, a.reason, a.set_aside_at as at, p.name as by
+    select distinct on (a.id) coalesce(f.sentence, a.sentence, '') as sentence, a.reason, a.set_aside_at as at, p.name as by
       from finding_set_aside a
       join person p on p.id = a.set_aside_by
-      join finding f on f.revision_id = a.revision_id and f.fingerprint = a.fingerprint
+      left join finding f on f.revision_id = a.revision_id and f.fingerprint = a.fingerprint
      where a.revision_id = ${revisionId}
      order by a.id, f.id
   `.execute(db);
   return result.rows;
+}
+
+/** The findings of the examination made when a round of a revision was sent. */
+export async function findFindingsOfRound(revisionId: number, round: number, db: Database) {
+  return db
+    .selectFrom("finding as f")
+    .select((eb) => [
+      "f.check_code as check",
+      eb.ref("f.severity").$castTo<"block" | "look" | "remark">().as("severity"),
+      "f.species_id as speciesId",
+      "f.sentence",
+    ])
+    .where("f.examination_id", "=", (eb) =>
+      eb
+        .selectFrom("examination as e")
+        .select("e.id")
+        .where("e.revision_id", "=", revisionId)
+        .where("e.occasion", "=", "send")
+        .orderBy("e.id")
+        .offset(round - 1)
+        .limit(1),
+    )
+    .orderBy("f.id")
+    .execute();
+}
+
+/** The revisions whose lines were taken over into this one: how many lines, when and by whom. */
+export async function findTakenOver(revisionId: number, db: Database) {
+  const result = await sql<{ from: number; lines: number; at: Date; by: string }>`
+    select l.came_from as "from", count(*)::int as lines, max(l.came_at) as at, max(p.name) as by
+      from revision_line l
+      join revision_move m on m.revision_id = l.came_from and m.went_to = 'withdrawn'
+      join person p on p.id = m.moved_by
+     where l.revision_id = ${revisionId} and l.came_from is not null
+     group by l.came_from
+     order by 3
+  `.execute(db);
+  return result.rows;
+}
+
+/** The revisions that hold lines which were taken over from this one, wherever they went since. */
+export async function findWentInto(revisionId: number, db: Database): Promise<number[]> {
+  const rows = await db
+    .selectFrom("revision_line")
+    .select("revision_id as id")
+    .distinct()
+    .where((eb) => eb.or([eb("begun_in", "=", revisionId), eb("came_from", "=", revisionId)]))
+    .orderBy("revision_id")
+    .execute();
+  return rows.map((row) => row.id);
 }

@@ -6,6 +6,7 @@ import { demand, may } from "#app/people/permissions.ts";
 import type { Acting } from "#app/people/person.ts";
 import { fullCitation, shortCitation } from "#app/sources/citation.ts";
 import { acceptLines } from "./decide.server.ts";
+import type { MixtureAnswer } from "./mixture.ts";
 import {
   findComments,
   findDecisions,
@@ -25,11 +26,13 @@ import {
   type PageLine,
   type RevisionPage,
   revisionPage,
+  type Show,
   type Stood,
 } from "./revisionPage.ts";
 import {
   findDetailRows,
   findDroppedLines,
+  findFindingsOfRound,
   findNewestCitations,
   findNewestNames,
   findProposedCitations,
@@ -37,10 +40,13 @@ import {
   findSetAsides,
   findSourceRows,
   findTakenOut,
+  findTakenOver,
   findValueRows,
   findVersionContents,
+  findWentInto,
 } from "./revisionPage.queries.server.ts";
 import { cleanDigest } from "./revisionPageDigest.ts";
+import { comparedRound, roundsOf } from "./roundChanges.ts";
 
 /** Where a line's base stands: a row of the table by kind, or the version of a line that waits. */
 interface Place {
@@ -53,7 +59,7 @@ interface Place {
 export async function findRevisionPage(
   acting: Acting,
   id: number,
-  options: { page: number },
+  options: { page: number; show?: Show },
 ): Promise<RevisionPage & { cleanDigest: string }> {
   demand(acting, "revision:read");
   const db = database();
@@ -88,13 +94,17 @@ export async function findRevisionPage(
   ]);
   const everyLine = [...lines, ...dropped];
   const [names, citations] = await Promise.all([findNames(everyLine), findCitations(everyLine, stood)]);
-  const [decisions, versions, comments, moves, setAsides] = await Promise.all([
+  const [decisions, versions, comments, moves, setAsides, takenOver, wentInto] = await Promise.all([
     findDecisions(id, db),
     findVersions(id, db),
     findComments(id, db),
     findMoves(id, db),
     findSetAsides(id, db),
+    findTakenOver(id, db),
+    findWentInto(id, db),
   ]);
+  const compared = comparedRound(revision.state, roundsOf(moves));
+  const findingsBefore = compared ? await findFindingsOfRound(id, compared.round, db) : [];
   const page = revisionPage({
     revision,
     newest: newest?.number ?? 0,
@@ -111,6 +121,7 @@ export async function findRevisionPage(
     citations,
     printCitation: fullCitation,
     findings,
+    findingsBefore: findingsBefore.map((one) => ({ ...one, title: titleOf(one.check) })),
     decisions: decisions.map((one) => ({
       ...one,
       decision: one.decision === "accept" ? "accept" : "decline",
@@ -120,12 +131,15 @@ export async function findRevisionPage(
     comments,
     moves,
     setAsides,
+    takenOver,
+    wentInto,
     hands,
     rights: {
       write: may(acting.person.roles, "revision:write"),
       comment: may(acting.person.roles, "revision:comment"),
       decide: may(acting.person.roles, "revision:decide"),
     },
+    show: options.show ?? "all",
     page: options.page,
   });
   return { ...page, cleanDigest: cleanDigest(page.cleanSet.seen), cleanSet: { ...page.cleanSet, seen: [] } };
@@ -138,7 +152,12 @@ export async function findRevisionPage(
  * @returns how many were accepted
  * @throws Refused when the clean lines have changed since, or there are none; whatever `acceptLines` throws
  */
-export async function acceptCleanLines(acting: Acting, id: number, digest: string): Promise<number> {
+export async function acceptCleanLines(
+  acting: Acting,
+  id: number,
+  digest: string,
+  answer: MixtureAnswer | null = null,
+): Promise<number> {
   demand(acting, "revision:decide");
   if (!(await findRevision(id, database()))) throw new NotFound(`There is no revision ${id}.`);
   const [lines, findings, hands] = await Promise.all([
@@ -153,15 +172,17 @@ export async function acceptCleanLines(acting: Acting, id: number, digest: strin
       `The clean lines have changed since you opened this page; there are ${clean.length} now. Look at them, then accept.`,
     );
   }
-  await acceptLines(acting, id, clean);
+  await acceptLines(acting, id, clean, answer);
   return clean.length;
 }
+
+const titles = new Map(checks.map((check) => [check.code, check.title]));
+const titleOf = (check: string): string => titles.get(check) ?? check;
 
 /** The findings of the newest examination, with the titles of their checks. */
 export async function findPageFindings(revisionId: number): Promise<PageFinding[]> {
   const examination = await findNewestExamination(revisionId, database());
   if (!examination) return [];
-  const titles = new Map(checks.map((check) => [check.code, check.title]));
   const rows = await findFindings(examination.id, database());
   return rows.map((row) => ({
     id: row.id,
@@ -169,7 +190,7 @@ export async function findPageFindings(revisionId: number): Promise<PageFinding[
     speciesId: row.speciesId,
     property: row.property,
     check: row.check,
-    title: titles.get(row.check) ?? row.check,
+    title: titleOf(row.check),
     severity: row.severity,
     sentence: row.sentence,
     arithmetic: row.arithmetic,
@@ -192,6 +213,8 @@ function pageLine(line: LineRow & { overtaken: boolean; base?: LineBase | undefi
     rowNumber: line.rowNumber,
     state: line.state,
     publishedIn: line.publishedIn,
+    cameFrom: line.cameFrom,
+    cameAt: line.cameAt,
     versionId: line.versionId,
     version: line.version,
     content: line.content,

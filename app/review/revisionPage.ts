@@ -6,7 +6,17 @@ import { type Property, PROPERTIES, propertyInfo } from "#app/thermo/property.ts
 import { normalizedError, type Uncertainty } from "#app/thermo/uncertainty.ts";
 import type { LineContent } from "./content.ts";
 import { type HistoryRound, historyOf } from "./revisionPageHistory.ts";
+import {
+  byLine,
+  type FindingText,
+  type Round,
+  roundAt,
+  type RoundChanges,
+  roundChanges,
+  roundsOf,
+} from "./roundChanges.ts";
 import { isWritable, type RevisionState } from "./states.ts";
+import { type Thread, threadsOf } from "./threads.ts";
 
 /*
  * What the page of one revision shows, shaped from rows. Pure: everything that was read comes in, and what the viewer may
@@ -56,6 +66,9 @@ export interface PageLine {
   rowNumber: number | null;
   state: "open" | "accepted" | "declined" | "dropped" | "published";
   publishedIn: number | null;
+  /** The revision it was taken over from, and when; null for a line that never left its revision. */
+  cameFrom: number | null;
+  cameAt: Date | null;
   versionId: string;
   version: number;
   content: LineContent;
@@ -104,6 +117,9 @@ export interface PageComment {
   body: string;
   at: Date;
   by: string;
+  byId: string;
+  /** The comment it answers; null where it opens a thread. */
+  answers: string | null;
 }
 
 export interface PageMove {
@@ -123,6 +139,8 @@ export interface RevisionRow {
   round: number;
   sheetId: number | null;
   sheetName: string | null;
+  /** Id of the person who began it. */
+  madeBy: string;
   madeByName: string;
   madeAt: Date;
   sentAt: Date | null;
@@ -152,17 +170,29 @@ export interface RevisionPageInput {
   /** How a citation of a source line is printed. */
   printCitation: (citation: Record<string, unknown>) => string;
   findings: readonly PageFinding[];
+  /** Of the examination made when the round was sent that changes are shown against; empty where there is none. */
+  findingsBefore: readonly FindingText[];
   decisions: readonly PageDecision[];
   versions: readonly PageVersion[];
   comments: readonly PageComment[];
   moves: readonly PageMove[];
   setAsides: readonly { sentence: string; reason: string; at: Date; by: string }[];
+  /** Revisions whose lines were taken over into this one. */
+  takenOver: readonly { from: number; lines: number; at: Date; by: string }[];
+  /** Revisions into which lines of this one were taken over. */
+  wentInto: readonly number[];
   /** Lines in which the viewer had a hand. */
   hands: ReadonlySet<string>;
   rights: ViewerRights;
+  /** Which lines are shown. */
+  show: Show;
   /** Which page of lines, from 1. */
   page: number;
 }
+
+/** The lines that a page can be narrowed to; a set is never torn apart, so its other lines stay beside them. */
+export const SHOWS = ["all", "open", "changed", "overtaken", "unanswered"] as const;
+export type Show = (typeof SHOWS)[number];
 
 export interface ShownFigure {
   digits: Digits;
@@ -202,6 +232,8 @@ export interface FindingView {
 }
 
 export interface DecisionView {
+  /** The round in which it was made. */
+  round: number;
   decision: "accept" | "decline";
   reason: string;
   by: string;
@@ -251,18 +283,23 @@ export interface LineView {
   own: boolean;
   /** What happened to what the line was written against; null while it still stands. */
   overtaken: string | null;
+  /** What stands or waits in the place of an overtaken line now. */
+  now: { figure: ShownFigure | null; since: number | null; waitsIn: number | null } | null;
   /** Revision whose accepted line for the same place must be published before this one can be accepted. */
   behind: number | null;
   decision: DecisionView | null;
   voided: readonly DecisionView[];
   /** All versions, oldest first, where there is more than one or the first gives its reason. */
   versions: readonly VersionView[];
-  comments: readonly { id: string; body: string; by: string; at: Date }[];
+  threads: readonly Thread[];
+  /** The revision it was taken over from. */
+  cameFrom: number | null;
   findings: readonly FindingView[];
   mayAccept: boolean;
   mayDecline: boolean;
   mayEdit: boolean;
   mayTakeOut: boolean;
+  mayRestate: boolean;
 }
 
 /** The lines of one species (or of one source): they are looked at together and, where they are clean, accepted together. */
@@ -277,6 +314,8 @@ export interface LineGroup {
   lines: readonly LineView[];
   /** Open lines that the viewer may accept together, as the form sends them; empty with fewer than two. */
   together: readonly string[];
+  /** How far a set of several lines was decided, where it was decided in part only. */
+  inPart: { accepted: number; declined: number; open: number } | null;
 }
 
 /** Where a group stands on the page: what blocks, then what asks to be looked at, then the rest. */
@@ -288,6 +327,18 @@ export interface RevisionPage {
   sent: { at: Date; by: string; remark: string } | null;
   ended: { to: string; at: Date; by: string; remark: string } | null;
   publishedIn: readonly number[];
+  /** The rounds, oldest first. */
+  rounds: readonly Round[];
+  /** What changed since the round before; null in the first round and after the review. */
+  changed: RoundChanges | null;
+  /** Comments on the revision as a whole, with their answers. */
+  threads: readonly Thread[];
+  /** What the comments are about that still wait for an answer. */
+  unanswered: readonly { lineId: string | null; about: string | null }[];
+  wentInto: readonly number[];
+  show: Show;
+  /** How many lines each choice of lines holds. */
+  shows: Readonly<Record<Show, number>>;
   groups: readonly LineGroup[];
   pages: { page: number; pages: number; from: number; to: number };
   counts: {
@@ -380,8 +431,26 @@ export function revisionPage(input: RevisionPageInput): RevisionPage {
   const inReview = revision.state === "in_review";
   const writable = isWritable(revision.state) && rights.write;
   const groups = groupLines(lines, findings);
-  const context = lineContext(input, writable, inReview && rights.decide);
-  const pages = pagesOf(groups);
+  const rounds = roundsOf(moves);
+  const threads = threadsOf(input.comments, moves, revision.madeBy);
+  const changed = roundChanges({
+    ...input,
+    state: revision.state,
+    rounds,
+    threads,
+    aboutOf: (line) => aboutOf(line, input.names),
+    figureOf,
+    textChanges: (before, after) => textChanges(storedContent(before), after, input.printCitation),
+  });
+  const chosen: Record<Show, (line: PageLine) => boolean> = {
+    all: () => true,
+    open: (line) => line.state === "open",
+    changed: idsAmong([...(changed?.edited ?? []), ...(changed?.added ?? [])].map((one) => one.id)),
+    overtaken: (line) => line.overtaken,
+    unanswered: idsAmong(threads.flatMap((thread) => (thread.waits && thread.lineId !== null ? [thread.lineId] : []))),
+  };
+  const context = lineContext(input, rounds, threads, writable, inReview && rights.decide);
+  const pages = pagesOf(groups.filter((group) => group.lines.some(chosen[input.show])));
   const page = Math.min(Math.max(input.page, 1), pages.length);
   const shown = pages[page - 1] ?? { groups: [], from: 0, to: 0 };
   const count = (state: PageLine["state"]): number => lines.filter((line) => line.state === state).length;
@@ -396,6 +465,19 @@ export function revisionPage(input: RevisionPageInput): RevisionPage {
     sent: lastMove(moves, "in_review"),
     ended: last && last.to !== "in_review" ? { to: last.to, at: last.at, by: last.by, remark: last.remark } : null,
     publishedIn: [...new Set(lines.map((line) => line.publishedIn).filter((edition) => edition !== null))],
+    rounds,
+    changed,
+    threads: threads.filter((thread) => thread.lineId === null),
+    unanswered: unansweredOf(threads, lines, input.names),
+    wentInto: input.wentInto,
+    show: input.show,
+    shows: {
+      all: lines.length,
+      open,
+      changed: lines.filter(chosen.changed).length,
+      overtaken,
+      unanswered: lines.filter(chosen.unanswered).length,
+    },
     groups: shown.groups.map((group) => groupView(group, context)),
     pages: { page, pages: pages.length, from: shown.from, to: shown.to },
     counts: {
@@ -421,6 +503,30 @@ export function revisionPage(input: RevisionPageInput): RevisionPage {
     },
     history: historyOf(input, (line) => aboutOf(line, input.names)),
   };
+}
+
+function idsAmong(ids: readonly string[]): (line: PageLine) => boolean {
+  const among = new Set(ids);
+  return (line) => among.has(line.id);
+}
+
+function unansweredOf(
+  threads: readonly Thread[],
+  lines: readonly PageLine[],
+  names: RevisionPageInput["names"],
+): RevisionPage["unanswered"] {
+  const byId = new Map(lines.map((line) => [line.id, line]));
+  return threads
+    .filter((thread) => thread.waits)
+    .map(({ lineId }) => {
+      const line = lineId === null ? undefined : byId.get(lineId);
+      return { lineId: line ? lineId : null, about: line ? aboutOf(line, names) : null };
+    });
+}
+
+/** An earlier version of a line in the shape of what stood, so that the two can be compared word by word. */
+function storedContent(content: LineContent): StoodContent | undefined {
+  return content.kind === "detail" || content.kind === "source" ? content : undefined;
 }
 
 function lastMove(moves: readonly PageMove[], to: string): RevisionPage["sent"] {
@@ -453,29 +559,26 @@ interface LineContext {
   decides: boolean;
   decisions: ReadonlyMap<string, PageDecision[]>;
   versions: ReadonlyMap<string, PageVersion[]>;
-  comments: ReadonlyMap<string, PageComment[]>;
+  threads: ReadonlyMap<string, Thread[]>;
+  rounds: readonly Round[];
 }
 
-function lineContext(input: RevisionPageInput, writable: boolean, decides: boolean): LineContext {
+function lineContext(
+  input: RevisionPageInput,
+  rounds: readonly Round[],
+  threads: readonly Thread[],
+  writable: boolean,
+  decides: boolean,
+): LineContext {
   return {
     input,
+    rounds,
     writable,
     decides,
     decisions: byLine(input.decisions),
     versions: byLine(input.versions),
-    comments: byLine(input.comments),
+    threads: byLine(threads),
   };
-}
-
-function byLine<Row extends { lineId: string | null }>(rows: readonly Row[]): Map<string, Row[]> {
-  const map = new Map<string, Row[]>();
-  for (const row of rows) {
-    if (row.lineId === null) continue;
-    const list = map.get(row.lineId);
-    if (list) list.push(row);
-    else map.set(row.lineId, [row]);
-  }
-  return map;
 }
 
 function groupView(group: Grouped, context: LineContext): LineGroup {
@@ -501,7 +604,14 @@ function groupView(group: Grouped, context: LineContext): LineGroup {
     rank: group.rank,
     lines: views,
     together: together.length > 1 ? together.map((line) => `${line.id}:${line.versionId}`) : [],
+    inPart: inPartOf(group.lines),
   };
+}
+
+function inPartOf(lines: readonly PageLine[]): LineGroup["inPart"] {
+  const count = (state: PageLine["state"]): number => lines.filter((line) => line.state === state).length;
+  const counts = { accepted: count("accepted"), declined: count("declined"), open: count("open") };
+  return counts.accepted > 0 && counts.accepted < lines.length && counts.declined + counts.open > 0 ? counts : null;
 }
 
 function lineView(
@@ -556,8 +666,9 @@ function lineView(
     own,
     overtaken: line.overtaken ? overtakenSentence(input.now.get(line.id), line.property) : null,
     behind: line.overtaken ? null : line.behind,
-    decision: current ? decisionView(current) : null,
-    voided: decisions.filter((one) => one.void).map(decisionView),
+    now: line.overtaken ? nowView(input.now.get(line.id)) : null,
+    decision: current ? decisionView(current, context.rounds) : null,
+    voided: decisions.filter((one) => one.void).map((one) => decisionView(one, context.rounds)),
     versions:
       versions.length > 1 || versions.some((version) => version.reason !== "")
         ? versions.map(({ version, content: said, by, at, reason }) => ({
@@ -568,17 +679,23 @@ function lineView(
             reason,
           }))
         : [],
-    comments: (context.comments.get(line.id) ?? []).map(({ id, body, by, at }) => ({ id, body, by, at })),
+    threads: context.threads.get(line.id) ?? [],
+    cameFrom: line.cameFrom,
     findings: findings.map((finding) => findingView(finding, group, context, ownSpecies)),
     mayAccept: mayDecide && !line.overtaken && line.behind === null && line.state !== "accepted",
     mayDecline: mayDecide && line.state !== "declined",
     mayEdit: writable && line.kind === "value",
     mayTakeOut: writable,
+    mayRestate: writable && line.overtaken,
   };
 }
 
-function decisionView({ decision, reason, by, at, version }: PageDecision): DecisionView {
-  return { decision, reason, by, at, version };
+function decisionView({ decision, reason, by, at, version }: PageDecision, rounds: readonly Round[]): DecisionView {
+  return { round: roundAt(rounds, at), decision, reason, by, at, version };
+}
+
+function nowView(now: Stood | undefined): LineView["now"] {
+  return now ? { figure: figureOf(now.content), since: now.since, waitsIn: now.waitsIn } : null;
 }
 
 function findingView(finding: PageFinding, group: Grouped, context: LineContext, ownSpecies: boolean): FindingView {

@@ -16,6 +16,7 @@ describe("the forms of a revision", () => {
       ok: true,
       value: {
         intent: "accept",
+        mixtureReason: "",
         seen: [
           { lineId: "417", versionId: "902" },
           { lineId: "418", versionId: "903" },

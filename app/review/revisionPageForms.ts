@@ -32,21 +32,36 @@ const seenLine = z
     return { lineId, versionId };
   });
 
+/** The answer to what the checks found in the mixture that a decision would leave. */
+const mixtureAnswer = {
+  mixture: z
+    .string()
+    .regex(/^[0-9a-f]{64}$/, "The form is damaged. Load the page again.")
+    .optional(),
+  mixtureReason: optional(),
+};
+
 /** What a person may do on the page of a revision. */
 export const revisionForm = z.discriminatedUnion(
   "intent",
   [
-    z.object({ intent: z.literal("accept"), seen: z.array(seenLine).min(1, "Choose at least one line.") }),
+    z.object({
+      intent: z.literal("accept"),
+      seen: z.array(seenLine).min(1, "Choose at least one line."),
+      ...mixtureAnswer,
+    }),
     z.object({
       intent: z.literal("accept-clean"),
       digest: z
         .string({ error: "The form is damaged. Load the page again." })
         .regex(/^[0-9a-f]{64}$/, "The form is damaged. Load the page again."),
+      ...mixtureAnswer,
     }),
     z.object({
       intent: z.literal("decline"),
       seen: z.array(seenLine).min(1, "Choose at least one line."),
       reason: required("Say why the line is declined."),
+      ...mixtureAnswer,
     }),
     z.object({
       intent: z.literal("set-aside"),
@@ -58,6 +73,7 @@ export const revisionForm = z.discriminatedUnion(
       line: identifier.optional(),
       body: required("Write something first."),
     }),
+    z.object({ intent: z.literal("answer"), comment: identifier, body: required("Write something first.") }),
     z.object({ intent: z.literal("return"), remark: required("Say what should be mended.") }),
     z.object({ intent: z.literal("close"), password: z.string().max(LONGEST_REMARK).default("") }),
     z.object({
@@ -86,7 +102,7 @@ export const revisionForm = z.discriminatedUnion(
       summary: optional(),
     }),
     z.object({ intent: z.literal("send"), remark: optional() }),
-    z.object({ intent: z.literal("restate") }),
+    z.object({ intent: z.literal("restate"), line: identifier.optional() }),
     z.object({ intent: z.literal("withdraw"), reason: required("Say why the revision is withdrawn.") }),
   ],
   { error: "The form does not say what to do. Load the page again." },

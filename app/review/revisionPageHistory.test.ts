@@ -36,6 +36,8 @@ const line = (id: string): PageLine => ({
   rowNumber: null,
   state: "open",
   publishedIn: null,
+  cameFrom: null,
+  cameAt: null,
   versionId: id,
   version: 1,
   content: value("1.0"),
@@ -65,6 +67,7 @@ const history = (rest: Partial<HistoryInput>) =>
       comments: [],
       moves: [],
       setAsides: [],
+      takenOver: [],
       ...rest,
     },
     (one) => `line ${one.id}`,
@@ -83,7 +86,16 @@ describe("rounds", () => {
   });
 
   test("a remark told with the sending is not told a second time as a comment", () => {
-    const comment = { id: "1", lineId: null, round: 1, body: "Please.", at: at(1), by: "Ines" };
+    const comment = {
+      id: "1",
+      lineId: null,
+      round: 1,
+      body: "Please.",
+      at: at(1),
+      by: "Ines",
+      byId: "i",
+      answers: null,
+    };
     const moves = [move("in_review", 1, "Ines", "Please.")];
     expect(told({ moves, comments: [comment] })[1]).toEqual([1, "Ines sent it to review"]);
     expect(told({ moves, comments: [{ ...comment, body: "And this." }] })[1]).toHaveLength(3);

@@ -8,6 +8,7 @@ import type {
   RevisionRow,
   ShownFigure,
 } from "./revisionPage.ts";
+import { isRemark } from "./threads.ts";
 
 /*
  * What happened to a revision, told in rounds: every sending, return, comment, edit and decision in its order. Decisions
@@ -53,6 +54,7 @@ export interface HistoryInput {
   comments: readonly PageComment[];
   moves: readonly PageMove[];
   setAsides: readonly { sentence: string; reason: string; at: Date; by: string }[];
+  takenOver: readonly { from: number; lines: number; at: Date; by: string }[];
 }
 
 const MOVE_WORDS: Record<string, string> = {
@@ -97,15 +99,9 @@ export function historyOf(input: HistoryInput, aboutOf: (line: PageLine) => stri
   }
   for (const comment of input.comments) {
     // A remark with which the revision was sent or returned is kept as a comment too; it is told once.
-    const isRemark = input.moves.some(
-      (move) =>
-        comment.lineId === null &&
-        move.by === comment.by &&
-        move.remark === comment.body &&
-        Math.abs(move.at.getTime() - comment.at.getTime()) < 5000,
-    );
-    if (!isRemark)
-      tell(comment.at, comment.by, "wrote", { words: comment.body, ...named(comment.lineId ? [comment.lineId] : []) });
+    if (isRemark(comment, input.moves)) continue;
+    const did = comment.answers === null ? "wrote" : "answered";
+    tell(comment.at, comment.by, did, { words: comment.body, ...named(comment.lineId ? [comment.lineId] : []) });
   }
   for (const run of runs(
     input.decisions,
@@ -124,6 +120,9 @@ export function historyOf(input: HistoryInput, aboutOf: (line: PageLine) => stri
       voided: run.filter((one) => one.void).length,
       ...named(run.map((one) => one.lineId)),
     });
+  }
+  for (const { from, lines: taken, at, by } of input.takenOver) {
+    tell(at, by, `took ${taken === 1 ? "a line" : `${taken} lines`} over from revision ${from}`);
   }
   tellEdits(input.versions, named, tell);
   for (const { sentence, reason, at, by } of input.setAsides) {

@@ -6,7 +6,7 @@ import type { Unit } from "#app/thermo/unit.ts";
 import { UNITS } from "#app/thermo/unit.ts";
 import type { SeenLine } from "./decide.server.ts";
 import { findLine, findLines, type LineRow } from "./review.queries.server.ts";
-import { rewriteLine } from "./revise.server.ts";
+import { rewriteLine, rewriteLines } from "./revise.server.ts";
 import { findPageFindings } from "./revisionPage.server.ts";
 import { repairsOf } from "./revisionPage.ts";
 import { readWritten, takeSuggestion } from "./revisionPageValue.ts";
@@ -78,17 +78,12 @@ export async function takeSuggestionOf(
       );
     }
   }
-  for (const { line, becomes } of repairs) {
+  const changes = repairs.map(({ line, becomes }) => {
     const taken = line.content.kind === "value" ? takeSuggestion(line.content, becomes, suggestion.slip) : null;
     if (!taken) throw new Refused("This suggestion is not a number that the line could take.");
-    await rewriteLine(acting, {
-      revisionId,
-      lineId: line.id,
-      expectedVersion: line.version,
-      content: taken.content,
-      reason: taken.note,
-    });
-  }
+    return { lineId: line.id, expectedVersion: line.version, content: taken.content, reason: taken.note };
+  });
+  await rewriteLines(acting, revisionId, changes);
 }
 
 async function findValueLine(revisionId: number, id: string) {

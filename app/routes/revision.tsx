@@ -6,7 +6,7 @@ import { numberInPath, pageError } from "#app/http/respond.server.ts";
 import { paths } from "#app/paths.ts";
 import { asksPassword } from "#app/people/signing.server.ts";
 import { requireVisitor } from "#app/people/visitor.server.ts";
-import type { RevisionPage as Page } from "#app/review/revisionPage.ts";
+import { type RevisionPage as Page, type Show, SHOWS } from "#app/review/revisionPage.ts";
 import { findRevisionPage } from "#app/review/revisionPage.server.ts";
 import { draftBookmark, editionBookmark, type BookmarkProps } from "#app/ui/Bookmark.tsx";
 import { Button, ButtonLink } from "#app/ui/Button.tsx";
@@ -24,11 +24,20 @@ import { useRootData } from "#app/ui/useRootData.ts";
 import type { Route } from "./+types/revision";
 import { actOnRevision } from "./revision/act.server.ts";
 import { Bar } from "./revision/Bar.tsx";
-import { ActForm, DeskProvider, OpenLink, useDesk } from "./revision/desk.tsx";
+import { ActForm, DeskProvider, linesAddress, OpenLink, useDesk } from "./revision/desk.tsx";
 import { History, roundInWords } from "./revision/History.tsx";
 import { Lines } from "./revision/Lines.tsx";
+import { Changed, RoundsStrip, ShowLines, Unanswered } from "./revision/Rounds.tsx";
+import { RevisionThreads } from "./revision/Threads.tsx";
 
 export const meta: Route.MetaFunction = ({ params }) => [{ title: `Revision ${params.revision} · Tablewright` }];
+
+function showIn(request: Request): Show {
+  const text = new URL(request.url).searchParams.get("show") ?? "all";
+  const show = SHOWS.find((one) => one === text);
+  if (!show) throw new BadRequest(`Lines are shown by one of ${SHOWS.join(", ")}.`);
+  return show;
+}
 
 function pageIn(request: Request): number {
   const text = new URL(request.url).searchParams.get("page") ?? "1";
@@ -39,7 +48,10 @@ function pageIn(request: Request): number {
 export async function loader({ request, params }: Route.LoaderArgs) {
   try {
     const { acting, sessionId } = await requireVisitor(request, "revision:read");
-    const page = await findRevisionPage(acting, numberInPath(params.revision), { page: pageIn(request) });
+    const page = await findRevisionPage(acting, numberInPath(params.revision), {
+      page: pageIn(request),
+      show: showIn(request),
+    });
     return { ...page, asksPassword: page.may.close && (await asksPassword(acting, sessionId)) };
   } catch (error) {
     throw pageError(error);
@@ -55,12 +67,13 @@ export async function action({ request, params, context }: Route.ActionArgs) {
     };
     const id = numberInPath(params.revision);
     const page = pageIn(request);
+    const show = showIn(request);
     const form = await readForm(request);
     const outcome = await actOnRevision(signer, id, form);
     if (!outcome.ok) return data(outcome, { status: outcome.status });
     const line = String(form.get("line") ?? form.get("seen") ?? "").split(":", 1)[0] ?? "";
     const anchor = /^\d+$/.test(line) ? `#line-${line}` : "";
-    return redirect(`${paths.revision(id)}${page > 1 ? `?page=${page}` : ""}${anchor}`, 303);
+    return redirect(`${linesAddress(id, page, show)}${anchor}`, 303);
   } catch (error) {
     throw pageError(error);
   }
@@ -70,7 +83,14 @@ export default function RevisionPage({ loaderData: page, actionData }: Route.Com
   const { revision } = page;
   const failed = actionData && !actionData.ok ? actionData : undefined;
   return (
-    <DeskProvider key={revision.id} revision={revision.id} content={page} page={page.pages.page} answered={actionData}>
+    <DeskProvider
+      key={revision.id}
+      revision={revision.id}
+      content={page}
+      page={page.pages.page}
+      show={page.show}
+      answered={actionData}
+    >
       <Leaf
         heading={revision.title}
         lede={revision.summary || undefined}
@@ -78,26 +98,53 @@ export default function RevisionPage({ loaderData: page, actionData }: Route.Com
         bookmark={bookmarkOf(page)}
         ribbon={<RevisionRibbon page={page} />}
       >
-        {failed?.sentence && <FormErrors errors={[failed.sentence]} />}
+        {failed?.sentence && !failed.asks && <FormErrors errors={[failed.sentence]} />}
         {page.may.write && <Describe page={page} />}
         <div className="mb-4 empty:hidden">
           <Standing page={page} />
         </div>
+        <RoundsStrip rounds={page.rounds} />
+        <Unanswered page={page} />
+        <Changed page={page} />
+        {page.counts.lines > 0 && <ShowLines page={page} />}
         {page.groups.length > 0 ? (
           <>
             <Lines page={page} />
             <LinePages page={page} />
           </>
         ) : (
-          <EmptyPage start={<ButtonLink to={paths.newSheet()}>Bring a sheet</ButtonLink>}>
-            This revision has no lines. They come from a sheet, or are begun on the page of a species.
-          </EmptyPage>
+          <NoLines page={page} />
         )}
+        <RevisionThreads threads={page.threads} may={page.may.comment} />
         <History rounds={page.history} comments={page.may.comment} />
         <Caution />
         <Bar page={page} digest={page.cleanDigest} asksPassword={page.asksPassword} />
       </Leaf>
     </DeskProvider>
+  );
+}
+
+function NoLines({ page }: { page: Page }) {
+  const { revision, counts, wentInto, show } = page;
+  if (counts.lines > 0) {
+    return (
+      <EmptyPage start={<ButtonLink to={paths.revision(revision.id)}>Show all lines</ButtonLink>}>
+        {show === "overtaken" ? "No line is overtaken." : "No line of this kind is left."}
+      </EmptyPage>
+    );
+  }
+  const [into] = wentInto;
+  if (into !== undefined) {
+    return (
+      <EmptyPage start={<ButtonLink to={paths.revision(into)}>See them in revision {into}</ButtonLink>}>
+        The lines of this revision were taken over into another, with their history.
+      </EmptyPage>
+    );
+  }
+  return (
+    <EmptyPage start={<ButtonLink to={paths.newSheet()}>Bring a sheet</ButtonLink>}>
+      This revision has no lines. They come from a sheet, or are begun on the page of a species.
+    </EmptyPage>
   );
 }
 
@@ -256,13 +303,13 @@ function Describe({ page: { revision } }: { page: Page }) {
   );
 }
 
-function LinePages({ page: { pages, counts, revision } }: { page: Page }) {
+function LinePages({ page: { pages, shows, show, revision } }: { page: Page }) {
   if (pages.pages === 1) return null;
-  const to = (number: number): string => `${paths.revision(revision.id)}${number > 1 ? `?page=${number}` : ""}`;
+  const to = (number: number): string => linesAddress(revision.id, number, show);
   return (
     <nav aria-label="Pages of lines" className="mt-3 flex flex-wrap gap-x-4 text-fine">
       <span className="text-soft">
-        Lines {count(pages.from)} to {count(pages.to)} of {count(counts.lines)}
+        Lines {count(pages.from)} to {count(pages.to)} of {count(Math.max(shows[show], pages.to))}
       </span>
       {pages.page > 1 && (
         <Link to={to(pages.page - 1)} rel="prev">

@@ -229,7 +229,7 @@ test("two revisions accepted for the same value: the second waits, is overtaken,
   expect((await findLinesWithBases(two)).map((line) => line.overtaken)).toEqual([true]);
   expect(await refusalOf(acceptLines(reviewer, two, await seenLines(two)))).toBeInstanceOf(Refused);
   await returnRevision(reviewer, two, "Overtaken by revision 1 of the pair.");
-  expect(await restateLines(second, two)).toBe(1);
+  expect(await restateLines(second, two)).toEqual({ restated: 1, idle: 0 });
   await acceptAll(second, reviewer, two);
   expect((await publishWaiting(reviewer)).number).toBe(editionNumber + 1);
 });

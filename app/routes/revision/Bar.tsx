@@ -1,5 +1,6 @@
 import type { RevisionPage } from "#app/review/revisionPage.ts";
-import { Button } from "#app/ui/Button.tsx";
+import { paths } from "#app/paths.ts";
+import { Button, ButtonLink } from "#app/ui/Button.tsx";
 import { DecisionBar, KeysHint } from "#app/ui/DecisionBar.tsx";
 import { Field } from "#app/ui/Field.tsx";
 import { plainField } from "#app/ui/fieldState.ts";
@@ -10,6 +11,7 @@ import { Note } from "#app/ui/Note.tsx";
 import { Prose } from "#app/ui/Prose.tsx";
 import { StatusLine } from "#app/ui/StatusLine.tsx";
 import { ActForm, OpenLink, useDesk, useFocusOnOpen, useLineKeys } from "./desk.tsx";
+import { Mixture } from "./Mixture.tsx";
 import { ReasonForm } from "./Reason.tsx";
 
 const DECIDING_KEYS = [
@@ -27,7 +29,7 @@ const WRITING_KEYS = [
 
 /** What can be done with the whole revision, always within reach; what was refused and what was done is said here. */
 export function Bar({ page, digest, asksPassword }: { page: RevisionPage; digest: string; asksPassword: boolean }) {
-  const { said, refusal, dismiss, open, started } = useDesk();
+  const { said, refusal, asked, dismiss, open, started } = useDesk();
   const keys = useLineKeys();
   const { may } = page;
   const panel = panelOf(page, open, started);
@@ -62,16 +64,20 @@ export function Bar({ page, digest, asksPassword }: { page: RevisionPage; digest
             </Button>
           </div>
         )}
-        {panel ?? (
-          <>
-            {may.decide && <Deciding page={page} digest={digest} asksPassword={asksPassword} />}
-            {!may.decide && may.write && <Writing page={page} />}
-            {may.withdraw && (
-              <OpenLink form="withdraw" anchor="decide" className="button button-quiet">
-                Withdraw
-              </OpenLink>
-            )}
-          </>
+        {asked ? (
+          <Mixture key={asked.question.token} asked={asked} dismiss={dismiss} />
+        ) : (
+          (panel ?? (
+            <>
+              {may.decide && <Deciding page={page} digest={digest} asksPassword={asksPassword} />}
+              {!may.decide && may.write && <Writing page={page} />}
+              {may.withdraw && (
+                <OpenLink form="withdraw" anchor="decide" className="button button-quiet">
+                  Withdraw
+                </OpenLink>
+              )}
+            </>
+          ))
         )}
         <StatusLine>{said}</StatusLine>
       </DecisionBar>
@@ -169,16 +175,16 @@ function CloseForm({ page }: { page: RevisionPage }) {
   );
 }
 
-function Writing({ page: { may, counts } }: { page: RevisionPage }) {
+function Writing({ page: { may, counts, revision } }: { page: RevisionPage }) {
   return (
     <>
       {may.restate && (
         <ActForm intent="restate">
           {({ pending }) => (
-            <Button type="submit" pending={pending} pendingLabel="Writing…">
+            <Button type="submit" pending={pending} pendingLabel="Restating…">
               {counts.overtaken === 1
-                ? "Write the overtaken line anew"
-                : `Write the ${count(counts.overtaken)} overtaken lines anew`}
+                ? "Restate the overtaken line"
+                : `Restate the ${count(counts.overtaken)} overtaken lines`}
             </Button>
           )}
         </ActForm>
@@ -187,6 +193,11 @@ function Writing({ page: { may, counts } }: { page: RevisionPage }) {
         <OpenLink form="send" anchor="decide" className="button button-main">
           Send to review
         </OpenLink>
+      )}
+      {may.write && (
+        <ButtonLink kind="quiet" to={paths.takeOver(revision.id)}>
+          Take over another draft
+        </ButtonLink>
       )}
     </>
   );
@@ -223,6 +234,16 @@ function panelOf(page: RevisionPage, open: string | null, started: string): Reac
         kind="main"
         anchor="decide"
       >
+        {page.unanswered.length > 0 && (
+          <p className="mb-2">
+            <InlineMark kind="look">
+              {page.unanswered.length === 1
+                ? "One comment has no answer yet"
+                : `${page.unanswered.length} comments have no answer yet`}
+            </InlineMark>
+            : the reviewers see that. Answer beside the line, or say it here.
+          </p>
+        )}
         {counts.blocks > 0 && (
           <p className="mb-2 text-fine text-soft">
             {counts.blocks === 1 ? "One finding blocks" : `${counts.blocks} findings block`}: a reviewer can only accept

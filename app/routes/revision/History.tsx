@@ -21,7 +21,9 @@ export function History({ rounds, comments }: { rounds: readonly HistoryRound[];
       <div className="max-w-[60rem] border-b-2 border-ink pb-2">
         {rounds.map(({ round, entries }) => (
           <div key={round} className="border-t border-rule py-2 sm:grid sm:grid-cols-[8.5rem_minmax(0,1fr)]">
-            <h3 className="font-medium">{roundInWords(round)}</h3>
+            <h3 className="font-medium" id={`round-${round}`}>
+              {roundInWords(round)}
+            </h3>
             <ol>
               {entries.map((entry, index) => (
                 <li key={`${String(entry.at)} ${index}`} className="py-0.5">
@@ -60,7 +62,7 @@ function Entry({ entry }: { entry: HistoryEntry }) {
         {entry.by} <Prose text={entry.did} />
         {entry.lines.length > 0 && (
           <span className="text-soft">
-            {entry.did === "wrote" ? " on " : entry.did === "changed" ? " " : ": "}
+            {entry.did === "wrote" || entry.did === "answered" ? " on " : entry.did === "changed" ? " " : ": "}
             {entry.lines.map(({ id, about }, index) => (
               <span key={id}>
                 {index > 0 && ", "}

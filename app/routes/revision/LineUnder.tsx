@@ -13,6 +13,7 @@ import { Figures } from "#app/ui/ValueCell.tsx";
 import { ActForm, OpenLink, useDesk } from "./desk.tsx";
 import { formKey } from "./outcome.ts";
 import { ReasonForm } from "./Reason.tsx";
+import { ThreadView } from "./Threads.tsx";
 import { ValueForm } from "./Value.tsx";
 
 interface LineUnderProps {
@@ -33,8 +34,9 @@ export function LineUnder({ line, group, last, page }: LineUnderProps) {
       {line.overtaken !== null && (
         <Note kind="look" word="overtaken">
           <p>
-            <Prose text={line.overtaken} /> It cannot be accepted until the steward writes it anew.
+            <Prose text={line.overtaken} /> It cannot be accepted until the steward restates it.
           </p>
+          <Overtaken line={line} />
         </Note>
       )}
       {line.behind !== null && (
@@ -54,16 +56,17 @@ export function LineUnder({ line, group, last, page }: LineUnderProps) {
       {line.findings.map((finding, index) => (
         <LineFinding key={finding.id} finding={finding} first={index === 0} line={line} page={page} />
       ))}
+      {line.cameFrom !== null && (
+        <p className="text-fine text-soft">
+          Taken over from <Link to={paths.revision(line.cameFrom)}>revision {line.cameFrom}</Link>, with its history.
+        </p>
+      )}
       {line.versions.length > 0 && <Versions line={line} />}
       <Decisions line={line} />
-      {line.comments.map((comment) => (
-        <blockquote key={comment.id} className="my-2 border-l-2 border-rule pl-3.5">
-          <p className="whitespace-pre-line">{comment.body}</p>
-          <footer className="text-fine text-soft">
-            {comment.by}, <Time at={comment.at} withTime />
-          </footer>
-        </blockquote>
+      {line.threads.map((thread) => (
+        <ThreadView key={thread.id} thread={thread} anchor={anchor} may={page.may.comment} />
       ))}
+      {last && group.inPart && <InPart group={group} />}
       {last && group.together.length > 0 && (group.rank !== "clean" || isOpen("more")) && (
         <ActForm
           intent="accept"
@@ -120,6 +123,51 @@ export function LineUnder({ line, group, last, page }: LineUnderProps) {
         />
       )}
     </>
+  );
+}
+
+/** What an overtaken line was written against beside what is there now, and the way to write it against that. */
+function Overtaken({ line }: { line: LineView }) {
+  const { now } = line;
+  const against =
+    now?.waitsIn != null
+      ? `revision ${now.waitsIn}`
+      : now?.since != null
+        ? `edition ${now.since}`
+        : "the table as it is";
+  return (
+    <>
+      {(line.stood ?? now?.figure) && (
+        <p>
+          <span className="text-soft">Written against </span>
+          {line.stood ? <Figures {...line.stood} proof="del" /> : "nothing"}
+          <span className="text-soft">; now {now?.waitsIn != null ? "waits" : "stands"} </span>
+          {now?.figure ? <Figures {...now.figure} /> : "nothing"}
+        </p>
+      )}
+      {line.mayRestate && (
+        <ActForm intent="restate" subject={line.id} fields={[["line", line.id]]}>
+          {({ pending }) => (
+            <Button kind="text" type="submit" pending={pending} pendingLabel="Restating…">
+              Restate against {against}
+            </Button>
+          )}
+        </ActForm>
+      )}
+    </>
+  );
+}
+
+/** A set of which only part was accepted says so under its last line. */
+function InPart({ group }: { group: LineGroup }) {
+  if (!group.inPart) return null;
+  const { accepted, declined, open } = group.inPart;
+  const rest = [open > 0 && `${open} open`, declined > 0 && `${declined} declined`].filter(Boolean).join(", ");
+  return (
+    <p className="text-fine text-soft">
+      Part of this set is accepted: {accepted} of {group.lines.length} lines of{" "}
+      <Prose text={group.speciesKey ?? group.name} />, {rest}.
+    </p>
   );
 }
 
@@ -255,7 +303,7 @@ function Decisions({ line }: { line: LineView }) {
             {words[one.decision]} by {one.by}, <Time at={one.at} withTime />
             {one.reason && `: ${one.reason}`}
           </del>{" "}
-          void: the line was edited afterwards
+          {one.round > 0 ? `decided in round ${one.round}, edited since` : "void: the line was edited afterwards"}
         </p>
       ))}
       {line.decision?.decision === "decline" && (

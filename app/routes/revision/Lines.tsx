@@ -129,13 +129,15 @@ function Line({ line, group, last, page, tails }: LineProps) {
   const isOpen = ["more", "decline", "comment", "rewrite", "take-out"].some((form) => open === formKey(form, line.id));
   const speaks =
     line.findings.length > 0 ||
-    line.comments.length > 0 ||
+    line.threads.length > 0 ||
     line.versions.length > 0 ||
     line.voided.length > 0 ||
     line.overtaken !== null ||
     line.behind !== null ||
     line.withdrawalReason !== null ||
     line.decision?.decision === "decline" ||
+    line.cameFrom !== null ||
+    (last && group.inPart !== null) ||
     (last && group.together.length > 0 && group.rank !== "clean");
   return (
     <>

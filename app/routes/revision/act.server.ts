@@ -2,9 +2,10 @@ import { BadRequest, DomainError, Invalid, NotFound } from "#app/http/errors.ts"
 import { demand } from "#app/people/permissions.ts";
 import type { Acting } from "#app/people/person.ts";
 import { demandFresh } from "#app/people/signing.server.ts";
+import { answerComment, commentOn } from "#app/review/comments.server.ts";
 import { acceptLines, closeReview, declineLines, returnRevision, setFindingAside } from "#app/review/decide.server.ts";
+import { type MixtureAnswer, MixtureRefused } from "#app/review/mixture.ts";
 import {
-  commentOn,
   describeRevision,
   restateLines,
   sendToReview,
@@ -38,7 +39,11 @@ export async function actOnRevision(
   const typed: Record<string, string> = {};
   for (const [name, value] of form) if (typeof value === "string" && name !== "password") typed[name] = value;
   const intent = typed["intent"] ?? "";
-  const wrong = (status: number, sentence: string, errors: Record<string, readonly string[]> = {}): Outcome => ({
+  const wrong = (
+    status: number,
+    sentence: string,
+    errors: Record<string, readonly string[]> = {},
+  ): Outcome & { ok: false } => ({
     ok: false,
     status,
     intent,
@@ -61,6 +66,12 @@ export async function actOnRevision(
     }
     return { ok: true, intent, said: await perform(acting, revisionId, reading.value) };
   } catch (error) {
+    if (error instanceof MixtureRefused) {
+      const fields = [...form].flatMap(([name, value]): (readonly [string, string])[] =>
+        typeof value === "string" && !["mixture", "mixtureReason"].includes(name) ? [[name, value]] : [],
+      );
+      return { ...wrong(error.status, error.message), asks: { ...error.question, fields } };
+    }
     if (!(error instanceof DomainError) || error instanceof NotFound || error instanceof BadRequest) throw error;
     if (!(error instanceof Invalid) || error.errors.length === 0) return wrong(error.status, error.message);
     const errors: Record<string, string[]> = {};
@@ -73,14 +84,14 @@ export async function actOnRevision(
 async function perform(acting: Acting, id: number, form: RevisionForm): Promise<string> {
   switch (form.intent) {
     case "accept":
-      await acceptLines(acting, id, form.seen);
+      await acceptLines(acting, id, form.seen, answerOf(form));
       return form.seen.length === 1 ? "Line accepted." : `${form.seen.length} lines accepted.`;
     case "accept-clean": {
-      const accepted = await acceptCleanLines(acting, id, form.digest);
+      const accepted = await acceptCleanLines(acting, id, form.digest, answerOf(form));
       return accepted === 1 ? "The clean line is accepted." : `${accepted} clean lines accepted.`;
     }
     case "decline":
-      await declineLines(acting, id, form.seen, form.reason);
+      await declineLines(acting, id, form.seen, form.reason, answerOf(form));
       return form.seen.length === 1 ? "Line declined." : `${form.seen.length} lines declined.`;
     case "set-aside":
       await setFindingAside(acting, id, form.finding, form.reason);
@@ -88,6 +99,9 @@ async function perform(acting: Acting, id: number, form: RevisionForm): Promise<
     case "comment":
       await commentOn(acting, { revisionId: id, lineId: form.line ?? null, body: form.body });
       return "Comment written.";
+    case "answer":
+      await answerComment(acting, { revisionId: id, comment: form.comment, body: form.body });
+      return "Answer written.";
     case "return":
       await returnRevision(acting, id, form.remark);
       return "Returned to the steward.";
@@ -111,11 +125,19 @@ async function perform(acting: Acting, id: number, form: RevisionForm): Promise<
       await sendToReview(acting, id, form.remark);
       return "Sent to review; the reviewers have been written to.";
     case "restate": {
-      const restated = await restateLines(acting, id);
-      return restated === 1 ? "One line written anew." : `${restated} lines written anew.`;
+      const { restated, idle } = await restateLines(acting, id, form.line ?? null);
+      const done = restated === 1 ? "One line restated." : `${restated} lines restated.`;
+      return idle === 0
+        ? done
+        : `${done} ${idle === 1 ? "One would change nothing any more and is left: take it out." : `${idle} would change nothing any more and are left: take them out.`}`;
     }
     case "withdraw":
       await withdrawRevision(acting, id, form.reason);
       return "Revision withdrawn; it stays on record.";
   }
+}
+
+/** The answer to the question that an earlier try came back with, where there was one. */
+function answerOf(form: { mixture?: string | undefined; mixtureReason: string }): MixtureAnswer | null {
+  return form.mixture === undefined ? null : { token: form.mixture, reason: form.mixtureReason };
 }

@@ -1,6 +1,7 @@
 import { createContext, useCallback, useContext, useEffect, useMemo, useRef, useState } from "react";
 import { Link, useFetcher, useRevalidator, useSearchParams } from "react-router";
 import { paths } from "#app/paths.ts";
+import type { Show } from "#app/review/revisionPage.ts";
 import { formKey, type Outcome, sentForm } from "./outcome.ts";
 
 /*
@@ -25,7 +26,31 @@ interface Desk {
   hear(outcome: Outcome, about: string): void;
   said: string;
   refusal: string;
+  /** What the checks ask before a decision that leaves a mixture is made. */
+  asked: Asked | null;
   dismiss(): void;
+}
+
+/** A question with the form it came back to. */
+export interface Asked {
+  question: NonNullable<(Outcome & { ok: false })["asks"]>;
+  intent: string;
+  sentence: string;
+  /** Id of the line near which the focus stays. */
+  about: string;
+}
+
+function askedBy(outcome: Outcome | undefined, about: string): Asked | null {
+  if (!outcome || outcome.ok || !outcome.asks) return null;
+  return { question: outcome.asks, intent: outcome.intent, sentence: outcome.sentence, about };
+}
+
+/** The address of a page of lines. */
+export function linesAddress(revision: number, page: number, show: Show): string {
+  const query = new URLSearchParams();
+  if (show !== "all") query.set("show", show);
+  if (page > 1) query.set("page", String(page));
+  return `${paths.revision(revision)}${query.size > 0 ? `?${query.toString()}` : ""}`;
 }
 
 const DeskContext = createContext<Desk | null>(null);
@@ -44,11 +69,12 @@ interface DeskProps {
   /** What the loader read; a new one means that the lines on the page are new. */
   content: object;
   page: number;
+  show: Show;
   answered: Outcome | undefined;
   children: React.ReactNode;
 }
 
-export function DeskProvider({ revision, content, page, answered, children }: DeskProps) {
+export function DeskProvider({ revision, content, page, show: chosen, answered, children }: DeskProps) {
   const [search] = useSearchParams();
   const { revalidate } = useRevalidator();
   const failed = answered && !answered.ok ? answered : undefined;
@@ -56,23 +82,35 @@ export function DeskProvider({ revision, content, page, answered, children }: De
   const [started, setStarted] = useState("");
   const [said, setSaid] = useState("");
   const [refusal, setRefusal] = useState("");
+  const [asked, setAsked] = useState<Asked | null>(() =>
+    askedBy(answered, failed?.typed["seen"]?.split(":", 1)[0] ?? ""),
+  );
   const focusAfter = useRef<string | null>(null);
 
   const show = useCallback((key: string | null, text = "") => {
     setOpen(key);
     setStarted(text);
     setRefusal("");
+    setAsked(null);
   }, []);
   const hear = useCallback(
     (outcome: Outcome, about: string) => {
       if (outcome.ok) {
         setSaid(outcome.said);
         setRefusal("");
+        setAsked(null);
         setOpen(null);
         focusAfter.current = MOVES_ON.includes(outcome.intent) ? `next:${about}` : `stay:${about}`;
         return;
       }
       setSaid("");
+      const question = askedBy(outcome, about);
+      setAsked(question);
+      if (question) {
+        setOpen(null);
+        setRefusal("");
+        return;
+      }
       setRefusal(outcome.sentence);
       // Something moved under the page: show what is true now.
       if (outcome.status === 409) void revalidate();
@@ -91,7 +129,7 @@ export function DeskProvider({ revision, content, page, answered, children }: De
   const desk = useMemo<Desk>(
     () => ({
       revision,
-      action: `${paths.revision(revision)}${page > 1 ? `?page=${page}` : ""}`,
+      action: linesAddress(revision, page, chosen),
       resource: paths.resource(`revisions/${revision}/act`),
       open,
       show,
@@ -100,9 +138,13 @@ export function DeskProvider({ revision, content, page, answered, children }: De
       hear,
       said,
       refusal,
-      dismiss: () => setRefusal(""),
+      asked,
+      dismiss: () => {
+        setRefusal("");
+        setAsked(null);
+      },
     }),
-    [revision, page, open, show, started, answered, hear, said, refusal],
+    [revision, page, chosen, open, show, started, answered, hear, said, refusal, asked],
   );
   return <DeskContext value={desk}>{children}</DeskContext>;
 }

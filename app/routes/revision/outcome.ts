@@ -1,3 +1,5 @@
+import type { MixtureQuestion } from "#app/review/mixture.ts";
+
 /** What came of a form on the page of a revision; the same for a page sent anew and for a form sent by script. */
 export type Outcome =
   | {
@@ -15,6 +17,8 @@ export type Outcome =
       errors: Readonly<Record<string, readonly string[]>>;
       /** What was typed, so that nothing is lost. */
       typed: Readonly<Record<string, string>>;
+      /** What the checks find in the mixture that would stand, to be answered; with the form as it was sent. */
+      asks?: MixtureQuestion & { fields: readonly (readonly [string, string])[] };
     };
 
 /** Which form of the page an outcome belongs to: its intent and what it was about. */
@@ -25,5 +29,8 @@ export function formKey(intent: string, subject = ""): string {
 /** The key of the form that was sent, from what was typed into it. */
 export function sentForm(outcome: Outcome & { ok: false }): string {
   const { typed, intent } = outcome;
-  return formKey(intent, typed["line"] ?? typed["finding"] ?? typed["seen"]?.split(":", 1)[0] ?? "");
+  return formKey(
+    intent,
+    typed["comment"] ?? typed["line"] ?? typed["finding"] ?? typed["seen"]?.split(":", 1)[0] ?? "",
+  );
 }
