@@ -104,6 +104,13 @@ describe("values of a form", () => {
     readValues(typed({ kind: "huge", pressure: "1", basis: "molarity" }), identity("H2O(l)"), trouble);
     expect(trouble.errors.map((error) => error.pointer)).toEqual(["/kind", "/pressure", "/basis"]);
   });
+
+  test("a coverage factor of an uncertainty that has none is asked about", () => {
+    const trouble = noTrouble();
+    const fields = { "entropy.value": "69.95", "entropy.unit": "J/(mol K)", "entropy.uncertainty": "0.03" };
+    readValues(typed({ ...fields, kind: "standard", k: "2" }), identity("H2O(l)"), trouble);
+    expect(trouble.errors.map((error) => error.pointer)).toEqual(["/k"]);
+  });
 });
 
 describe("what a species is called", () => {

@@ -74,6 +74,9 @@ export function readValues(typed: Typed, identity: SpeciesIdentity, trouble: For
   if (!["", "molality", "concentration"].includes(basis)) wrong(trouble, "basis", "Choose one of the list.");
   const method = textOf(typed, "method", 500, trouble);
   const remark = textOf(typed, "remark", 1000, trouble);
+  if (kind && kind !== "expanded" && typed("k").trim() !== "") {
+    wrong(trouble, "k", "A coverage factor belongs to an expanded uncertainty. Choose that kind, or leave this empty.");
+  }
   if (!kind || !pressure) return [];
 
   const values: WrittenValue[] = [];

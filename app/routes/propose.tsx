@@ -8,7 +8,6 @@ import { findNewSpeciesPage, findProposePage, type ProposePage } from "#app/revi
 import { isProperty } from "#app/thermo/property.ts";
 import { draftBookmark } from "#app/ui/Bookmark.tsx";
 import { Leaf } from "#app/ui/Leaf.tsx";
-import { Fine } from "#app/ui/Section.tsx";
 import { SpeciesName } from "#app/ui/SpeciesName.tsx";
 import { Prose } from "#app/ui/Prose.tsx";
 import type { Route } from "./+types/propose";
@@ -115,7 +114,7 @@ function Kinds({ page, proposal, revision }: { page: ProposePage; proposal: Prop
 function AlsoProposed({ page }: { page: ProposePage }) {
   if (page.proposed.length === 0) return null;
   return (
-    <Fine>
+    <p className="fine mb-6">
       Proposed already and not decided:{" "}
       {page.proposed.map((line, index) => (
         <span key={`${line.revisionId} ${line.what}`}>
@@ -125,6 +124,6 @@ function AlsoProposed({ page }: { page: ProposePage }) {
         </span>
       ))}
       .
-    </Fine>
+    </p>
   );
 }

@@ -77,8 +77,8 @@ export function ValueRow({
           {name.replace(/^standard /, "")} {place && <Stands place={place} />}
         </span>
       </legend>
-      <div className="grid items-start gap-x-6 sm:grid-cols-[minmax(0,2fr)_minmax(0,1fr)_minmax(0,1fr)]">
-        <div>
+      <div className="grid grid-cols-2 items-start gap-x-6 sm:grid-cols-[minmax(0,2fr)_minmax(0,1fr)_minmax(0,1fr)]">
+        <div className="col-span-2 sm:col-span-1">
           <Field field={value} label="Value" autoComplete="off" />
           <Readings form={form} field={value.name} />
         </div>

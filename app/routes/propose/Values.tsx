@@ -43,16 +43,7 @@ export function ValuesForm({ page, revision, reply, property }: FormProps & { pr
       </Section>
       <Section head="Where it comes from">
         <SourceChoice form={form} sources={page.sources} />
-        <DraftFields
-          form={form}
-          drafts={page.drafts}
-          revision={revision}
-          title={
-            property === null
-              ? `Values of ${page.species.key}`
-              : `${propertyInfo[property].symbol} of ${page.species.key}`
-          }
-        />
+        <DraftFields form={form} drafts={page.drafts} revision={revision} title={titleOf(page.species.key, property)} />
       </Section>
       <Button kind="main" type="submit" name="intent" value="values" pending={pending} pendingLabel="Examining…">
         Propose and examine
@@ -67,4 +58,11 @@ function isTouched(form: FormState, property: Property): boolean {
       (form.typed(valueField(property, part)) ?? "") !== "" ||
       form.reply?.errors[valueField(property, part)] !== undefined,
   );
+}
+
+/** What a new draft is called unless somebody says otherwise. */
+function titleOf(key: string, property: Property | null): string {
+  if (property === null) return `Values of ${key}`;
+  const name = propertyInfo[property].name.replace(/^standard /, "");
+  return `${name.charAt(0).toUpperCase()}${name.slice(1)} of ${key}`;
 }
