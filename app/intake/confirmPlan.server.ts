@@ -6,6 +6,7 @@ import { enqueueJob } from "#app/jobs/enqueue.server.ts";
 import { demand } from "#app/people/permissions.ts";
 import type { Acting } from "#app/people/person.ts";
 import { findChoosableSources } from "#app/sources/sources.queries.server.ts";
+import { DOI_IS_KNOWN, holderOfDoi } from "#app/sources/twins.ts";
 import {
   findSheetForUpdate,
   insertColumnPlan,
@@ -123,9 +124,7 @@ async function checkSources(
       }
       continue;
     }
-    const { doi } = choice.source;
-    const twin = doi === "" ? undefined : sources.find((one) => one.doi?.toLowerCase() === doi.toLowerCase());
-    if (twin) refuse("A source with this DOI is there already. Choose it from the list instead.", `${at}/doi`);
+    if (holderOfDoi(choice.source.doi, sources)) refuse(DOI_IS_KNOWN, `${at}/doi`);
   }
 }
 

@@ -32,7 +32,7 @@ export const meaningWords: Readonly<Record<ColumnMeans, string>> = {
   description: "description",
   name: "name",
   cas: "CAS number",
-  synonyms: "synonyms, with semicolons between",
+  synonyms: "synonyms",
   value: "value",
   uncertainty: "uncertainty",
   propertyName: "which quantity",

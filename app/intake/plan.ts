@@ -329,6 +329,8 @@ function guessColumn(head: HeadReading, sample: readonly string[], decimalComma:
       if (keys === 0) return guess("ignore", "the column is empty");
       return guess("sourceKey", `head; ${keys} different ${keys === 1 ? "key" : "keys"}, to be answered below`);
     }
+    case "synonyms":
+      return guess("synonyms", "head; semicolons stand between them");
     case "ignore":
     case null:
       break;

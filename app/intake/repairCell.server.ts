@@ -6,12 +6,14 @@ import { SHEET_LIMITS } from "./decode.ts";
 import {
   findRepairs,
   findRow,
+  findRowsByOutcome,
   findSheetForUpdate,
   insertRepair,
   type Sheet,
   updateRowsLeftOut,
 } from "./intake.queries.server.ts";
 import { ANSWER } from "./meaning.ts";
+import type { CellProblem } from "./readRows.ts";
 import { repairsByRow, rereadRows } from "./rereadRows.server.ts";
 import { sheetStateWords } from "./states.ts";
 
@@ -76,6 +78,42 @@ export async function repairCell(acting: Acting, sheetId: number, repair: CellRe
       objectId: sheetId,
       detail: { row: repair.row, column: repair.column, was: now, becomes: repair.becomes },
     });
+  });
+}
+
+/**
+ * Gives one answer to one question wherever it is asked: takes a repair that a row offers, and the same in every other
+ * refused row with the same problem that offers it too.
+ * @returns how many rows were mended
+ * @throws Refused when the row does not ask this any more
+ */
+export async function repairAlike(acting: Acting, sheetId: number, repair: Omit<CellRepair, "was">): Promise<number> {
+  demand(acting, "sheet:work");
+  return act(acting, async ({ trx, record }) => {
+    const sheet = await readSheetForUpdate(sheetId, trx);
+    const refused = await findRowsByOutcome(sheetId, "refused", { after: 0, limit: SHEET_LIMITS.rows }, trx);
+    const asks = (problem: CellProblem): boolean =>
+      problem.repairs.some((one) => one.column === repair.column && one.text === repair.becomes);
+    const question = refused.find((row) => row.number === repair.row)?.problems.find(asks);
+    if (!question) throw new Refused(`Row ${repair.row} does not ask this any more. Look at it again.`);
+    const alike = refused.filter(
+      (row) => row.leftOutAt === null && row.problems.some((one) => one.sentence === question.sentence && asks(one)),
+    );
+    const numbers = alike.map((row) => row.number);
+    const repairs = repairsByRow(await findRepairs(sheetId, numbers, trx));
+    for (const row of alike) {
+      const original = repair.column === ANSWER ? "" : (row.cells[repair.column] ?? "");
+      const was = repairs.get(row.number)?.get(repair.column) ?? original;
+      const { column, becomes } = repair;
+      await insertRepair({ sheetId, row: row.number, column, was, becomes, by: acting.person.id }, trx);
+    }
+    await rereadRows(sheet, numbers, trx);
+    record({
+      act: "sheet.cell-repaired",
+      objectId: sheetId,
+      detail: { rows: numbers, column: repair.column, becomes: repair.becomes },
+    });
+    return numbers.length;
   });
 }
 

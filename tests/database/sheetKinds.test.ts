@@ -5,11 +5,11 @@ import { Invalid, Refused } from "#app/http/errors.ts";
 import { buildRevision } from "#app/intake/buildRevision.server.ts";
 import { chooseEncoding } from "#app/intake/chooseEncoding.server.ts";
 import { reopenPlan } from "#app/intake/confirmPlan.server.ts";
-import { countRows, findRow, findRowsByOutcome, findSheet } from "#app/intake/intake.queries.server.ts";
+import { countRows, findRepairs, findRow, findRowsByOutcome, findSheet } from "#app/intake/intake.queries.server.ts";
 import { ANSWER } from "#app/intake/meaning.ts";
 import { readSheet } from "#app/intake/readSheet.server.ts";
 import { receiveSheet } from "#app/intake/receiveSheet.server.ts";
-import { leaveRowsOut, repairCell } from "#app/intake/repairCell.server.ts";
+import { leaveRowsOut, repairAlike, repairCell } from "#app/intake/repairCell.server.ts";
 import { findSheetPage } from "#app/intake/sheetPage.server.ts";
 import type { Acting } from "#app/people/person.ts";
 import { findLines, type LineRow } from "#app/review/review.queries.server.ts";
@@ -242,5 +242,24 @@ describe("names and CAS numbers", () => {
     expect((await refusedIn(id)).map((row) => [row.number, row.problems[0]?.sentence])).toEqual([
       [3, expect.stringContaining("Row 2 calls H2O(g) steam, this one water")],
     ]);
+  });
+});
+
+describe("a question that several rows ask", () => {
+  test("is answered once for all of them, and only for them", async () => {
+    const id = await sheetRead(steward, {
+      name: "again.csv",
+      bytes: bytes(
+        "formula,phase,property,value,unit\nHg2+,aq,S,-36.2,J/(mol K)\nHg2+,aq,dHf,170.2,kJ/mol\nSO42-,aq,S,18.5,J/(mol K)\n",
+      ),
+    });
+    expect(await repairAlike(steward, id, { row: 2, column: 0, becomes: "Hg+2" })).toBe(2);
+    expect((await refusedIn(id)).map((row) => row.number)).toEqual([4]);
+    expect(await findRepairs(id, null, appDatabase())).toMatchObject([
+      { row: 2, was: "Hg2+", becomes: "Hg+2", by: "S. Steward" },
+      { row: 3, was: "Hg2+", becomes: "Hg+2" },
+    ]);
+    await expect(repairAlike(steward, id, { row: 2, column: 0, becomes: "Hg+2" })).rejects.toBeInstanceOf(Refused);
+    await expect(repairAlike(steward, id, { row: 4, column: 0, becomes: "Hg+2" })).rejects.toBeInstanceOf(Refused);
   });
 });

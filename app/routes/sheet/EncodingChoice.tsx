@@ -42,25 +42,27 @@ export function EncodingChoice({ page: { sheet } }: { page: SheetPage }) {
     );
   }
   return (
-    <Note kind="look" word="encoding">
-      <p>
-        Read as {dialect.encoding}: {guessed.why}. Nothing in the bytes proves it; the signs of the sheet show whether
-        it is right.
-      </p>
-      {guessed.signs.length > 0 && (
-        <Fine>
-          {guessed.signs.map(({ sign, row }, index) => (
-            <span key={sign} className="mr-3 whitespace-nowrap">
-              <b className="text-ink">
-                <SheetText text={sign} />
-              </b>{" "}
-              row {row}
-              {index < guessed.signs.length - 1 && ","}
-            </span>
-          ))}
-        </Fine>
-      )}
-      {form}
-    </Note>
+    <div className="mb-6">
+      <Note kind="look" word="encoding">
+        <p>
+          Read as {dialect.encoding}: {guessed.why}. Nothing in the bytes proves it; the signs of the sheet show whether
+          it is right.
+        </p>
+        {guessed.signs.length > 0 && (
+          <Fine>
+            {guessed.signs.map(({ sign, row }, index) => (
+              <span key={sign} className="mr-3 whitespace-nowrap">
+                <b className="text-ink">
+                  <SheetText text={sign} />
+                </b>{" "}
+                row {row}
+                {index < guessed.signs.length - 1 && ","}
+              </span>
+            ))}
+          </Fine>
+        )}
+        {form}
+      </Note>
+    </div>
   );
 }

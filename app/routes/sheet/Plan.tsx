@@ -32,6 +32,9 @@ import { SheetText } from "./SheetText.tsx";
 
 type Column = SheetPage["columns"][number];
 
+/** Meanings of a sheet that says what species are called. */
+const NAMING: ReadonlySet<string> = new Set(["name", "cas", "synonyms"]);
+
 /** What the columns hold, to be confirmed: one choice a column, what holds for the whole sheet, and the source. */
 export function PlanForm({ page, failed }: { page: SheetPage; failed: SheetOutcome | undefined }) {
   const typed = failed?.typed;
@@ -39,9 +42,12 @@ export function PlanForm({ page, failed }: { page: SheetPage; failed: SheetOutco
     (failed?.errors ?? []).filter((error) => error.pointer === pointer).map((error) => error.detail);
   const columnErrors = page.columns.map((_, index) => errorsAt(`/columns/${index}`));
   const settings = settingFields(page, typed, errorsAt);
-  const [keyColumn, setKeyColumn] = useState(
-    page.columns.findIndex((column, index) => (typed?.[meansField(index)] ?? meaningValue(column)) === "sourceKey"),
+  const [meanings, setMeanings] = useState(
+    page.columns.map((column, index) => typed?.[meansField(index)] ?? meaningValue(column)),
   );
+  const keyColumn = meanings.indexOf("sourceKey");
+  // What is asked of values is not asked of a sheet that only says what species are called.
+  const valued = meanings.some(takesUnit) || !meanings.some((meaning) => NAMING.has(meaning));
   const source = sourceFields(page, typed, errorsAt);
   const keys = keyColumn === -1 ? [] : keyFields(page, keyColumn, typed, errorsAt);
   const pending = usePending("intent", "confirm");
@@ -55,7 +61,7 @@ export function PlanForm({ page, failed }: { page: SheetPage; failed: SheetOutco
             (column, index) =>
               [plainField(meansField(index), { errors: columnErrors[index] ?? [] }), column.name] as const,
           ),
-          ...settings.map(({ field, label }) => [field, label] as const),
+          ...(valued ? settings : []).map(({ field, label }) => [field, label] as const),
           ...keys.map(({ key, choice }) => [choice, `Source of ${key}`] as const),
           ...keys.flatMap(({ described }) => described.map(({ field, label }) => [field, label] as const)),
           [source.choice, keyColumn === -1 ? "Source" : "Source of rows without a key"],
@@ -81,10 +87,7 @@ export function PlanForm({ page, failed }: { page: SheetPage; failed: SheetOutco
               index={index}
               errors={columnErrors[index] ?? []}
               typed={typed}
-              onMeaning={(meaning) => {
-                if (meaning === "sourceKey") setKeyColumn(index);
-                else if (keyColumn === index) setKeyColumn(-1);
-              }}
+              onMeaning={(meaning) => setMeanings((now) => now.map((one, at) => (at === index ? meaning : one)))}
             />
           ))}
         </tbody>
@@ -94,37 +97,45 @@ export function PlanForm({ page, failed }: { page: SheetPage; failed: SheetOutco
           <Prose text={notice} />
         </Fine>
       ))}
-      <Columns>
-        <Section head="The whole sheet">
-          {settings.map(({ field, label, hint, options }) =>
-            options ? (
-              <Select key={field.name} field={field} label={label} options={options} hint={hint} />
-            ) : (
-              <Field key={field.name} field={field} label={label} hint={hint} />
-            ),
-          )}
-        </Section>
-        <Section head="Where the values come from">
-          {keys.length > 0 && (
-            <>
-              <Fine>
-                Each row names its source in <SheetText text={page.columns[keyColumn]?.name ?? ""} />. The rows of a key
-                without an answer are refused.
-              </Fine>
-              {keys.map((key) => (
-                <KeyAnswer
-                  key={`${keyColumn} ${key.key}`}
-                  name={key.key}
-                  choice={key.choice}
-                  described={key.described}
-                  options={source.options}
-                />
-              ))}
-            </>
-          )}
-          <SourceChoiceFields {...source} byKey={keys.length > 0} />
-        </Section>
-      </Columns>
+      {valued ? (
+        <Columns>
+          <Section head="The whole sheet">
+            {settings.map(({ field, label, hint, options }) =>
+              options ? (
+                <Select key={field.name} field={field} label={label} options={options} hint={hint} />
+              ) : (
+                <Field key={field.name} field={field} label={label} hint={hint} />
+              ),
+            )}
+          </Section>
+          <Section head="Where the values come from">
+            {keys.length > 0 && (
+              <>
+                <p className="mb-4">
+                  Each row names its source in the column “
+                  <SheetText text={page.columns[keyColumn]?.name ?? ""} />
+                  ”. The rows of a key without an answer are refused.
+                </p>
+                {keys.map((key) => (
+                  <KeyAnswer
+                    key={`${keyColumn} ${key.key}`}
+                    name={key.key}
+                    choice={key.choice}
+                    described={key.described}
+                    options={source.options}
+                  />
+                ))}
+              </>
+            )}
+            <SourceChoiceFields {...source} byKey={keys.length > 0} />
+          </Section>
+        </Columns>
+      ) : (
+        <Fine>
+          No column holds values, so nothing more is asked: names, CAS numbers and synonyms become lines of what species
+          are called.
+        </Fine>
+      )}
       <DecisionBar label="Confirm" end="nothing enters the table before it was reviewed">
         <Button kind="main" name="intent" value="confirm" pending={pending} pendingLabel="Confirming…">
           Read the rows

@@ -90,6 +90,7 @@ function Asides({ rows, page }: { rows: PageRows; page: SheetPage }) {
 }
 
 function RefusedTable({ page, rows, open }: { page: SheetPage; rows: PageRows; open: boolean }) {
+  const asked = askedTwice(rows.refused);
   const shown = page.columns.flatMap((column, index) => (column.means === "ignore" ? [] : [{ ...column, index }]));
   return (
     <>
@@ -109,7 +110,7 @@ function RefusedTable({ page, rows, open }: { page: SheetPage; rows: PageRows; o
         </thead>
         <tbody>
           {rows.refused.map((row) => (
-            <Refused key={row.number} row={row} shown={shown} page={page} open={open} />
+            <Refused key={row.number} row={row} shown={shown} page={page} open={open} asked={asked} />
           ))}
         </tbody>
       </Table>
@@ -126,6 +127,21 @@ function RefusedTable({ page, rows, open }: { page: SheetPage; rows: PageRows; o
   );
 }
 
+const questionOf = (sentence: string, repair: Repair): string => `${repair.column} ${repair.text} ${sentence}`;
+
+/** The questions that more than one of these rows asks, so that one answer can settle them all. */
+function askedTwice(rows: readonly RefusedRow[]): ReadonlySet<string> {
+  const counts = new Map<string, number>();
+  for (const { problems, leftOut } of rows) {
+    if (leftOut) continue;
+    const own = new Set(
+      problems.flatMap(({ sentence, repairs }) => repairs.map((repair) => questionOf(sentence, repair))),
+    );
+    for (const question of own) counts.set(question, (counts.get(question) ?? 0) + 1);
+  }
+  return new Set([...counts].filter(([, n]) => n > 1).map(([question]) => question));
+}
+
 type ShownColumn = SheetPage["columns"][number] & { index: number };
 
 const isFigure = (means: ShownColumn["means"]): boolean =>
@@ -136,11 +152,14 @@ function Refused({
   shown,
   page,
   open,
+  asked,
 }: {
   row: RefusedRow;
   shown: readonly ShownColumn[];
   page: SheetPage;
   open: boolean;
+  /** Questions that several rows ask. */
+  asked: ReadonlySet<string>;
 }) {
   return (
     <>
@@ -182,6 +201,7 @@ function Refused({
                   row={row}
                   repair={repair}
                   isFormula={shown.some((one) => one.index === repair.column && one.means === "formula")}
+                  alike={asked.has(questionOf(problem.sentence, repair))}
                 />
               ))}
           </div>
@@ -275,39 +295,54 @@ function CellForm({ page, row, column, text }: { page: SheetPage; row: number; c
   );
 }
 
-/** A repair that is one press away. */
+/** A repair that is one press away; where other rows ask the same, one press more mends them all. */
 function RepairButton({
   page,
   row,
   repair,
   isFormula,
+  alike,
 }: {
   page: SheetPage;
   row: RefusedRow;
   repair: Repair;
   isFormula: boolean;
+  alike: boolean;
 }) {
   const was = repair.column === ANSWER ? (row.answer ?? "") : (row.cells[repair.column]?.text ?? "");
+  const mend = { sheetId: page.sheet.id, row: row.number, column: repair.column, was };
   return (
-    <MendForm
-      mend={{ sheetId: page.sheet.id, row: row.number, column: repair.column, was }}
-      className="mr-3 inline-block"
-    >
-      {(pending) => (
-        <>
-          <input type="hidden" name="becomes" value={repair.text} />
-          <Button kind="text" pending={pending}>
-            {isFormula ? (
-              <>
-                Take <Formula printed={repair.text} />
-              </>
-            ) : (
-              <Prose text={repair.label} />
-            )}
-          </Button>
-        </>
+    <>
+      <MendForm mend={mend} className="mr-3 inline-block">
+        {(pending) => (
+          <>
+            <input type="hidden" name="becomes" value={repair.text} />
+            <Button kind="text" pending={pending}>
+              {isFormula ? (
+                <>
+                  Take <Formula printed={repair.text} />
+                </>
+              ) : (
+                <Prose text={repair.label} />
+              )}
+            </Button>
+          </>
+        )}
+      </MendForm>
+      {alike && (
+        <MendForm mend={mend} className="mr-3 inline-block">
+          {(pending) => (
+            <>
+              <input type="hidden" name="becomes" value={repair.text} />
+              <input type="hidden" name="alike" value="yes" />
+              <Button kind="text" pending={pending} aria-label={`${repair.label}, in every row that asks this`}>
+                in every such row
+              </Button>
+            </>
+          )}
+        </MendForm>
       )}
-    </MendForm>
+    </>
   );
 }
 
@@ -327,6 +362,7 @@ function ReadTable({ rows }: { rows: PageRows }) {
   const more = rows.counts.read - rows.read.length;
   const keyed = rows.read.some((row) => row.sourceKey !== null);
   const valued = rows.counts.values > 0;
+  const converted = rows.read.some((row) => row.values.some((value) => value.note !== null));
   return (
     <Section head="What was read">
       <Table caption="The first rows that were read" className="max-w-[72rem]">
@@ -338,7 +374,7 @@ function ReadTable({ rows }: { rows: PageRows }) {
             <th scope="col">Species</th>
             <th scope="col">In the table</th>
             {valued && <th scope="col">Values, in the table’s units</th>}
-            {valued && <th scope="col">Converted</th>}
+            {converted && <th scope="col">Converted</th>}
             {keyed && <th scope="col">Source</th>}
           </tr>
         </thead>
@@ -360,7 +396,7 @@ function ReadTable({ rows }: { rows: PageRows }) {
                   ))}
                 </td>
               )}
-              {valued && (
+              {converted && (
                 <td className="text-soft">
                   <Conversions values={row.values} />
                 </td>

@@ -3,7 +3,7 @@ import { buildRevision } from "#app/intake/buildRevision.server.ts";
 import { chooseEncoding } from "#app/intake/chooseEncoding.server.ts";
 import { confirmPlan, reopenPlan, stopReading } from "#app/intake/confirmPlan.server.ts";
 import { readPlanForm } from "#app/intake/planForm.ts";
-import { leaveRowsOut, repairCell } from "#app/intake/repairCell.server.ts";
+import { leaveRowsOut, repairAlike, repairCell } from "#app/intake/repairCell.server.ts";
 import { findSheetPage } from "#app/intake/sheetPage.server.ts";
 import { paths } from "#app/paths.ts";
 import type { Acting } from "#app/people/person.ts";
@@ -27,6 +27,14 @@ function numberOf(form: FormData, name: string): number {
 /** Mends the cell that the form names. @returns what was done, in a sentence */
 export async function repairFrom(acting: Acting, sheetId: number, form: FormData): Promise<string> {
   const row = numberOf(form, "row");
+  if (textOf(form, "alike") !== "") {
+    const mended = await repairAlike(acting, sheetId, {
+      row,
+      column: numberOf(form, "column"),
+      becomes: textOf(form, "becomes"),
+    });
+    return `${mended} rows were read again.`;
+  }
   await repairCell(acting, sheetId, {
     row,
     column: numberOf(form, "column"),
