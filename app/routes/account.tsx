@@ -156,7 +156,9 @@ export default function AccountPage({ loaderData, actionData }: Route.ComponentP
           <tbody>
             {sessions.map((session) => (
               <tr key={session.id}>
-                <th scope="row">{session.here ? <b>This one</b> : agentInWords(session.agent)}</th>
+                <th scope="row" className="tight">
+                  {session.here ? <b>This one</b> : agentInWords(session.agent)}
+                </th>
                 <td className="tight">
                   <Time at={session.begunAt} withTime />
                 </td>

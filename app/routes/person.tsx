@@ -139,8 +139,8 @@ export default function PersonPageView({ loaderData, actionData }: Route.Compone
                   <td className="tight">
                     <Time at={entry.at} withTime />
                   </td>
-                  <td>{actInWords(entry.act)}</td>
-                  <td className="break-words">{entry.to}</td>
+                  <td className="tight">{actInWords(entry.act)}</td>
+                  <td className="tight">{entry.to}</td>
                 </tr>
               ))}
             </tbody>

@@ -220,9 +220,10 @@ function Row({ entry }: { entry: Entry }) {
         )}
         {entry.keyName && <span className="block text-soft">with the key “{entry.keyName}”</span>}
       </td>
-      <td>{actInWords(entry.act)}</td>
-      <td>
-        {entry.objectKind} {to ? <Link to={to}>{name}</Link> : <span className="break-all text-soft">{name}</span>}
+      <td className="tight">{actInWords(entry.act)}</td>
+      <td className={to ? "tight" : undefined}>
+        {!own && <>{entry.objectKind} </>}
+        {to ? <Link to={to}>{name}</Link> : <span className="break-all text-soft">{name}</span>}
       </td>
       <td className="wide">
         {open.length > 0 && (

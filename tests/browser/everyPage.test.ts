@@ -37,6 +37,7 @@ const ASKED_FOR = 8;
 const NOT_BY_LINKS: Readonly<Record<string, string>> = {
   "/reset/:token": "stands in a letter",
   "/invitation/:token": "stands in a letter",
+  "/address/:token": "stands in a letter",
   "/sign-out": "a button",
   "/ui": "development",
   "/inbox": "printed by the start command, and closed where letters are really sent",
