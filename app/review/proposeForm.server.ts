@@ -7,6 +7,7 @@ import type { Acting } from "#app/people/person.ts";
 import { newSourceId } from "#app/sources/newId.server.ts";
 import { describedSource, readSourceForm } from "#app/sources/sourceForm.ts";
 import { findChoosableSources } from "#app/sources/sources.queries.server.ts";
+import { DOI_IS_KNOWN, holderOfDoi } from "#app/sources/twins.ts";
 import { readIdentity } from "#app/species/identityForm.ts";
 import { findCandidates, lockNaming, type SpeciesCandidate } from "#app/species/species.queries.server.ts";
 import { type Property, PROPERTIES } from "#app/thermo/property.ts";
@@ -94,17 +95,22 @@ async function sourceOf(
     wrong(trouble, "source", "Say where it comes from.");
     return null;
   }
+  const edition = (await findNewestEdition(trx))?.number ?? 0;
+  const sources = await findChoosableSources(edition, trx);
   if (chosen === NEW_SOURCE) {
     const described = readSourceForm((field) => typed(`source.${field}`));
     if (!described.ok) {
       for (const { field, detail } of described.errors) wrong(trouble, `source.${field}`, detail);
       return null;
     }
+    if (holderOfDoi(described.source.doi, sources)) {
+      wrong(trouble, "source.doi", DOI_IS_KNOWN);
+      return null;
+    }
     const id = newSourceId();
     return { id, isNew: true, line: sourceLine(id, { kind: "source", ...describedSource(described.source) }) };
   }
-  const edition = (await findNewestEdition(trx))?.number ?? 0;
-  const known = (await findChoosableSources(edition, trx)).find((one) => one.sourceId === chosen);
+  const known = sources.find((one) => one.sourceId === chosen);
   if (!known) {
     wrong(trouble, "source", "This source is not proposed any more. Choose another, or describe it anew.");
     return null;

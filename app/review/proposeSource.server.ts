@@ -9,7 +9,7 @@ import type { Acting } from "#app/people/person.ts";
 import { newSourceId } from "#app/sources/newId.server.ts";
 import { type DescribedSource, describedSource, type NewSource } from "#app/sources/sourceForm.ts";
 import { type ChoosableSource, findChoosableSources } from "#app/sources/sources.queries.server.ts";
-import { type Twin, twinsOf } from "#app/sources/twins.ts";
+import { holderOfDoi, type Twin, twinsOf } from "#app/sources/twins.ts";
 import { findWritableRevisions } from "./propose.queries.server.ts";
 import { proposeLines } from "./propose.server.ts";
 import { findWaitingForPlace } from "./review.queries.server.ts";
@@ -50,7 +50,7 @@ export async function proposeNewSource(
 ): Promise<NewSourceOutcome> {
   demand(acting, "revision:write");
   const described = describedSource(source);
-  const twins = await findTwins(described, null);
+  const twins = twinsOf(described, await findOthers(null));
   if (twins.length > 0 && (!anyway || twins.some((twin) => twin.because === "the same DOI"))) {
     return { kind: "twins", twins };
   }
@@ -73,14 +73,10 @@ export async function proposeNewSource(
   return { kind: "proposed", revisionId, sourceId };
 }
 
-/** Known sources that a description may stand for; `except` is the one that is being mended. */
-async function findTwins(described: DescribedSource, except: string | null): Promise<Twin<ChoosableSource>[]> {
+/** The sources that stand or are proposed; `except` is the one that is being mended. */
+async function findOthers(except: string | null): Promise<ChoosableSource[]> {
   const edition = (await findNewestEdition(database()))?.number ?? 0;
-  const known = await findChoosableSources(edition, database());
-  return twinsOf(
-    described,
-    known.filter((one) => one.sourceId !== except),
-  );
+  return (await findChoosableSources(edition, database())).filter((one) => one.sourceId !== except);
 }
 
 /** A source as it is cited now, or will be once what waits is published. */
@@ -153,9 +149,9 @@ export async function proposeMendedSource(
     throw new Invalid(sentence, [{ pointer: "/reason", detail: sentence }]);
   }
   const described = describedSource(mended.source, before.citation);
-  const [twin] = (await findTwins(described, mended.sourceId)).filter((one) => one.because === "the same DOI");
-  if (twin) {
-    const sentence = `Another source has this DOI already (${twin.source.sourceId}).`;
+  const holder = holderOfDoi(described.doi, await findOthers(mended.sourceId));
+  if (holder) {
+    const sentence = `Another source has this DOI already (${holder.sourceId}).`;
     throw new Invalid(sentence, [{ pointer: "/doi", detail: sentence }]);
   }
   return proposeLines(acting, {

@@ -211,3 +211,20 @@ export function dayRead(citation: Citation): string {
   const day: unknown = Array.isArray(accessed) ? accessed[0] : undefined;
   return Array.isArray(day) ? day.map((part) => text(part).padStart(2, "0")).join("-") : "";
 }
+
+/** Parts shorter than this must be a whole word, or nearly every text would hold them; a number as short says nothing. */
+const SHORTEST_PART = 3;
+
+/** Whether a text holds every word that was typed, in any order and any case. */
+export function holdsWords(text: string, typed: string): boolean {
+  const low = text.toLowerCase();
+  const words = new Set(low.split(/[^\p{L}\p{N}]+/u));
+  const parts = typed
+    .toLowerCase()
+    .split(/\s+/)
+    .filter((part) => part !== "");
+  return (
+    parts.length > 0 &&
+    parts.every((part) => (part.length < SHORTEST_PART ? !/^\d+$/.test(part) && words.has(part) : low.includes(part)))
+  );
+}

@@ -14,17 +14,27 @@ export interface Twin<Source extends KnownSource> {
   because: "the same DOI" | "the same title, year and first author";
 }
 
+/** The known source that has this DOI; a DOI names one work, so no two sources share one. */
+export function holderOfDoi<Source extends Pick<KnownSource, "doi">>(
+  doi: string | null,
+  known: readonly Source[],
+): Source | undefined {
+  if (doi === null || doi === "") return undefined;
+  const asked = comparableDoi(doi);
+  return known.find((source) => source.doi !== null && comparableDoi(source.doi) === asked);
+}
+
+/** What is said where a source with a known DOI is described and the known one could be chosen from a list. */
+export const DOI_IS_KNOWN = "A source with this DOI is there already. Choose it from the list instead.";
+
 /** The known sources that the described one may be: a DOI names one work, and so nearly always does a signed title. */
 export function twinsOf<Source extends KnownSource>(
   described: { citation: Citation; doi: string | null },
   known: readonly Source[],
 ): Twin<Source>[] {
-  const doi = described.doi === null ? null : comparableDoi(described.doi);
   const name = nameOf(described.citation);
   return known.flatMap((source): Twin<Source>[] => {
-    if (doi !== null && source.doi !== null && comparableDoi(source.doi) === doi) {
-      return [{ source, because: "the same DOI" }];
-    }
+    if (holderOfDoi(described.doi, [source])) return [{ source, because: "the same DOI" }];
     return nameOf(source.citation) === name ? [{ source, because: "the same title, year and first author" }] : [];
   });
 }
