@@ -9,6 +9,9 @@ export interface ReadQuantity {
   unit: Unit;
 }
 
+/** As long as any number and any unit. */
+const LONGEST_CELL = 140;
+
 /** What may stand behind the unit and belongs to the number: `(−285.830 ± 0.040) kJ/mol, k = 2`. */
 const COVERAGE = /[\s,;]*\(?\s*(?:k\s*=\s*\d|[12]\s?(?:σ|sigma|s\.?d\.?)|95\s?%)\s*\)?$/i;
 
@@ -17,8 +20,8 @@ const COVERAGE = /[\s,;]*\(?\s*(?:k\s*=\s*\d|[12]\s?(?:σ|sigma|s\.?d\.?)|95\s?%
  * column that names no unit; a text without a unit is refused, so that no unit is ever taken for granted.
  */
 export function readQuantity(text: string, options: NumberOptions = {}): Reading<ReadQuantity> {
-  if (isTooLong(text)) return refused(`${quote(text)} is too long for a number with its unit.`);
-  const marked = markedText(text).trim();
+  const marked = isTooLong(text) ? text : markedText(text).trim();
+  if (marked.length > LONGEST_CELL) return refused(`${quote(text)} is too long for a number with its unit.`);
   const coverage = COVERAGE.exec(marked)?.[0] ?? "";
   const plain = withoutFirstUnit(marked.slice(0, marked.length - coverage.length));
   let unreadUnit: string | undefined;

@@ -49,6 +49,33 @@ test("at least 250 spellings are read and at least 80 refused or asked about, no
   expect(new Set([...accepted, ...others]).size).toBe(accepted.length + others.length);
 });
 
+test("no reader throws or dawdles, whatever is repeated", () => {
+  const pieces = [
+    "\\ce{",
+    "<b>",
+    "(",
+    "1 ",
+    "1,",
+    "H2",
+    "·5H2O",
+    "[1]",
+    "_{",
+    "kJ ",
+    "/mol",
+    "e1",
+    "²",
+    "±",
+    "k=",
+    "$",
+  ];
+  for (const notation of notations) {
+    for (const piece of pieces) {
+      expect(["read", "ambiguous", "refused"]).toContain(readAs[notation](piece.repeat(120).slice(0, 480)).outcome);
+      expect(readAs[notation](piece.repeat(400)).outcome).toBe("refused");
+    }
+  }
+});
+
 test("each group says why", () => {
   const groups = notations.flatMap((notation) => [...READ[notation], ...NOT_READ[notation]]);
   expect(groups.filter(({ why, rows }) => why.length < 3 || rows.length === 0)).toEqual([]);
