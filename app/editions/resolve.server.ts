@@ -1,7 +1,7 @@
 import { database } from "#app/db/database.server.ts";
 import { NotFound } from "#app/http/errors.ts";
-import { quote, type Reading } from "#app/thermo/reading.ts";
-import { formatKey, isSameSpecies, readKey, type SpeciesIdentity } from "#app/thermo/speciesKey.ts";
+import { quote } from "#app/thermo/reading.ts";
+import { formatKey, isSameSpecies, readKey } from "#app/thermo/speciesKey.ts";
 import {
   type DetailAsOf,
   type Edition,
@@ -54,7 +54,11 @@ export async function resolveSpecies(n: number, asked: string): Promise<DetailAs
   const [exact] = await findDetailsAsOf(n, { keys: [asked] }, db);
   if (exact) return exact;
   const spellings = [...new Set([asked, plusKept(asked)])];
-  const identities = spellings.flatMap((spelling) => candidatesOf(readKey(spelling)));
+  const readings = spellings.map(readKey);
+  // What may be two species is asked back, even where only one of them stands here: it may not be the one that was meant.
+  const doubt = readings.find((reading) => reading.outcome === "ambiguous");
+  if (doubt) throw new NotFound(`Edition ${n} has no species of the key ${quote(asked)}. ${doubt.sentence}`);
+  const identities = readings.flatMap((reading) => (reading.outcome === "read" ? [reading.value] : []));
   const canonical = identities.map(formatKey);
   const byKey = await findDetailsAsOf(n, { keys: [...spellings, ...canonical] }, db);
   if (byKey.length === 1 && byKey[0]) return byKey[0];
@@ -73,10 +77,6 @@ export async function resolveSpecies(n: number, asked: string): Promise<DetailAs
       alike.map((detail) => detail.key),
     ),
   );
-}
-
-function candidatesOf(reading: Reading<SpeciesIdentity>): readonly SpeciesIdentity[] {
-  return reading.outcome === "read" ? [reading.value] : reading.outcome === "ambiguous" ? reading.candidates : [];
 }
 
 function missing(n: number, asked: string, near: readonly string[]): string {

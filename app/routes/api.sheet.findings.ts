@@ -1,9 +1,8 @@
-import { nextLink, numbersOf, placeOf } from "./api/answer.server.ts";
+import { listAnswer, numbersOf, placeOf } from "./api/answer.server.ts";
 import { apiPaths, writeCursor } from "./api/shape.ts";
 import { listSheetFindings } from "./api/sheetContract.ts";
 import { apiSheetFinding } from "./api/sheetShape.ts";
 import { answering, apiRoute } from "#app/http/api.server.ts";
-import { jsonAnswer } from "#app/http/caching.server.ts";
 import { numberInPath } from "#app/http/respond.server.ts";
 import { type FindingPlace, followFindings } from "#app/intake/programSheet.server.ts";
 import { requireKey } from "#app/people/apiKey.server.ts";
@@ -24,11 +23,8 @@ const api = apiRoute(
     const last = findings.at(-1);
     const place = last && (last.kind === "problem" ? [String(last.row), String(last.index)] : ["0", last.id]);
     const next = more && place ? writeCursor(place) : null;
-    return jsonAnswer(
-      request,
-      { sheet, findings: findings.map((finding) => apiSheetFinding(finding, nameOf)), next },
-      { keeping: "asked", headers: next ? { Link: nextLink(request, apiPaths.sheetFindings(sheet), next) } : {} },
-    );
+    const body = { sheet, findings: findings.map((finding) => apiSheetFinding(finding, nameOf)) };
+    return listAnswer(request, body, { next, path: apiPaths.sheetFindings(sheet) });
   }),
 );
 

@@ -1,9 +1,8 @@
-import { nextLink, numbersOf, placeOf } from "./api/answer.server.ts";
+import { listAnswer, numbersOf, placeOf } from "./api/answer.server.ts";
 import { apiPaths, writeCursor } from "./api/shape.ts";
 import { listSheetRows } from "./api/sheetContract.ts";
 import { apiSheetRow } from "./api/sheetShape.ts";
 import { answering, apiRoute } from "#app/http/api.server.ts";
-import { jsonAnswer } from "#app/http/caching.server.ts";
 import { numberInPath } from "#app/http/respond.server.ts";
 import { followRows } from "#app/intake/programSheet.server.ts";
 import { requireKey } from "#app/people/apiKey.server.ts";
@@ -16,11 +15,8 @@ const api = apiRoute(
     const { rows, more, nameOf } = await followRows(acting, sheet, { outcome: outcome ?? null, after, limit });
     const last = rows.at(-1);
     const next = more && last ? writeCursor([String(last.number)]) : null;
-    return jsonAnswer(
-      request,
-      { sheet, rows: rows.map((row) => apiSheetRow(row, nameOf)), next },
-      { keeping: "asked", headers: next ? { Link: nextLink(request, apiPaths.sheetRows(sheet), next) } : {} },
-    );
+    const body = { sheet, rows: rows.map((row) => apiSheetRow(row, nameOf)) };
+    return listAnswer(request, body, { next, path: apiPaths.sheetRows(sheet) });
   }),
 );
 

@@ -41,10 +41,17 @@ describe("an answer that is other than the contract says is found", () => {
     Object.fromEntries(Object.entries(right).filter(([one]) => one !== name));
   const check = (status: number, text: string, headers: Record<string, string>, address = "/api/v1/editions") =>
     new Contract(document).check("GET", address, new Response(text, { status, headers }));
-  const problem = JSON.stringify({ type: "https://x.example/problems/a", title: "a", status: 404, detail: "b" });
+  const problem = JSON.stringify({
+    type: "https://x.example/problems/not-found",
+    title: "Not found",
+    status: 404,
+    detail: "There is nothing here.",
+  });
+  const asProblem = { "Content-Type": "application/problem+json" };
 
   test("as it should be, it passes", async () => {
     await expect(check(200, body, right)).resolves.toBeUndefined();
+    await expect(check(404, problem, asProblem, "/api/v1/nothing")).resolves.toBeUndefined();
   });
 
   test.each<[string, number, string, Record<string, string>, string?]>([
@@ -58,13 +65,9 @@ describe("an answer that is other than the contract says is found", () => {
     ["a body that is no JSON", 200, "<!doctype html>", right],
     ["an unknown address that answers", 200, body, right, "/api/v1/nothing"],
     ["an unknown address without a problem document", 404, body, right, "/api/v1/nothing"],
-    [
-      "a problem document of another status",
-      404,
-      problem.replace("404", "400"),
-      { "Content-Type": "application/problem+json" },
-      "/api/v1/nothing",
-    ],
+    ["a problem of another status", 404, problem.replace("404", "400"), asProblem, "/api/v1/nothing"],
+    ["a problem of another title", 404, problem.replace("Not found", "Gone"), asProblem, "/api/v1/nothing"],
+    ["a problem whose page is none", 404, problem.replace("not-found", "lost"), asProblem, "/api/v1/nothing"],
   ])("%s", async (_what, status, text, headers, address) => {
     await expect(check(status, text, headers, address)).rejects.toThrow();
   });

@@ -120,6 +120,15 @@ describe("each species of the demo is the same one", { timeout: 240_000 }, () =>
     );
   });
 
+  test("or none, where a key may be two of them", async () => {
+    for (const two of ["Hg2+(aq)", "SO42-(aq)"]) {
+      const answer = await ask(`/editions/2/species/${encodeURIComponent(two)}`);
+      expect(answer.status).toBe(404);
+      expect(((await answer.json()) as { detail: string }).detail).toContain("has two readings");
+      expect(await lookUp(2, { species: [two] })).toMatchObject([{ outcome: "ambiguous" }]);
+    }
+  });
+
   test("by ?key=", async () => {
     await inEveryEdition((n, species) =>
       wrongIn(species, async ({ key: one, speciesId }) => {

@@ -475,8 +475,11 @@ describe("news", () => {
     }
   });
 
+  test("are all editions where none is known", async () => {
+    expect(await since("")).toEqual(await since("?since=0"));
+  });
+
   test.each([
-    ["", "/since"],
     ["?since=-1", "/since"],
     ["?since=01", "/since"],
     ["?since=current", "/since"],

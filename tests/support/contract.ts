@@ -2,6 +2,7 @@ import { Ajv2020, type ValidateFunction } from "ajv/dist/2020.js";
 import addFormats from "ajv-formats";
 import { expect } from "vitest";
 import { API_BASE } from "#app/http/apiContract.ts";
+import { problemKinds } from "#app/http/problem.ts";
 
 interface Described {
   headers?: Record<string, { required?: boolean; schema: object }>;
@@ -143,7 +144,13 @@ export class Contract {
     }
     const body: unknown = /json$/.test(mediaType) ? JSON.parse(text) : text;
     expect(this.#errorsOf(schema, body), where).toEqual([]);
-    if (mediaType === PROBLEM) expect((body as { status: unknown }).status, where).toBe(answer.status);
+    if (mediaType === PROBLEM) {
+      // The page that explains this kind of problem, under the same title.
+      const { type, title, status } = body as { type: string; title: string; status: number };
+      const kind = problemKinds[/\/problems\/([a-z-]+)$/.exec(type)?.[1] ?? ""];
+      expect({ title, status }, where).toEqual({ title: kind?.title, status: answer.status });
+      expect(kind?.status, where).toBe(answer.status);
+    }
   }
 
   #errorsOf(pointer: string, value: unknown): unknown[] {

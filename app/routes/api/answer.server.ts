@@ -2,7 +2,7 @@ import type { Edition } from "#app/editions/editions.queries.server.ts";
 import type { ResolvedEdition } from "#app/editions/resolve.server.ts";
 import { csvFormat, fileName, type TableFormat } from "#app/editions/tableFile.ts";
 import { digestTableFile, streamTableFile } from "#app/editions/tableFile.server.ts";
-import { bodyDigest, type Keeping, keptAnswer } from "#app/http/caching.server.ts";
+import { bodyDigest, jsonAnswer, type Keeping, keptAnswer } from "#app/http/caching.server.ts";
 import { BadRequest, Invalid } from "#app/http/errors.ts";
 import { readCursor } from "./shape.ts";
 
@@ -30,6 +30,16 @@ export function nextLink(request: Request, path: string, cursor: string): string
   const query = new URL(request.url).searchParams;
   query.set("cursor", cursor);
   return `<${path}?${query.toString()}>; rel="next"`;
+}
+
+/** A page of a list that may change, with the way to the next one; `path` is the list's address. */
+export function listAnswer(
+  request: Request,
+  body: object,
+  { next, path }: { next: string | null; path: string },
+): Response {
+  const headers: Record<string, string> = next === null ? {} : { Link: nextLink(request, path, next) };
+  return jsonAnswer(request, { ...body, next }, { keeping: "asked", headers });
 }
 
 /**

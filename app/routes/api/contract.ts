@@ -668,10 +668,14 @@ export const listChanges = operation({
   parameters: NONE,
   query: z.object({
     since: z
-      .string("Say since which edition: a number, or 0 for all.")
+      .string()
       .regex(/^(?:0|[1-9]\d{0,8})$/, "Give the number of an edition, or 0 for all.")
-      .transform(Number)
-      .meta({ description: "Number of the edition that is known; 0 asks for all.", example: "1" }),
+      .optional()
+      .transform((text) => Number(text ?? 0))
+      .meta({
+        description: "Number of the edition that is known; all editions when left out.",
+        param: { example: "1" },
+      }),
   }),
   answer: {
     description: "The editions.",
