@@ -542,7 +542,6 @@ describe("values that belong to another species", () => {
       phase: "l",
       label: "ethanol",
       name: "ethanol",
-      cas: "64-17-5",
       reason: "The value is that of the liquid.",
       title: "The liquid",
     });
