@@ -336,12 +336,9 @@ function guessDelimiter(text: string): Delimiter | null {
   return best?.delimiter ?? null;
 }
 
-/** A longer text is no head; it is not looked into, because that would take more than its share of time. */
-const LONGEST_HEAD = 300;
-
 /** Whether at least two cells are heads that mean something. */
 function namesColumns(cells: readonly string[]): boolean {
-  return cells.filter((cell) => cell.length <= LONGEST_HEAD && readHead(cell).means !== null).length >= 2;
+  return cells.filter((cell) => readHead(cell).means !== null).length >= 2;
 }
 
 type Parsed = { outcome: "parsed"; rows: DecodedRow[] } | { outcome: "refused"; sentence: string };

@@ -102,3 +102,11 @@ test.each([
 ])("a long sheet's %j is %s", (text, property) => {
   expect(propertyOf(text)).toBe(property);
 });
+
+test("a text that is longer than any head names nothing, and takes no time to say so", () => {
+  const begun = performance.now();
+  for (const text of ["x".repeat(1_000_000), `dHf (kJ/mol)${" ".repeat(500_000)}`]) {
+    expect(readHead(text)).toMatchObject({ means: null });
+  }
+  expect(performance.now() - begun).toBeLessThan(1000);
+});

@@ -32,11 +32,15 @@ const NOTHING: HeadReading = {
   uncertaintyKind: null,
 };
 
+/** A longer text is no head. It is not looked into: the patterns below take time by the square of its length. */
+const LONGEST_HEAD = 300;
+
 /**
  * Reads a head in the spellings of sheets: `dHf (kcal)`, `ΔfH° / kJ mol⁻¹`, `enthalpyOfFormation_kJ_mol`, `S298`,
  * `u(ΔfH°)`, `±`, `CAS No.`. It never refuses: what it does not know stays null.
  */
 export function readHead(text: string): HeadReading {
+  if (text.length > LONGEST_HEAD) return NOTHING;
   const plain = plainText(text.replace(/[º⦵⊖˚]/g, "°").replace(/[∆Δ]/g, "d"))
     .replace(/\s+/g, " ")
     .trim();
