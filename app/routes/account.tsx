@@ -7,7 +7,6 @@ import { type FormReply, invalidReply, refusedReply } from "#app/http/formReply.
 import { requestContext } from "#app/http/requestContext.server.ts";
 import { forPage } from "#app/http/respond.server.ts";
 import { paths } from "#app/paths.ts";
-import { agentInWords } from "#app/people/agent.ts";
 import { addressForm, changePasswordForm, renameForm, sessionsForm } from "#app/people/forms.ts";
 import { PASSWORD_HINT } from "#app/people/passwordRules.ts";
 import { changePassword } from "#app/people/passwords.server.ts";
@@ -20,9 +19,8 @@ import { FormErrors } from "#app/ui/FormErrors.tsx";
 import { Leaf } from "#app/ui/Leaf.tsx";
 import { Columns, Lede, Section } from "#app/ui/Section.tsx";
 import { StatusLine } from "#app/ui/StatusLine.tsx";
-import { Table } from "#app/ui/Table.tsx";
-import { Time } from "#app/ui/Time.tsx";
 import type { Route } from "./+types/account";
+import { SessionsTable } from "./person/SessionsTable.tsx";
 
 export const meta: Route.MetaFunction = () => [{ title: "Account · Tablewright" }];
 
@@ -142,48 +140,7 @@ export default function AccountPage({ loaderData, actionData }: Route.ComponentP
           A session ends by itself twelve hours after its last use and seven days after signing in. End one that is not
           yours, then change your password.
         </Lede>
-        <Table caption="Sessions signed in with your account" even className="max-w-4xl">
-          <thead>
-            <tr>
-              <th scope="col">Browser</th>
-              <th scope="col">Signed in</th>
-              <th scope="col">Last used</th>
-              <th scope="col">
-                <span className="said">End</span>
-              </th>
-            </tr>
-          </thead>
-          <tbody>
-            {sessions.map((session) => (
-              <tr key={session.id}>
-                <th scope="row" className="tight">
-                  {session.here ? <b>This one</b> : agentInWords(session.agent)}
-                </th>
-                <td className="tight">
-                  <Time at={session.begunAt} withTime />
-                </td>
-                <td className="tight">
-                  <Time at={session.seenAt} withTime />
-                </td>
-                <td>
-                  {!session.here && (
-                    <Form method="post">
-                      <input type="hidden" name="session" value={session.id} />
-                      <Button
-                        kind="text"
-                        name="intent"
-                        value="end-session"
-                        aria-label={`End the session of ${agentInWords(session.agent)}`}
-                      >
-                        End
-                      </Button>
-                    </Form>
-                  )}
-                </td>
-              </tr>
-            ))}
-          </tbody>
-        </Table>
+        <SessionsTable caption="Sessions signed in with your account" sessions={sessions} />
         {others > 0 && (
           <Form method="post" className="mt-4">
             <Button name="intent" value="end-others">

@@ -5,7 +5,6 @@ import { readForm } from "#app/http/forms.server.ts";
 import { requestContext } from "#app/http/requestContext.server.ts";
 import { forPage } from "#app/http/respond.server.ts";
 import { paths } from "#app/paths.ts";
-import { agentInWords } from "#app/people/agent.ts";
 import { scopeInfo } from "#app/people/key.ts";
 import { findPersonPage, type PersonPage } from "#app/people/personPage.server.ts";
 import { requireActing, requireVisitor } from "#app/people/visitor.server.ts";
@@ -22,6 +21,7 @@ import type { Route } from "./+types/person";
 import { type Answer, changePerson } from "./person/act.server.ts";
 import { NOTICES } from "./person/change.ts";
 import { RoleBoxes } from "./person/RoleBoxes.tsx";
+import { SessionsTable } from "./person/SessionsTable.tsx";
 
 export const meta: Route.MetaFunction = ({ data: page }) => [
   { title: `${page ? page.person.name : "People"} · Tablewright` },
@@ -243,46 +243,7 @@ function Sessions({ person }: { person: PersonPage }) {
         <Lede>{person.name} is not signed in anywhere.</Lede>
       ) : (
         <>
-          <Table caption={`Sessions of ${person.name}`} even className="max-w-4xl">
-            <thead>
-              <tr>
-                <th scope="col">Browser</th>
-                <th scope="col">Signed in</th>
-                <th scope="col">Last used</th>
-                <th scope="col">
-                  <span className="said">End</span>
-                </th>
-              </tr>
-            </thead>
-            <tbody>
-              {person.sessions.map((session) => (
-                <tr key={session.id}>
-                  <th scope="row" className="wide">
-                    {agentInWords(session.agent)}
-                  </th>
-                  <td className="tight">
-                    <Time at={session.begunAt} withTime />
-                  </td>
-                  <td className="tight">
-                    <Time at={session.seenAt} withTime />
-                  </td>
-                  <td>
-                    <Form method="post">
-                      <input type="hidden" name="session" value={session.id} />
-                      <Button
-                        kind="text"
-                        name="intent"
-                        value="end-session"
-                        aria-label={`End the session of ${agentInWords(session.agent)}`}
-                      >
-                        End
-                      </Button>
-                    </Form>
-                  </td>
-                </tr>
-              ))}
-            </tbody>
-          </Table>
+          <SessionsTable caption={`Sessions of ${person.name}`} sessions={person.sessions} />
           <Form method="post" className="mt-4">
             <Act intent="end-sessions">End every session</Act>
           </Form>
