@@ -281,7 +281,9 @@ describe("the guide for programs", () => {
     const { paths } = (await (await server.fetch("/api/v1/openapi.json")).json()) as { paths: Record<string, object> };
     expect(Object.keys(paths).length).toBeGreaterThan(5);
     const text = await textOf(new Response(html));
-    for (const path of Object.keys(paths)) expect(text).toContain(`GET ${path}`);
+    for (const [path, methods] of Object.entries(paths)) {
+      for (const method of Object.keys(methods)) expect(text).toContain(`${method.toUpperCase()} ${path}`);
+    }
     for (const slug of Object.keys(problemKinds)) expect(html).toContain(`href="/problems/${slug}"`);
   });
 

@@ -68,3 +68,39 @@ describe("the reference in the guide", () => {
     for (const { name, shape: of } of named) if (of !== null) expect(shape(of), name).toBeDefined();
   });
 });
+
+describe("the example of each operation", () => {
+  const commandOf = (id: string, facts = {}) => {
+    const found = referenceOf(document, facts).endpoints.find((one) => one.id === id);
+    return found?.command.replace(/ \\\n {2}/g, " ");
+  };
+
+  test("is typed with the contract's own examples", () => {
+    expect(commandOf("readSpecies")).toBe(
+      `curl -H "Authorization: Bearer $TABLEWRIGHT_KEY" 'https://tables.calderpoint.example/api/v1/editions/1/species/H2O(l)'`,
+    );
+    expect(commandOf("readContract")).toBe("curl 'https://tables.calderpoint.example/api/v1/openapi.json'");
+  });
+
+  test("names what its reader can ask for", () => {
+    expect(commandOf("readSource", { source: "src_a/b" })).toContain("/sources/src_a%2Fb'");
+    expect(commandOf("listSpecies", { edition: "7" })).toContain("/editions/7/species?element=H&phase=g&limit=100'");
+  });
+
+  test("sends a body where one is read, and saves what is a file", () => {
+    expect(commandOf("lookUpSpecies")).toMatch(/-H 'Content-Type: application\/json' --data-binary '\{"species":\[/);
+    expect(commandOf("handInSheet")).toContain("--data-binary @calorimeter.csv");
+    expect(commandOf("downloadTableJson")).toContain("curl -OJ ");
+  });
+
+  test("leaves no parameter of an address open", () => {
+    for (const { command } of endpoints) expect(command).not.toMatch(/\{\w+\}'|\/undefined|=undefined/);
+  });
+});
+
+test("a shape of several forms shows what each of them has", () => {
+  const fields = shape("LookupEntry")?.fields ?? [];
+  expect(fields.find((one) => one.name === "outcome")?.type).toBe('"found", "ambiguous", "unknown"');
+  expect(fields.find((one) => one.name === "asked")?.optional).toBe(false);
+  expect(fields.find((one) => one.name === "candidates")?.optional).toBe(true);
+});

@@ -203,7 +203,8 @@ function commandOf(
     // A body makes it a POST by itself.
     ...(method !== "GET" && !sent ? [`-X ${method}`] : []),
   ];
-  return `curl ${options.join(" ")}${options.length > 0 ? " \\\n  " : ""}${quoted(`${base}${address}${query.length > 0 ? `?${query.join("&")}` : ""}`)}`;
+  const whole = `${base}${address}${query.length > 0 ? `?${query.join("&")}` : ""}`;
+  return `curl ${[...options, quoted(whole)].join(" \\\n  ")}`;
 }
 
 /** JSON is typed; anything else is sent from a file. */
