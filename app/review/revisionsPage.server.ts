@@ -2,7 +2,16 @@ import { database } from "#app/db/database.server.ts";
 import { demand, may } from "#app/people/permissions.ts";
 import type { Acting } from "#app/people/person.ts";
 import { findRevisionsByState } from "./review.queries.server.ts";
-import { type RevisionItem, type RevisionList, revisionLists } from "./revisionsPage.ts";
+import {
+  filterRevisions,
+  listOf,
+  type RevisionItem,
+  type RevisionList,
+  revisionLists,
+  type RevisionsChoices,
+  revisionsChoices,
+  type RevisionsFilter,
+} from "./revisionsPage.ts";
 
 /** How many revisions of the past are listed; those with something to do are never cut. */
 const MOST_PAST = 200;
@@ -13,10 +22,16 @@ export interface RevisionsPage {
   may: { write: boolean; decide: boolean; publish: boolean };
   /** Whether something waits to be published. */
   waiting: number;
+  /** How many revisions there are, whatever the filter leaves. */
+  total: number;
+  choices: RevisionsChoices;
 }
 
 /** The lists of revisions as this person's work asks for them. @throws Forbidden */
-export async function findRevisionsPage(acting: Acting): Promise<RevisionsPage> {
+export async function findRevisionsPage(
+  acting: Acting,
+  filter: RevisionsFilter = { list: null, person: null },
+): Promise<RevisionsPage> {
   demand(acting, "revision:read");
   const { roles } = acting.person;
   const [open, past] = await Promise.all([
@@ -25,11 +40,13 @@ export async function findRevisionsPage(acting: Acting): Promise<RevisionsPage> 
   ]);
   const items = [...open, ...past].map(asItem);
   const decides = may(roles, "revision:decide");
-  const lists = revisionLists(items, decides);
+  const lists = revisionLists(filterRevisions(items, filter), decides);
   return {
     lists,
     may: { write: may(roles, "revision:write"), decide: decides, publish: may(roles, "edition:publish") },
-    waiting: lists.find((list) => list.name === "waiting")?.items.length ?? 0,
+    waiting: items.filter((item) => listOf(item) === "waiting").length,
+    total: items.length,
+    choices: revisionsChoices(items, filter),
   };
 }
 

@@ -1,5 +1,5 @@
 import { describe, expect, test } from "vitest";
-import { type RevisionItem, revisionLists } from "./revisionsPage.ts";
+import { filterRevisions, type RevisionItem, revisionLists, revisionsChoices } from "./revisionsPage.ts";
 
 const item = (id: number, rest: Partial<RevisionItem>): RevisionItem => ({
   id,
@@ -42,5 +42,35 @@ describe("lists of revisions", () => {
     const lists = revisionLists(ALL, true);
     expect(lists.flatMap((list) => list.items.map((one) => one.id)).sort()).toEqual([1, 2, 3, 4, 5, 6, 7]);
     expect(names(true, [item(1, { state: "draft" })])).toEqual(["drafts"]);
+  });
+});
+
+describe("filtered", () => {
+  const items = [
+    item(1, { state: "draft", madeBy: "i", madeByName: "Ines" }),
+    item(2, { state: "in_review", madeBy: "i", madeByName: "Ines" }),
+    item(3, { state: "in_review", madeBy: "t", madeByName: "Tom" }),
+  ];
+
+  test.each([
+    [{ list: null, person: null }, [1, 2, 3]],
+    [{ list: "inReview" as const, person: null }, [2, 3]],
+    [{ list: null, person: "i" }, [1, 2]],
+    [{ list: "inReview" as const, person: "t" }, [3]],
+    [{ list: "withdrawn" as const, person: "t" }, []],
+  ])("%j leaves %j", (filter, left) => {
+    expect(filterRevisions(items, filter).map((one) => one.id)).toEqual(left);
+  });
+
+  test("each choice is counted beside the other one, and a choice that lists nothing stays to be undone", () => {
+    const { lists, people } = revisionsChoices(items, { list: "drafts", person: "t" });
+    expect(lists.map(({ name, n }) => [name, n])).toEqual([
+      ["inReview", 1],
+      ["drafts", 0],
+    ]);
+    expect(people.map(({ name, n }) => [name, n])).toEqual([
+      ["Ines", 1],
+      ["Tom", 0],
+    ]);
   });
 });

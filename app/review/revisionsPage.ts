@@ -48,6 +48,9 @@ const REVIEWER_ORDER: readonly ListName[] = ["inReview", "waiting", "returned", 
 const STEWARD_ORDER: readonly ListName[] = ["returned", "drafts", "inReview", "waiting"];
 const LATER: readonly ListName[] = ["published", "declined", "withdrawn"];
 
+/** The names of the lists, as an address says them. */
+export const LIST_NAMES: readonly ListName[] = [...REVIEWER_ORDER, ...LATER];
+
 /** In which list a revision stands. */
 export function listOf(item: Pick<RevisionItem, "state" | "waiting" | "publishedIn">): ListName {
   switch (item.state) {
@@ -63,6 +66,44 @@ export function listOf(item: Pick<RevisionItem, "state" | "waiting" | "published
       if (item.waiting > 0) return "waiting";
       return item.publishedIn === null ? "declined" : "published";
   }
+}
+
+/** Which revisions are listed: those of one list, by one person, or all. */
+export interface RevisionsFilter {
+  list: ListName | null;
+  /** Id of the person who began them. */
+  person: string | null;
+}
+
+/** What can be chosen, with how many revisions each choice would list beside the other one. */
+export interface RevisionsChoices {
+  lists: readonly { name: ListName; head: string; n: number }[];
+  people: readonly { id: string; name: string; n: number }[];
+}
+
+/** The revisions that a filter leaves. */
+export function filterRevisions(items: readonly RevisionItem[], { list, person }: RevisionsFilter): RevisionItem[] {
+  return items.filter(
+    (item) => (list === null || listOf(item) === list) && (person === null || item.madeBy === person),
+  );
+}
+
+/** Counts what each choice would list, people by name. A choice that is made stays among them, though it lists nothing. */
+export function revisionsChoices(items: readonly RevisionItem[], filter: RevisionsFilter): RevisionsChoices {
+  const ofPerson = filterRevisions(items, { ...filter, list: null });
+  const ofList = filterRevisions(items, { ...filter, person: null });
+  const people = new Map(items.map((item) => [item.madeBy, item.madeByName]));
+  return {
+    lists: LIST_NAMES.map((name) => ({
+      name,
+      head: HEADS[name][0],
+      n: ofPerson.filter((item) => listOf(item) === name).length,
+    })).filter((one) => one.n > 0 || one.name === filter.list),
+    people: [...people]
+      .map(([id, name]) => ({ id, name, n: ofList.filter((item) => item.madeBy === id).length }))
+      .filter((one) => one.n > 0 || one.id === filter.person)
+      .sort((a, b) => a.name.localeCompare(b.name, "en")),
+  };
 }
 
 /** The lists that hold something, in the order in which this person's work asks for them. */

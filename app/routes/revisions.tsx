@@ -1,11 +1,13 @@
-import { Link } from "react-router";
-import { pageError } from "#app/http/respond.server.ts";
+import { Form, Link } from "react-router";
+import { BadRequest } from "#app/http/errors.ts";
+import { pageError, readQuery } from "#app/http/respond.server.ts";
 import { paths } from "#app/paths.ts";
 import { requireActing } from "#app/people/visitor.server.ts";
 import { findRevisionsPage } from "#app/review/revisionsPage.server.ts";
-import type { ListName, RevisionItem } from "#app/review/revisionsPage.ts";
-import { ButtonLink } from "#app/ui/Button.tsx";
+import { LIST_NAMES, type ListName, type RevisionItem, type RevisionsFilter } from "#app/review/revisionsPage.ts";
+import { Button, ButtonLink, usePending } from "#app/ui/Button.tsx";
 import { EmptyPage } from "#app/ui/EmptyPage.tsx";
+import { InlineSelect, Sentence } from "#app/ui/Field.tsx";
 import { count } from "#app/ui/figure.ts";
 import { FindingCounts } from "#app/ui/FindingCounts.tsx";
 import { Leaf } from "#app/ui/Leaf.tsx";
@@ -17,9 +19,21 @@ import type { Route } from "./+types/revisions";
 
 export const meta: Route.MetaFunction = () => [{ title: "Revisions · Tablewright" }];
 
+/** Which revisions an address asks for; what is not a choice is said and shows nothing else. */
+function filterIn(request: Request): RevisionsFilter {
+  const query = readQuery(request, ["show", "by"]);
+  const list = query.show ?? "";
+  const person = query.by ?? "";
+  const name = LIST_NAMES.find((one) => one === list);
+  if (list !== "" && !name) throw new BadRequest(`There is no list “${list.slice(0, 40)}”. Choose one on the page.`);
+  return { list: name ?? null, person: person === "" ? null : person };
+}
+
 export async function loader({ request }: Route.LoaderArgs) {
   try {
-    return await findRevisionsPage(await requireActing(request, "revision:read"));
+    const acting = await requireActing(request, "revision:read");
+    const filter = filterIn(request);
+    return { ...(await findRevisionsPage(acting, filter)), filter };
   } catch (error) {
     throw pageError(error);
   }
@@ -104,7 +118,44 @@ function Outcome({ name, item }: { name: ListName; item: RevisionItem }) {
   return <FindingCounts blocks={item.blocks} looks={item.looks} />;
 }
 
-export default function RevisionsPage({ loaderData: { lists, may, waiting } }: Route.ComponentProps) {
+type Shown = Route.ComponentProps["loaderData"];
+
+/** The filter as a sentence, with how many each choice lists. */
+function Filter({ page: { choices, filter } }: { page: Shown }) {
+  const pending = usePending();
+  return (
+    <Form method="get" action={paths.revisions()} key={`${filter.list ?? ""} ${filter.person ?? ""}`}>
+      <Sentence>
+        <span>Showing</span>
+        <InlineSelect
+          label="State"
+          name="show"
+          defaultValue={filter.list ?? ""}
+          options={[
+            ["", "every state"],
+            ...choices.lists.map(({ name, head, n }) => [name, `${head.toLowerCase()} (${count(n)})`] as const),
+          ]}
+        />
+        <span>begun by</span>
+        <InlineSelect
+          label="Person"
+          name="by"
+          defaultValue={filter.person ?? ""}
+          options={[
+            ["", "anybody"],
+            ...choices.people.map(({ id, name, n }) => [id, `${name} (${count(n)})`] as const),
+          ]}
+        />
+        <Button kind="text" type="submit" pending={pending}>
+          Show
+        </Button>
+      </Sentence>
+    </Form>
+  );
+}
+
+export default function RevisionsPage({ loaderData: page }: Route.ComponentProps) {
+  const { lists, may, waiting, total } = page;
   const { currentEdition } = useRootData();
   return (
     <Leaf
@@ -112,7 +163,13 @@ export default function RevisionsPage({ loaderData: { lists, may, waiting } }: R
       section="revisions"
       lede="A revision is a set of proposed changes to the table. Nothing enters an edition without one, and nobody decides their own."
     >
-      {lists.length === 0 && (
+      {total > 0 && <Filter page={page} />}
+      {total > 0 && lists.length === 0 && (
+        <EmptyPage start={<ButtonLink to={paths.revisions()}>Show all revisions</ButtonLink>}>
+          No revision is of this state and begun by this person.
+        </EmptyPage>
+      )}
+      {total === 0 && (
         <EmptyPage start={may.write ? <ButtonLink to={paths.newSheet()}>Bring a sheet</ButtonLink> : undefined}>
           No revision has been begun. One comes from a property sheet, or from a change on the page of a species.
         </EmptyPage>

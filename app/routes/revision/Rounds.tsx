@@ -51,7 +51,7 @@ export function Changed({ page }: { page: RevisionPage }) {
   const since = roundInWords(changed.since).toLowerCase();
   return (
     <Section head={`What changed since the ${since}`} id="changed">
-      <div className="max-w-[60rem] border-b border-rule pb-3">
+      <div className="mb-5 max-w-[60rem] border-b border-rule pb-3">
         {nothing && (
           <p>
             {revision.state === "returned"
