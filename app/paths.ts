@@ -30,6 +30,9 @@ export const paths = {
   // The table, as of an edition
   table: (edition: EditionInPath = "current", query?: Query) => `/editions/${edition}/table${queryString(query)}`,
   tableDownload: (edition: EditionInPath) => `/editions/${edition}/table.csv`,
+  /** What a filtered table shows, as a file: `shown.csv`, `shown.json` or the description of the CSV. */
+  tableShown: (edition: EditionInPath, file: string, query?: Query) =>
+    `/editions/${edition}/table/${segment(file)}${queryString(query)}`,
   tableDescription: (edition: EditionInPath) => `/editions/${edition}/table.csv-metadata.json`,
   species: (edition: EditionInPath, key: string) => `/editions/${edition}/species/${segment(key)}`,
   editions: () => "/editions",

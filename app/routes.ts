@@ -18,6 +18,7 @@ export default [
   route("editions/:edition", "routes/edition.tsx"),
   route("editions/:edition/table.csv", "routes/table.download.ts"),
   route("editions/:edition/table.csv-metadata.json", "routes/table.description.ts"),
+  route("editions/:edition/table/:file", "routes/table.shown.ts"),
   route("editions/:a/compare/:b", "routes/compare.tsx"),
 
   // Sheets
@@ -90,6 +91,7 @@ export default [
   route("api/*", "routes/api.unknown.ts"),
 
   // Resources for pages (session only)
+  route("resources/find", "routes/resources.find.ts"),
   route("resources/sheets/:sheet/progress", "routes/resources.sheet.progress.ts"),
   route("resources/sheets/:sheet/repair", "routes/resources.sheet.repair.ts"),
   route("resources/revisions/:revision/act", "routes/resources.revision.act.ts"),

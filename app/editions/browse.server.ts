@@ -23,6 +23,9 @@ export async function pageOfSpecies(
   { filter, order, page, size }: { filter: SpeciesFilter; order: SpeciesOrder; page: number; size: number },
 ): Promise<{ details: DetailAsOf[]; count: number }> {
   const slice = { order, limit: size, offset: (page - 1) * size };
-  const details = await findSpeciesPageAsOf(n, filter, slice, database());
-  return { details, count: await countSpeciesAsOf(n, filter, database()) };
+  const [details, count] = await Promise.all([
+    findSpeciesPageAsOf(n, filter, slice, database()),
+    countSpeciesAsOf(n, filter, database()),
+  ]);
+  return { details, count };
 }

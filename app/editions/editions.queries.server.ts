@@ -1,10 +1,11 @@
-import { type Expression, type SqlBool, sql } from "kysely";
+import { type Expression, type Kysely, type RawBuilder, type SqlBool, sql } from "kysely";
 import type { Database } from "#app/db/database.server.ts";
+import type { DB } from "#app/db/types.ts";
 import type { Digits } from "#app/thermo/digits.ts";
 import type { Phase } from "#app/thermo/phase.ts";
 import type { Property } from "#app/thermo/property.ts";
 import type { Uncertainty } from "#app/thermo/uncertainty.ts";
-import type { Search, SpeciesFilter } from "./search.ts";
+import type { Bare, ChargeKind, Search, SpeciesFilter } from "./search.ts";
 
 /*
  * Reading the one append-only table as of an edition. Edition n is the rows with since <= n that had not gone out by n;
@@ -338,7 +339,8 @@ export async function findDetailHistory(n: number, speciesId: string, db: Databa
 // --- Browsing ---------------------------------------------------------------
 
 export interface SpeciesOrder {
-  by: "key" | "name" | Property;
+  /** "hill": by formula in Hill order, counts compared as numbers. */
+  by: "key" | "hill" | "name" | Property;
   direction: "ascending" | "descending";
 }
 
@@ -351,58 +353,130 @@ export interface SpeciesSlice {
   after?: string | null;
 }
 
-/** The value of a property of the species `d`, as of edition n: what a table is sorted by and filtered on. */
-function valueOf(n: number, property: Property) {
-  return sql<string | null>`(select v.value from table_value v
-    where v.species_id = d.species_id and v.property = ${property} and v.since <= ${n} and (v.until is null or v.until > ${n}))`;
+/** Whether the species `d` has a value in edition n of which `what` holds; `v` is the value. */
+function hasValue(n: number, what: RawBuilder<SqlBool>): RawBuilder<SqlBool> {
+  return sql<SqlBool>`exists (select from table_value v
+    where v.species_id = d.species_id and v.since <= ${n} and (v.until is null or v.until > ${n}) and ${what})`;
+}
+
+const CHARGED: Readonly<Record<ChargeKind, RawBuilder<SqlBool>>> = {
+  neutral: sql`s.charge = 0`,
+  ion: sql`s.charge <> 0`,
+  cation: sql`s.charge > 0`,
+  anion: sql`s.charge < 0`,
+};
+
+function lacking(n: number, what: Bare): RawBuilder<SqlBool> {
+  switch (what) {
+    case "uncertainty":
+      return hasValue(n, sql`v.uncertainty is null`);
+    case "cas":
+      return sql`d.cas is null`;
+    case "name":
+      return sql`d.name = ''`;
+    case "stated":
+      return sql`${hasValue(n, sql`v.origin = 'derived'`)} and not ${hasValue(n, sql`v.origin = 'stated'`)}`;
+  }
 }
 
 function filtered(n: number, filter: SpeciesFilter, db: Database) {
-  const { search, elements, phases, cas, holds, lacks } = filter;
+  const { search, elements, elementsHow = "all", phases, cas, holds, lacks, charge, bare = [], sourceIds } = filter;
   let query = detailsAsOf(n, db);
-  if (elements.length > 0) query = query.where(sql<boolean>`s.composition ?& ${[...elements]}::text[]`);
+  if (elements.length > 0) {
+    const list = sql`${[...elements]}::text[]`;
+    if (elementsHow !== "only") query = query.where(sql<boolean>`s.composition ?& ${list}`);
+    if (elementsHow !== "all") query = query.where(sql<boolean>`(s.composition - ${list}) = '{}'::jsonb`);
+  }
   if (phases.length > 0) query = query.where((eb) => oneOf(eb.ref("s.phase"), phases));
+  if (charge) query = query.where(CHARGED[charge]);
   if (cas !== null) query = query.where("d.cas", "=", cas);
-  for (const property of holds) query = query.where(sql<boolean>`${valueOf(n, property)} is not null`);
-  for (const property of lacks) query = query.where(sql<boolean>`${valueOf(n, property)} is null`);
-  if (search) query = query.where((eb) => eb.or(searched(search)));
+  for (const property of holds) query = query.where(hasValue(n, sql`v.property = ${property}`));
+  for (const property of lacks) query = query.where(sql<boolean>`not ${hasValue(n, sql`v.property = ${property}`)}`);
+  for (const what of bare) query = query.where(lacking(n, what));
+  if (sourceIds) query = query.where(hasValue(n, sql`v.source_id = any(${[...sourceIds]}::text[])`));
+  if (search) query = query.where(searched(search));
   return query;
 }
 
-/** The ways in which a species can be what was typed. */
-function searched(search: Search): Expression<SqlBool>[] {
-  const part = `%${search.text.toLowerCase().replace(/[\\%_]/g, "\\$&")}%`;
-  const ways: Expression<SqlBool>[] = [
-    sql<SqlBool>`lower(d.name) like ${part}`,
-    sql<SqlBool>`lower(d.key) like ${part.slice(1)}`,
-    sql<SqlBool>`exists (select from unnest(d.synonyms) as known(name) where lower(known.name) like ${part})`,
+/** A text to be found as it is within another: % and _ stand for themselves. */
+function asPart(text: string): string {
+  return text.toLowerCase().replace(/[\\%_]/g, "\\$&");
+}
+
+/**
+ * The ways in which a species can be what was typed. Each is a list of its own, so that each is found through its index
+ * and no row is looked at that none of them names.
+ */
+function searched(search: Search): RawBuilder<SqlBool> {
+  const part = asPart(search.text);
+  const ofDetail = (what: RawBuilder<unknown>) => sql`select o.id from species_detail o where ${what}`;
+  const ofSpecies = (what: RawBuilder<unknown>) =>
+    sql`select o.id from species c join species_detail o on o.species_id = c.id where ${what}`;
+  const ways = [
+    ofDetail(sql`species_names(o.name, o.synonyms) like ${`%${part}%`}`),
+    ofDetail(sql`lower(o.key) like ${`${part}%`}`),
   ];
-  if (search.cas !== null) ways.push(sql<SqlBool>`d.cas = ${search.cas}`);
+  if (search.cas !== null) ways.push(ofDetail(sql`o.cas = ${search.cas}`));
   for (const { hill, charge } of search.formulas) {
-    ways.push(sql<SqlBool>`(s.hill = ${hill} and (${charge}::integer is null or s.charge = ${charge}))`);
+    ways.push(ofSpecies(sql`c.hill = ${hill} and (${charge}::integer is null or c.charge = ${charge})`));
   }
   for (const { formula, phase, label } of search.identities) {
     ways.push(
-      sql<SqlBool>`(s.hill = ${formula.hill} and s.charge = ${formula.charge} and s.phase = ${phase}
-        and (${label ?? null}::text is null or d.label = ${label ?? null}))`,
+      ofSpecies(sql`c.hill = ${formula.hill} and c.charge = ${formula.charge} and c.phase = ${phase}
+        and (${label ?? null}::text is null or o.label = ${label ?? null})`),
     );
   }
-  return ways;
+  return sql<SqlBool>`d.id in (${sql.join(ways, sql` union `)})`;
+}
+
+/** Names of edition n that are written nearly like this one, the nearest first, with how near, 0 to 1. */
+export async function findNamesNear(n: number, text: string, limit: number, db: Kysely<DB>) {
+  return db.transaction().execute(async (trx) => {
+    // Below the usual measure, so that "sulphate" still finds sulfate.
+    await sql`set local pg_trgm.word_similarity_threshold = 0.45`.execute(trx);
+    const { rows } = await sql<{ speciesId: string; near: number }>`
+      select d.species_id as "speciesId", word_similarity(${text.toLowerCase()}, species_names(d.name, d.synonyms)) as near
+        from species_detail d
+       where species_names(d.name, d.synonyms) %> ${text.toLowerCase()}
+         and d.since <= ${n} and (d.until is null or d.until > ${n})
+       order by near desc, d.key limit ${limit}`.execute(trx);
+    return rows;
+  });
 }
 
 /** A slice of the species of edition n that a filter lets through. Species without the value sorted by stand last. */
 export async function findSpeciesPageAsOf(n: number, filter: SpeciesFilter, slice: SpeciesSlice, db: Database) {
-  const { order, limit, offset, after } = slice;
+  const { order, limit, offset = 0, after } = slice;
   const turn = order.direction === "descending" ? "desc" : "asc";
-  let query = filtered(n, filter, db).clearOrderBy().limit(limit);
-  if (order.by === "name") query = query.orderBy(sql`lower(d.name)`, turn);
-  else if (order.by !== "key") {
-    query = query.orderBy(valueOf(n, order.by), (ob) => (turn === "desc" ? ob.desc() : ob.asc()).nullsLast());
+  const query = filtered(n, filter, db).clearOrderBy().limit(limit).offset(offset);
+  switch (order.by) {
+    case "key":
+      return (after === null || after === undefined ? query : query.where("d.key", ">", after))
+        .orderBy("d.key", turn)
+        .execute();
+    case "name":
+      // Species without a name stand last, as those without a value do.
+      return query
+        .orderBy(sql`nullif(lower(d.name), '')`, (ob) => (turn === "desc" ? ob.desc() : ob.asc()).nullsLast())
+        .orderBy("d.key")
+        .execute();
+    case "hill":
+      return query
+        .orderBy(sql`hill_order(s.hill) collate "C"`, turn)
+        .orderBy("d.key", turn)
+        .execute();
+    default:
+      // Joined, and not looked up species by species, because the whole table is put in order.
+      return query
+        .leftJoin(
+          sql<{ species_id: string; value: string }>`(select v.species_id, v.value from table_value v
+            where v.property = ${order.by} and v.since <= ${n} and (v.until is null or v.until > ${n}))`.as("sorted"),
+          (join) => join.onRef("sorted.species_id", "=", "d.species_id"),
+        )
+        .orderBy("sorted.value", (ob) => (turn === "desc" ? ob.desc() : ob.asc()).nullsLast())
+        .orderBy("d.key")
+        .execute();
   }
-  query = query.orderBy("d.key", order.by === "key" ? turn : "asc");
-  if (offset) query = query.offset(offset);
-  if (after !== null && after !== undefined) query = query.where("d.key", ">", after);
-  return query.execute();
 }
 
 /** How many species of edition n a filter lets through. */

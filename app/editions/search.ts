@@ -29,7 +29,28 @@ export interface SpeciesFilter {
   holds: readonly Property[];
   /** Properties that must have none. */
   lacks: readonly Property[];
+  /** How the elements are meant: all of them (unless said), nothing but them, or both. */
+  elementsHow?: ElementsHow;
+  /** Of this charge; any when left out. */
+  charge?: ChargeKind | null;
+  /** What must be missing beside values. */
+  bare?: readonly Bare[];
+  /** With a value from any of these sources; from any source when left out. */
+  sourceIds?: readonly string[] | null;
 }
+
+export const ELEMENTS_HOW = ["all", "only", "exactly"] as const;
+export type ElementsHow = (typeof ELEMENTS_HOW)[number];
+
+export const CHARGE_KINDS = ["neutral", "ion", "cation", "anion"] as const;
+export type ChargeKind = (typeof CHARGE_KINDS)[number];
+
+/**
+ * What a species can be without: the uncertainty of one of its values, a CAS number, a name, or any value that a source
+ * states (all of them were derived).
+ */
+export const BARE = ["uncertainty", "cas", "name", "stated"] as const;
+export type Bare = (typeof BARE)[number];
 
 export const EVERY_SPECIES: SpeciesFilter = {
   search: null,

@@ -1,5 +1,5 @@
 import { describe, expect, test } from "vitest";
-import { readTableQuery } from "./tableQuery.ts";
+import { queryInWords, readTableQuery } from "./tableQuery.ts";
 
 const read = (query: string) => readTableQuery(new URLSearchParams(query));
 
@@ -22,6 +22,33 @@ describe("the address of the table", () => {
   test("a property present, and one missing", () => {
     expect(read("property=entropy").filter).toMatchObject({ holds: ["entropy"], lacks: [] });
     expect(read("property=-entropy").filter).toMatchObject({ holds: [], lacks: ["entropy"] });
+  });
+
+  test("what else can be missing, and several conditions at once", () => {
+    expect(read("property=entropy&property=-cas&property=-uncertainty&property=-stated").filter).toMatchObject({
+      holds: ["entropy"],
+      lacks: [],
+      bare: ["uncertainty", "cas", "stated"],
+    });
+  });
+
+  test("kinds of species, several phases, and how the elements are meant", () => {
+    expect(read("kind=anion&phase=g&phase=aq&how=exactly&element=S+O").filter).toMatchObject({
+      charge: "anion",
+      phases: ["g", "aq"],
+      elementsHow: "exactly",
+    });
+  });
+
+  test.each([
+    ["", "every species, by key, ascending"],
+    ["phase=g&sort=-entropy", "species in phase g, by S°, descending"],
+    [
+      "kind=ion&element=S+O&how=only&property=-cas&source=Cox&sort=hill",
+      "ions with nothing but S, O with no CAS number from “Cox”, by formula, ascending",
+    ],
+  ])("in words: %s", (query, words) => {
+    expect(queryInWords(read(query))).toBe(words);
   });
 
   test("order and columns; columns stand in the usual order whatever order they are given in", () => {

@@ -47,6 +47,7 @@ export const routePermissions: Readonly<Record<string, RouteDoors>> = {
   // What waits for whom, and what the find box leads to
   "/": reads("public"),
   "/find": reads("table:read"),
+  "/resources/find": reads("table:read"),
 
   // The table, as of an edition
   "/editions/:edition/table": reads("table:read"),
@@ -56,6 +57,7 @@ export const routePermissions: Readonly<Record<string, RouteDoors>> = {
   "/editions": reads("table:read"),
   "/editions/:edition": reads("table:read"),
   "/editions/:edition/table.csv": reads("table:read"),
+  "/editions/:edition/table/:file": reads("table:read"),
   "/editions/:a/compare/:b": reads("table:read"),
   "/editions/:edition/table.csv-metadata.json": reads("table:read"),
 

@@ -4,6 +4,7 @@ import {
   type DetailAsOf,
   findDetailsAsOf,
   findEditions,
+  findNamesNear,
   findSourceDetailsAsOf,
   findSpeciesPageAsOf,
 } from "#app/editions/editions.queries.server.ts";
@@ -12,16 +13,20 @@ import { EVERY_SPECIES, readSearch, type Search } from "#app/editions/search.ts"
 import { BadRequest } from "#app/http/errors.ts";
 import { demand, may } from "#app/people/permissions.ts";
 import type { Acting } from "#app/people/person.ts";
-import { fullCitation } from "#app/sources/citation.ts";
+import { fullCitation, holdsWords } from "#app/sources/citation.ts";
 import { readCas } from "#app/thermo/cas.ts";
 import { isSameSpecies, readKey } from "#app/thermo/speciesKey.ts";
-import { holdsWords, readDoi, readNumbers } from "./findPage.ts";
+import { findPeopleLike, findSheetsLike } from "./find.queries.server.ts";
+import { readDoi, readNumbers } from "./findPage.ts";
 import { findRevisionsLike } from "./review.queries.server.ts";
 import type { RevisionState } from "./states.ts";
 
 /** The longest text that can be looked for. */
 const LONGEST_FIND = 200;
 const LISTED = 25;
+const NEAR_LISTED = 8;
+/** Of fewer letters than this, every name is nearly alike. */
+const SHORTEST_NAME = 4;
 /** Species among which the best are chosen before the list is cut. */
 const LOOKED_AT = 500;
 
@@ -36,7 +41,8 @@ export type FoundExactly =
   | { kind: "species"; edition: number; key: string }
   | { kind: "source"; sourceId: string }
   | { kind: "revision"; id: number }
-  | { kind: "edition"; number: number };
+  | { kind: "edition"; number: number }
+  | { kind: "sheet"; id: number };
 
 export interface Found {
   /** What was looked for, without spaces at its ends; empty when nothing was. */
@@ -49,10 +55,13 @@ export interface Found {
   sources: readonly { sourceId: string; citation: string }[];
   revisions: readonly { id: number; title: string; state: RevisionState }[];
   editions: readonly { number: number; publishedAt: Date }[];
+  sheets: readonly { id: number; name: string }[];
+  /** For an administrator only. */
+  people: readonly { id: string; name: string; email: string }[];
   /** Where it leads when it names one thing and nothing else. */
   exactly: FoundExactly | null;
-  /** Other states of the substance that was asked for in vain. */
-  near: readonly FoundSpecies[];
+  /** What comes near to what was asked for in vain, and why it does. */
+  near: readonly (FoundSpecies & { why: string })[];
   /** Why the text cannot be read as what it looks like, a species key or a CAS number. */
   hint: string | null;
 }
@@ -71,17 +80,26 @@ export async function findEverything(acting: Acting, typed: string): Promise<Fou
   const numbers = readNumbers(text);
   const search = readSearch(text);
   const nothing = { species: [], count: 0, outright: [] };
-  const [species, sources, revisions] = await Promise.all([
+  const { roles } = acting.person;
+  const isWords = text !== "" && !numbers.named;
+  const [species, sources, revisions, sheets, people] = await Promise.all([
     search && !numbers.named ? findSpecies(n, search) : nothing,
-    text !== "" && !numbers.named ? findSources(n, text) : { all: [], exact: null },
-    text !== "" && may(acting.person.roles, "revision:read") ? findRevisions(text, numbers) : [],
+    isWords ? findSources(n, text) : { all: [], exact: null },
+    text !== "" && may(roles, "revision:read") ? findRevisions(text, numbers) : [],
+    text !== "" && may(roles, "sheet:read") ? findSheetsLike(isWords ? text : null, numbers.sheet, LISTED, db) : [],
+    isWords && may(roles, "people:manage") ? findPeopleLike(text, LISTED, db) : [],
   ]);
-  const edition = editions.find((one) => one.number === numbers.edition);
+  const editionsFound = editions.filter(
+    (one) => one.number === numbers.edition || (isWords && numbers.edition === null && holdsWords(one.notes, text)),
+  );
   const exact: FoundExactly[] = [
     ...species.outright.map(({ key }) => ({ kind: "species" as const, edition: n, key })),
     ...(sources.exact === null ? [] : [{ kind: "source" as const, sourceId: sources.exact }]),
-    ...(edition ? [{ kind: "edition" as const, number: edition.number }] : []),
+    ...editionsFound
+      .filter((one) => one.number === numbers.edition)
+      .map(({ number }) => ({ kind: "edition" as const, number })),
     ...revisions.filter(({ id }) => id === numbers.revision).map(({ id }) => ({ kind: "revision" as const, id })),
+    ...sheets.filter(({ id }) => id === numbers.sheet).map(({ id }) => ({ kind: "sheet" as const, id })),
   ];
   const isInVain = search !== null && species.count === 0 && !numbers.named;
   return {
@@ -91,11 +109,27 @@ export async function findEverything(acting: Acting, typed: string): Promise<Fou
     speciesCount: species.count,
     sources: sources.all.slice(0, LISTED),
     revisions,
-    editions: edition ? [{ number: edition.number, publishedAt: edition.publishedAt }] : [],
+    editions: editionsFound.slice(0, LISTED).map(({ number, publishedAt }) => ({ number, publishedAt })),
+    sheets,
+    people,
     exactly: exact.length === 1 ? (exact[0] ?? null) : null,
-    near: isInVain ? (await findOfComposition(n, search)).slice(0, LISTED).map(shown) : [],
+    near: isInVain ? await findNear(n, search) : [],
     hint: isInVain ? hintFor(text) : null,
   };
+}
+
+/** What comes near: the same atoms in another state or charge, then names that are written nearly alike. */
+async function findNear(n: number, search: Search): Promise<Found["near"]> {
+  const db = database();
+  const ofComposition = await findOfComposition(n, search);
+  const alike = ofComposition.map((one) => ({ ...shown(one), why: "the same atoms" }));
+  if (alike.length > 0 || search.text.length < SHORTEST_NAME) return alike.slice(0, NEAR_LISTED);
+  const names = await findNamesNear(n, search.text, NEAR_LISTED, db);
+  const details = await findDetailsAsOf(n, { speciesIds: names.map((one) => one.speciesId) }, db);
+  return names.flatMap(({ speciesId }) => {
+    const detail = details.find((one) => one.speciesId === speciesId);
+    return detail ? [{ ...shown(detail), why: "a name written nearly so" }] : [];
+  });
 }
 
 /** Why the text is no CAS number or species key, when it looks like one. */

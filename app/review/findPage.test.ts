@@ -1,15 +1,17 @@
 import { describe, expect, test } from "vitest";
-import { holdsWords, readDoi, readNumbers } from "./findPage.ts";
+import { holdsWords } from "#app/sources/citation.ts";
+import { readDoi, readNumbers } from "./findPage.ts";
 
 describe("numbers", () => {
   test.each([
-    ["edition 2", { edition: 2, revision: null, named: true }],
-    ["Ed. 2", { edition: 2, revision: null, named: true }],
-    ["revision 14", { edition: null, revision: 14, named: true }],
-    ["rev.14", { edition: null, revision: 14, named: true }],
-    ["Revision no. 14", { edition: null, revision: 14, named: true }],
-    ["#14", { edition: 14, revision: 14, named: false }],
-    [" 14 ", { edition: 14, revision: 14, named: false }],
+    ["sheet 3", { edition: null, revision: null, sheet: 3, named: true }],
+    ["edition 2", { edition: 2, revision: null, sheet: null, named: true }],
+    ["Ed. 2", { edition: 2, revision: null, sheet: null, named: true }],
+    ["revision 14", { edition: null, revision: 14, sheet: null, named: true }],
+    ["rev.14", { edition: null, revision: 14, sheet: null, named: true }],
+    ["Revision no. 14", { edition: null, revision: 14, sheet: null, named: true }],
+    ["#14", { edition: 14, revision: 14, sheet: 14, named: false }],
+    [" 14 ", { edition: 14, revision: 14, sheet: 14, named: false }],
   ])("%s may be %o", (text, numbers) => {
     expect(readNumbers(text)).toEqual(numbers);
   });
@@ -18,7 +20,7 @@ describe("numbers", () => {
   test.each(["0", "edition", "edition 0", "12345678901", "7732-18-5", "edited 2", "H2O", "-1", "2.5", ""])(
     "%s is none",
     (text) => {
-      expect(readNumbers(text)).toEqual({ edition: null, revision: null, named: false });
+      expect(readNumbers(text)).toEqual({ edition: null, revision: null, sheet: null, named: false });
     },
   );
 });

@@ -2,7 +2,7 @@ import { Form, Link, redirect } from "react-router";
 import { forPage } from "#app/http/respond.server.ts";
 import { paths } from "#app/paths.ts";
 import { requireActing } from "#app/people/visitor.server.ts";
-import { findEverything, type Found, type FoundExactly } from "#app/review/findPage.server.ts";
+import { findEverything, type Found } from "#app/review/findPage.server.ts";
 import { revisionStateWords } from "#app/review/states.ts";
 import { Button } from "#app/ui/Button.tsx";
 import { EmptyPage } from "#app/ui/EmptyPage.tsx";
@@ -14,6 +14,7 @@ import { SpeciesName } from "#app/ui/SpeciesName.tsx";
 import { Table } from "#app/ui/Table.tsx";
 import { Time } from "#app/ui/Time.tsx";
 import type { Route } from "./+types/find";
+import { addressOf } from "./find/suggestions.ts";
 
 export const meta: Route.MetaFunction = ({ loaderData }) => [
   { title: `${loaderData?.text ? `Find “${loaderData.text}”` : "Find"} · Tablewright` },
@@ -27,29 +28,16 @@ export const loader = forPage(async ({ request }: Route.LoaderArgs): Promise<Fou
   return found;
 });
 
-function addressOf(exactly: FoundExactly): string {
-  switch (exactly.kind) {
-    case "species":
-      return paths.species(exactly.edition, exactly.key);
-    case "source":
-      return paths.source(exactly.sourceId);
-    case "revision":
-      return paths.revision(exactly.id);
-    case "edition":
-      return paths.edition(exactly.number);
-  }
-}
-
 export default function FindPage({ loaderData: found }: Route.ComponentProps) {
-  const { text, species, sources, revisions, editions } = found;
-  const nothing = species.length + sources.length + revisions.length + editions.length === 0;
+  const { text, species, sources, revisions, editions, sheets, people } = found;
+  const nothing = [species, sources, revisions, editions, sheets, people].every((list) => list.length === 0);
   return (
     <Leaf heading={text ? `Find “${text}”` : "Find"}>
       <Form method="get" action={paths.find()} role="search" aria-label="Find, on this page" className="mt-4 mb-6">
         <div className="flex max-w-[40rem] flex-wrap items-end gap-3">
           <div className="grow">
             <label className="field-label" htmlFor="find-text">
-              A species, source, revision or edition
+              A species, source, revision, edition or sheet
             </label>
             <input
               key={text}
@@ -108,11 +96,43 @@ export default function FindPage({ loaderData: found }: Route.ComponentProps) {
           </ul>
         </Section>
       )}
+      {sheets.length > 0 && (
+        <Section head="Sheets">
+          <ul className="space-y-1">
+            {sheets.map((sheet) => (
+              <li key={sheet.id}>
+                <Link to={paths.sheet(sheet.id)}>
+                  {sheet.id} · {sheet.name}
+                </Link>
+              </li>
+            ))}
+          </ul>
+        </Section>
+      )}
+      {people.length > 0 && (
+        <Section head="People">
+          <ul className="space-y-1">
+            {people.map((person) => (
+              <li key={person.id}>
+                <Link to={paths.person(person.id)}>{person.name}</Link>{" "}
+                <span className="text-soft">{person.email}</span>
+              </li>
+            ))}
+          </ul>
+        </Section>
+      )}
     </Leaf>
   );
 }
 
-function SpeciesTable({ caption, species, edition }: { caption: string; species: Found["species"]; edition: number }) {
+interface SpeciesTableProps {
+  caption: string;
+  species: readonly (Found["species"][number] & { why?: string })[];
+  edition: number;
+}
+
+function SpeciesTable({ caption, species, edition }: SpeciesTableProps) {
+  const explained = species.some((one) => one.why !== undefined);
   return (
     <Table caption={caption} even className="max-w-[48rem]">
       <thead>
@@ -120,6 +140,7 @@ function SpeciesTable({ caption, species, edition }: { caption: string; species:
           <th scope="col">Species</th>
           <th scope="col">Name</th>
           <th scope="col">CAS</th>
+          {explained && <th scope="col">Why</th>}
         </tr>
       </thead>
       <tbody>
@@ -130,6 +151,7 @@ function SpeciesTable({ caption, species, edition }: { caption: string; species:
             </th>
             <td>{one.name}</td>
             <td className="tight">{one.cas}</td>
+            {explained && <td>{one.why}</td>}
           </tr>
         ))}
       </tbody>
@@ -157,7 +179,8 @@ const EXAMPLES = [
   ["A CAS number", "with its check digit: 7732-18-5"],
   ["A source", "by author, word of its title, year or DOI"],
   ["A revision", "by number or word of its title: revision 4"],
-  ["An edition", "by number: edition 2"],
+  ["An edition", "by number or a word of its notes: edition 2"],
+  ["A sheet", "by number or name: sheet 3"],
 ] as const;
 
 /** What can be typed. */
@@ -206,8 +229,8 @@ function Nothing({ found: { text, edition, near, hint } }: { found: Found }) {
         </ul>
       </EmptyPage>
       {near.length > 0 && edition !== null && (
-        <Section head="The same substance in other states">
-          <SpeciesTable caption="Species of the same composition" species={near} edition={edition} />
+        <Section head="What comes near">
+          <SpeciesTable caption={`Species of edition ${edition} near to “${text}”`} species={near} edition={edition} />
         </Section>
       )}
     </>

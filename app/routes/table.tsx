@@ -1,12 +1,13 @@
-import { Form, Link, useSubmit } from "react-router";
+import { Form, Link, useSearchParams, useSubmit } from "react-router";
+import { BARE, CHARGE_KINDS, ELEMENTS_HOW } from "#app/editions/search.ts";
 import { findTablePage, type TablePage, type TableRow } from "#app/editions/tablePage.server.ts";
-import { readTableQuery } from "#app/editions/tableQuery.ts";
+import { conditionInWords, HOW_WORDS, KIND_WORDS, readTableQuery } from "#app/editions/tableQuery.ts";
 import { forPage } from "#app/http/respond.server.ts";
 import { paths, queryString } from "#app/paths.ts";
 import { requireActing } from "#app/people/visitor.server.ts";
 import { bracketForm } from "#app/thermo/notation.ts";
 import { PHASES, phaseName } from "#app/thermo/phase.ts";
-import { PROPERTIES, type Property, propertyInfo } from "#app/thermo/property.ts";
+import { PROPERTIES, propertyInfo } from "#app/thermo/property.ts";
 import { Button, ButtonLink } from "#app/ui/Button.tsx";
 import { Caution } from "#app/ui/Caution.tsx";
 import { type Column, DataTable } from "#app/ui/DataTable.tsx";
@@ -60,7 +61,7 @@ function NoEdition() {
 }
 
 function TableOfEdition({ page }: { page: TablePage }) {
-  const { frame, rows, columns, order, remarks, sources } = page;
+  const { frame, rows, order, remarks, sources } = page;
   const { bookmark, ribbon } = useEditionFrame(frame, { counts: true });
   return (
     <Leaf heading={HEADING} section="table" bookmark={bookmark} ribbon={ribbon}>
@@ -116,21 +117,34 @@ function TableOfEdition({ page }: { page: TablePage }) {
 
 /** The filters as a sentence. Every choice is in the address; the button works before scripts arrive. */
 function Filters({ page }: { page: TablePage }) {
-  const { typed, order, count: found, frame, columns } = page;
+  const { typed, order, count: found, frame } = page;
   const submit = useSubmit();
+  const sort = `${order.direction === "descending" ? "-" : ""}${order.by}`;
   return (
     <Form
       method="get"
       role="search"
       aria-label="Filter the table"
       // The address of a filtered table is made of these fields; the same fields have the same value in it.
-      key={queryString(typed)}
+      key={queryString({ ...typed, sort })}
       onChange={(event) => {
-        if (event.target instanceof HTMLSelectElement) void submit(event.currentTarget, { preventScrollReset: true });
+        if (event.target instanceof HTMLSelectElement)
+          void submit(stated(event.currentTarget), { preventScrollReset: true });
+      }}
+      onSubmit={(event) => {
+        event.preventDefault();
+        void submit(stated(event.currentTarget), { preventScrollReset: true });
       }}
     >
       <Sentence>
-        Showing species called{" "}
+        Showing{" "}
+        <InlineSelect
+          label="Kind of species"
+          name="kind"
+          defaultValue={typed.kind}
+          options={[["", "species"], ...CHARGE_KINDS.map((kind) => [kind, KIND_WORDS[kind]] as const)]}
+        />{" "}
+        called{" "}
         <InlineField
           label="Name, formula or CAS number"
           name="q"
@@ -139,64 +153,119 @@ function Filters({ page }: { page: TablePage }) {
           size={12}
         />{" "}
         with{" "}
+        <InlineSelect
+          label="How the elements are meant"
+          name="how"
+          defaultValue={typed.how}
+          options={ELEMENTS_HOW.map((how) => [how === "all" ? "" : how, HOW_WORDS[how]] as const)}
+        />{" "}
         <InlineField label="Elements" name="element" placeholder="any element" defaultValue={typed.element} size={10} />{" "}
         in{" "}
-        <InlineSelect
-          label="Phase"
-          name="phase"
-          defaultValue={typed.phase}
-          options={[["", "any phase"], ...PHASES.map((phase) => [phase, phaseName[phase]] as const)]}
-        />
+        {[...typed.phase, ""].map((phase, index) => (
+          <span key={phase}>
+            {index > 0 && " or "}
+            <InlineSelect
+              label={index === 0 ? "Phase" : `Or in, ${index + 1}`}
+              name="phase"
+              defaultValue={phase}
+              options={[
+                ["", index === 0 ? "any phase" : "no other"],
+                ...PHASES.map((one) => [one, phaseName[one]] as const),
+              ]}
+            />
+          </span>
+        ))}
         , with{" "}
-        <InlineSelect
-          label="Properties present or missing"
-          name="property"
-          defaultValue={typed.property}
-          options={[
-            ["", "any property missing or not"],
-            ...PROPERTIES.map((one) => [one, `a value of ${propertyInfo[one].symbol}`] as const),
-            ...PROPERTIES.map((one) => [`-${one}`, `no value of ${propertyInfo[one].symbol}`] as const),
-          ]}
-        />
-        , by{" "}
-        <InlineSelect
-          label="Order"
-          name="sort"
-          defaultValue={`${order.direction === "descending" ? "-" : ""}${order.by}`}
-          options={ORDERS}
-        />
-        <Button kind="text">Show</Button> · {count(found)} of {count(frame.speciesCount)} ·{" "}
-        <details className="disclosure relative inline-block" id="columns">
-          <summary>columns</summary>
-          <fieldset className="menu">
-            <legend className="said">Columns shown</legend>
-            {PROPERTIES.map((one) => (
-              <label key={one} className="flex items-center gap-2 px-3 py-1">
-                <input
-                  className="check"
-                  type="checkbox"
-                  name="column"
-                  value={one}
-                  defaultChecked={columns.includes(one)}
-                />
-                <span>
-                  <Symbol of={propertyInfo[one].symbol} />
-                </span>
-              </label>
-            ))}
-            <div className="px-3 py-2">
-              <Button kind="plain">Show these</Button>
-            </div>
-          </fieldset>
-        </details>
+        {[...typed.property, ""].map((condition, index) => (
+          <span key={condition}>
+            {index > 0 && " and "}
+            <InlineSelect
+              label={index === 0 ? "Properties present or missing" : `Present or missing, ${index + 1}`}
+              name="property"
+              defaultValue={condition}
+              options={[["", index === 0 ? "any property missing or not" : "whatever else"], ...CONDITIONS]}
+            />
+          </span>
+        ))}
+        , from{" "}
+        <InlineField label="Source" name="source" placeholder="any source" defaultValue={typed.source} size={10} />, by{" "}
+        <InlineSelect label="Order" name="sort" defaultValue={sort} options={ORDERS} />{" "}
+        <Button kind="text">Show</Button> ·{" "}
+        <span role="status">
+          {count(found)} of {count(frame.speciesCount)}
+        </span>{" "}
+        · <ColumnChoice page={page} /> · <DownloadChoice page={page} />
       </Sentence>
     </Form>
   );
 }
 
+/** What a form says, without the fields that say nothing: the address stays short enough to read. */
+function stated(form: HTMLFormElement): URLSearchParams {
+  const search = new URLSearchParams();
+  for (const [name, value] of new FormData(form)) {
+    if (typeof value === "string" && value !== "" && !(name === "sort" && value === "key")) search.append(name, value);
+  }
+  return search;
+}
+
+function ColumnChoice({ page: { columns } }: { page: TablePage }) {
+  return (
+    <details className="disclosure relative inline-block" id="columns">
+      <summary>columns</summary>
+      <fieldset className="menu">
+        <legend className="said">Columns shown</legend>
+        {PROPERTIES.map((one) => (
+          <label key={one} className="flex items-center gap-2 px-3 py-1">
+            <input className="check" type="checkbox" name="column" value={one} defaultChecked={columns.includes(one)} />
+            <span>
+              <Symbol of={propertyInfo[one].symbol} />
+            </span>
+          </label>
+        ))}
+        <div className="px-3 py-2">
+          <Button kind="plain">Show these</Button>
+        </div>
+      </fieldset>
+    </details>
+  );
+}
+
+/** What is shown, all its pages, as a file under the same filter; and the whole edition, which never changes. */
+function DownloadChoice({ page: { frame, count: found } }: { page: TablePage }) {
+  const [search] = useSearchParams();
+  const kept = new URLSearchParams(search);
+  kept.delete("page");
+  const query = Object.fromEntries([...new Set(kept.keys())].map((name) => [name, kept.getAll(name)]));
+  return (
+    <details className="disclosure relative inline-block" id="download">
+      <summary>download</summary>
+      <div className="menu">
+        <Link reloadDocument to={paths.tableShown(frame.number, "shown.csv", query)}>
+          These {count(found)} species, CSV
+        </Link>
+        <Link reloadDocument to={paths.tableShown(frame.number, "shown.json", query)}>
+          These {count(found)} species, JSON
+        </Link>
+        <Link reloadDocument to={paths.tableDownload(frame.number)}>
+          The whole edition, CSV
+        </Link>
+      </div>
+    </details>
+  );
+}
+
+const CONDITIONS: readonly (readonly [string, string])[] = [
+  ...PROPERTIES,
+  ...PROPERTIES.map((one) => `-${one}`),
+  ...BARE.map((what) => `-${what}`),
+].map((condition) => [condition, conditionInWords(condition)]);
+
 const ORDERS: readonly (readonly [string, string])[] = [
-  ["key", "formula"],
-  ["-key", "formula, from the end"],
+  ["key", "key"],
+  ["-key", "key, from the end"],
+  ["hill", "formula in Hill order"],
+  ["-hill", "formula in Hill order, from the end"],
   ["name", "name"],
   ["-name", "name, from the end"],
   ...PROPERTIES.flatMap((one) => [

@@ -1,7 +1,8 @@
-import { Form, Link } from "react-router";
+import { Link } from "react-router";
 import { paths } from "#app/paths.ts";
 import { Bookmark, editionBookmark, type BookmarkProps } from "./Bookmark.tsx";
 import { Ribbon } from "./EditionLine.tsx";
+import { FindBox } from "./FindBox.tsx";
 import { useRootData, type SectionName } from "./useRootData.ts";
 
 interface LeafProps {
@@ -62,17 +63,7 @@ export function Leaf({ heading, headingKind, lede, section, bookmark, ribbon, ch
                   ))}
               </ul>
             </nav>
-            {opens.includes("table") && (
-              <Form method="get" action={paths.find()} role="search" className="contents">
-                <input
-                  className="leaf-find"
-                  type="search"
-                  name="q"
-                  aria-label="Find a species, source or revision"
-                  placeholder="Find a species, source, revision"
-                />
-              </Form>
-            )}
+            {opens.includes("table") && <FindBox />}
             {visitor ? (
               <Link
                 className="leaf-person"

@@ -21,6 +21,7 @@ const samples: Record<keyof typeof paths, string> = {
   table: paths.table(7, { phase: "g" }),
   tableDownload: paths.tableDownload("current"),
   tableDescription: paths.tableDescription(7),
+  tableShown: paths.tableShown(7, "shown.csv"),
   species: paths.species(7, "CdSO4·8/3H2O(cr)"),
   editions: paths.editions(),
   edition: paths.edition(7),

@@ -99,6 +99,11 @@ describe("the table", () => {
     ["?phase=aq", ["Na+(aq)"]],
     ["?property=-entropy", ["AgCl(cr)"]],
     ["?property=heatCapacity", ["H2O(l)"]],
+    ["?element=H+O+N&how=only", ["H2(g)", "H2O(g)", "H2O(l)", "NH3(g)"]],
+    ["?element=H+O&how=exactly&phase=l&phase=aq", ["H2O(l)"]],
+    ["?kind=cation", ["Na+(aq)"]],
+    ["?property=-entropy&property=enthalpyOfFormation", ["AgCl(cr)"]],
+    ["?q=OH2", ["H2O(g)", "H2O(l)"]],
     ["?q=water&sort=-key", ["H2O(l)", "H2O(g)"]],
     ["?phase=g&sort=entropy", ["H2(g)", "H2O(g)", "NH3(g)"]],
     ["?phase=g&sort=-entropy", ["NH3(g)", "H2O(g)", "H2(g)"]],
@@ -214,5 +219,67 @@ describe("the download", () => {
     expect((await answer.text()).split("\r\n")[0]).toMatch(/^edition,id,species,/);
     expect((await server.fetch("/editions/2/table.csv")).status).toBe(302);
     expect((await ask("/editions/9/table.csv")).status).toBe(404);
+  });
+});
+
+describe("what is shown, as a file", () => {
+  test("holds the species of the filter in its order, says edition and filter in its name, and names its description", async () => {
+    const answer = await ask("/editions/3/table/shown.csv?phase=g&sort=-entropy&column=entropy");
+    expect(answer.headers.get("Content-Disposition")).toContain("tablewright-edition-3-g-by-entropy.csv");
+    const lines = (await answer.text()).trim().split("\r\n");
+    expect(lines.map((line) => line.split(",")[1])).toEqual(["species", "NH3(g)", "H2O(g)", "H2(g)"]);
+    const described = /<([^>]+)>; rel="describedby"/.exec(answer.headers.get("Link") ?? "")?.[1] ?? "";
+    const description = JSON.parse(await (await ask(described)).text()) as Record<string, unknown>;
+    expect(description["dc:title"]).toContain("edition 3: species in phase g, by S°, descending");
+    expect(description).toMatchObject({ tableSchema: { columns: lines[0]?.split(",").map((name) => ({ name })) } });
+  });
+
+  test("as JSON it is the same, and a ΔfG° that only follows says so", async () => {
+    const file = JSON.parse(await (await ask("/editions/1/table/shown.json")).text()) as {
+      edition: number;
+      species: { key: string; values: Record<string, { origin: string }> }[];
+    };
+    expect(file.edition).toBe(1);
+    const page = await read("/editions/1/table");
+    expect(file.species.map((one) => one.key)).toEqual(speciesOf(page.html));
+    const origins = file.species.flatMap((one) => Object.values(one.values).map((value) => value.origin));
+    expect(origins.filter((origin) => origin === "follows")).toHaveLength(1);
+  });
+
+  test("nobody is sent to sign in; another file is not there", async () => {
+    expect((await server.fetch("/editions/3/table/shown.csv")).status).toBe(302);
+    expect((await ask("/editions/3/table/shown.xls")).status).toBe(404);
+  });
+});
+
+describe("the find box", () => {
+  const offers = async (q: string): Promise<{ kind: string; to: string; text: string; note: string }[]> => {
+    const answer = await ask(`/resources/find.data?q=${encodeURIComponent(q)}`);
+    expect(answer.status).toBe(200);
+    const plain = await ask(`/resources/find?q=${encodeURIComponent(q)}`);
+    return ((await plain.json()) as { suggestions: { kind: string; to: string; text: string; note: string }[] })
+      .suggestions;
+  };
+
+  test.each([
+    ["OH2(l)", "H2O(l)"],
+    ["7732-18-5", "H2O(g)"],
+    ["H3N", "NH3(g)"],
+    ["Na +1 (aq)", "Na+(aq)"],
+  ])("%s offers %s first", async (typed, key) => {
+    expect((await offers(typed))[0]).toMatchObject({ kind: "species", text: key });
+  });
+
+  test("offers sources, editions and revisions; a sheet only to those who may see sheets", async () => {
+    expect((await offers("Wagman")).map((one) => one.kind)).toContain("source");
+    expect((await offers("edition 2"))[0]).toMatchObject({ kind: "edition", to: "/editions/2" });
+    expect((await offers("sheet 1")).filter((one) => one.kind === "sheet" || one.kind === "person")).toEqual([]);
+  });
+
+  test("a name written nearly so comes with the reason", async () => {
+    const [first] = await offers("watter");
+    expect(first).toMatchObject({ kind: "species" });
+    expect(first?.note).toContain("a name written nearly so");
+    expect((await read("/find?q=watter")).words).toContain("a name written nearly so");
   });
 });

@@ -59,6 +59,8 @@ export interface EditionRows {
   species?: readonly SpeciesRow[];
   values?: readonly ValueRow[];
   withdrawals?: readonly { key: string; property: Property; reason: string }[];
+  /** Brings further rows into the open edition, each carrying the accepted line version it is given. */
+  beside?: (number: number, versionId: string, trx: Database) => Promise<void>;
 }
 
 export interface PublishedEdition {
@@ -317,6 +319,7 @@ async function publish(
       .execute();
     await replaceRow(line, number, trx);
   }
+  if (rows.beside && lines[0]) await rows.beside(number, lines[0].versionId, trx);
   const sealed = await sql<{ digest: Buffer }>`select seal_edition(${number}) as digest`.execute(trx);
   return { number, digest: sealed.rows[0]?.digest ?? Buffer.alloc(0) };
 }

@@ -16,6 +16,7 @@ export function routePatterns(): string[] {
 const samples: Readonly<Record<string, string>> = {
   check: "gibbs-closure",
   edition: "999999",
+  file: "shown.csv",
   a: "999998",
   b: "999999",
   other: "999998",
