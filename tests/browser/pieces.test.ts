@@ -37,16 +37,20 @@ describe("in every window", () => {
     ["light", 1440],
     ["light", 320],
     ["dark", 1440],
-  ] as const)("%s, %d px wide: axe finds nothing, and only tables scroll sideways", async (colorScheme, width) => {
-    const page = await windowLike({ colorScheme, viewport: { width, height: 900 } });
-    for (const address of ["/ui?errors", ...CONVENTIONS, "/no/such/page"]) {
-      await page.goto(address);
-      await expectAccessible(page);
-      const wide = await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth);
-      expect(wide, `${address} is wider than the window`).toBeLessThanOrEqual(0);
-    }
-    await page.context().close();
-  });
+  ] as const)(
+    "%s, %d px wide: axe finds nothing, and only tables scroll sideways",
+    async (colorScheme, width) => {
+      const page = await windowLike({ colorScheme, viewport: { width, height: 900 } });
+      for (const address of ["/ui?errors", ...CONVENTIONS, "/no/such/page"]) {
+        await page.goto(address);
+        await expectAccessible(page);
+        const wide = await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth);
+        expect(wide, `${address} is wider than the window`).toBeLessThanOrEqual(0);
+      }
+      await page.context().close();
+    },
+    150_000,
+  ); // ten pages, some of them long
 
   it("keeps every control at least 24 px high or so far from the next", async () => {
     const page = await windowLike({ viewport: { width: 390, height: 844 } });
