@@ -165,6 +165,13 @@ describe("a row that is refused says at which cell, and how to mend it", () => {
     ["an uncertainty of zero", "H2O,l,,-285.83,0,", 4, /by convention/, [""]],
     ["two uncertainties that differ", "H2O,l,,-285.83 ± 0.05,0.04,", 4, /Leave one/, []],
     ["an uncertainty without its value", "H2O,l,,,0.04,69.95", 3, /Was the value lost/, []],
+    [
+      "a unit that is not the column's",
+      "H2O,l,,-68.315 kcal/mol,,",
+      3,
+      /in kcal\/mol, its column in kJ\/mol/,
+      ["-285.830"],
+    ],
     ["a cell lost before the values", "H2O,l,-285.83,0.04,69.95", null, /has 5 cells where the heads name 6/, []],
     ["every value lost", "H2O,l,", null, /has 3 cells where the heads name 6/, []],
     ["a cell too many", "H2O,l,,-285.83,0.04,69.95,1", null, /has 7 cells where the heads name 6/, []],

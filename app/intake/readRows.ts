@@ -5,6 +5,7 @@ import { normalizeLabel } from "#app/thermo/label.ts";
 import { type NumberOptions, readNumber, type ReadNumber, spellNumber } from "#app/thermo/number.ts";
 import { type Phase, readPhase } from "#app/thermo/phase.ts";
 import { type Property, propertyInfo } from "#app/thermo/property.ts";
+import { readQuantity } from "#app/thermo/quantity.ts";
 import { quote, type Reading } from "#app/thermo/reading.ts";
 import { isConventionalZero } from "#app/thermo/referenceStates.ts";
 import { formatKey, readKey, type SpeciesIdentity } from "#app/thermo/speciesKey.ts";
@@ -448,7 +449,7 @@ function readValue(
     return null;
   }
   const options: NumberOptions = { decimalComma: frame.settings.decimalComma };
-  const number = readCell(text, column, options, problems, notes);
+  const number = readCell(text, slot, column, options, problems, notes);
   if (!number) return null;
 
   const before = problems.length;
@@ -485,15 +486,35 @@ function readValue(
 
 const ZERO = digits("0");
 
-/** A number, or its problem with each reading as a repair. */
+/**
+ * A number, or its problem. One that carries its unit is read where that is the unit of the column; another unit is a
+ * question, since either the head or the cell is wrong.
+ */
 function readCell(
   text: string,
+  { unit }: Slot,
   column: number,
   options: NumberOptions,
   problems: CellProblem[],
   notes: string[],
 ): ReadNumber | null {
-  return take(readNumber(text, options), column, problems, notes, spellNumber);
+  const reading = readNumber(text, options);
+  const quantity = reading.outcome === "refused" ? readQuantity(text, options) : null;
+  if (quantity?.outcome !== "read") return take(reading, column, problems, notes, spellNumber);
+  const { number, unit: own } = quantity.value;
+  if (own === unit) {
+    notes.push(...quantity.notes);
+    return number;
+  }
+  const becomes = isLikeUnit(own, unit) && !number.uncertainty ? convert(number.digits, own, unit).digits : null;
+  problems.push(
+    problem(
+      column,
+      `The cell is in ${own}, its column in ${unit}. Write the number in ${unit}.`,
+      becomes === null ? [] : [{ label: `Take ${becomes.replace("-", "−")}`, column, text: becomes }],
+    ),
+  );
+  return null;
 }
 
 /** Third law: a pure substance has a positive entropy; so is its heat capacity and its enthalpy increment. */
@@ -553,7 +574,7 @@ function readSpread(
   }
 
   // A bare ± before the number in a column of its own says nothing new.
-  const read = readCell(cell.text.replace(/^(?:±|\+\/-)\s*/, ""), column, options, problems, notes);
+  const read = readCell(cell.text.replace(/^(?:±|\+\/-)\s*/, ""), slot, column, options, problems, notes);
   if (!read) return null;
   if (inCell) {
     if (compare(inCell.digits, read.digits) === 0) return inTableUnit(read.digits, kindOf(frame), slot);

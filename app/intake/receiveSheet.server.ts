@@ -24,6 +24,7 @@ import {
   type PlanContext,
   planColumns,
   type PlanGuess,
+  type SheetSettings,
   sheetSettings,
   standingKey,
 } from "./plan.ts";
@@ -124,11 +125,22 @@ async function rememberedOrGuessed(sheet: DecodedSheet, trx: Database): Promise<
         asks: doubt !== undefined && !agrees && doubt.means === column.means && doubt.unit !== null && doubt.asks,
       };
     }),
-    settings: settings.success ? { ...settings.data, decimalComma: sheet.dialect.decimalComma } : guess.settings,
+    settings: settings.success ? statedOver(guess.settings, settings.data) : guess.settings,
     notices: [
       `Columns and settings are filled in as ${remembered.savedByName} confirmed them for a sheet with the same heads.`,
       ...guess.notices,
     ],
+  };
+}
+
+/** What was confirmed before, except where this sheet itself says something. */
+function statedOver(stated: SheetSettings, before: SheetSettings): SheetSettings {
+  return {
+    ...before,
+    temperature: stated.temperature ?? before.temperature,
+    standardPressure: stated.standardPressure ?? before.standardPressure,
+    basis: stated.basis ?? before.basis,
+    decimalComma: stated.decimalComma,
   };
 }
 

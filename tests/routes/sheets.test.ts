@@ -55,8 +55,13 @@ describe("an upload that is no sheet", () => {
   test.each<[string, Uint8Array | string, RegExp]>([
     ["a zip archive", Uint8Array.from([0x50, 0x4b, 3, 4, 0, 0]), /zip archive/],
     ["a picture", Uint8Array.from([0x89, 0x50, 0x4e, 0x47, 13, 10]), /picture/],
-    ["UTF-16", Uint8Array.from([0xff, 0xfe, 0x48, 0, 0x32, 0]), /UTF-16/],
-    ["invalid UTF-8", Uint8Array.from([0x66, 0x2c, 0x53, 0x0a, 0xb0, 0x2c, 0x31]), /not valid UTF-8/],
+    ["UTF-16 cut off", Uint8Array.from([0xff, 0xfe, 0x48, 0, 0x32, 0, 0x2c]), /middle of a character/],
+    // 9D (hexadecimal) is no character of Windows-1252 either.
+    [
+      "bytes of no encoding",
+      Uint8Array.from([0x66, 0x2c, 0x53, 0x0a, 0x9d, 0x2c, 0x31]),
+      /neither UTF-8 nor Windows-1252/,
+    ],
     ["a NUL byte", "formula,S\nH2\u0000O,1\n", /NUL byte/],
     ["nothing", "", /No file was chosen|empty/],
   ])("%s named .csv: 422 with a sentence on the form", async (_what, bytes, sentence) => {

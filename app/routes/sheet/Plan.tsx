@@ -438,17 +438,28 @@ export function PlanShown({ page }: { page: SheetPage }) {
         </tbody>
       </Table>
       <Fine>
-        {settings.temperature ? `${settings.temperature} K` : "temperature not said"},{" "}
-        {settings.standardPressure === "100000"
-          ? "100 kPa"
-          : settings.standardPressure
-            ? "1 atm, brought to 100 kPa"
-            : "pressure not said"}
-        {settings.uncertaintyKind &&
-          `, uncertainties ${settings.uncertaintyKind === "expanded" ? "expanded with k = 2" : settings.uncertaintyKind === "standard" ? "standard" : "of a kind not said"}`}
+        {page.columns.some((column) => takesUnit(meaningValue(column))) ? (
+          <Settings settings={settings} />
+        ) : (
+          "No values"
+        )}
         {sheet.confirmedBy && `, confirmed by ${sheet.confirmedBy}`}.
       </Fine>
     </details>
+  );
+}
+
+/** What was said of all values of the sheet, in a line. */
+function Settings({ settings }: Pick<SheetPage, "settings">) {
+  const { temperature, standardPressure, uncertaintyKind } = settings;
+  const pressure =
+    standardPressure === "100000" ? "100 kPa" : standardPressure ? "1 atm, brought to 100 kPa" : "pressure not said";
+  const kinds = { expanded: "expanded with k = 2", standard: "standard", unstated: "of a kind not said" };
+  return (
+    <>
+      {temperature ? `${temperature} K` : "temperature not said"}, {pressure}
+      {uncertaintyKind && `, uncertainties ${kinds[uncertaintyKind]}`}
+    </>
   );
 }
 
