@@ -32,7 +32,7 @@ test("filters, order and edition are kept in the address while one reads", { tim
   await expect.poll(() => rows.count()).toBe(8);
 
   // A choice in the sentence filters at once.
-  await page.getByLabel("Phase").selectOption("g");
+  await page.getByLabel("Phase", { exact: true }).selectOption("g");
   await page.waitForURL(/phase=g/);
   await expect.poll(() => rows.allInnerTexts()).toEqual(["H2(g)", "H2O(g)", "NH3(g)"]);
 
@@ -92,4 +92,30 @@ test.each([
     expect(await page.evaluate(() => document.documentElement.scrollWidth - innerWidth)).toBeLessThanOrEqual(0);
     await expectAccessible(page);
   }
+});
+
+test("the find box by keyboard: offers, arrows, Escape, Enter", { timeout: 120_000 }, async () => {
+  const page = await signIn();
+  const box = page.getByRole("combobox", { name: /Find a species/ });
+  await box.fill("wate");
+  const options = page.getByRole("listbox", { name: "What fits" }).getByRole("option");
+  await expect.poll(() => options.count()).toBe(2);
+  expect(await box.getAttribute("aria-expanded")).toBe("true");
+  await expectAccessible(page);
+  await page.keyboard.press("ArrowDown");
+  await page.keyboard.press("ArrowDown");
+  await expect.poll(() => options.nth(1).getAttribute("aria-selected")).toBe("true");
+  expect(await box.getAttribute("aria-activedescendant")).toBe(await options.nth(1).getAttribute("id"));
+  // Escape closes the list and keeps the text; down opens it again.
+  await page.keyboard.press("Escape");
+  await expect.poll(() => box.getAttribute("aria-expanded")).toBe("false");
+  expect(await box.inputValue()).toBe("wate");
+  await page.keyboard.press("ArrowDown");
+  await page.keyboard.press("Enter");
+  await page.waitForURL(/\/editions\/3\/species\/H2O/);
+  // With nothing chosen, Enter lists everything that fits.
+  await box.fill("wate");
+  await page.keyboard.press("Enter");
+  await page.waitForURL(/\/find\?q=wate/);
+  await expectAccessible(page);
 });
