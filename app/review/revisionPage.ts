@@ -1,5 +1,6 @@
 import type { Severity, SourceKind, Suggestion } from "#app/checks/types.ts";
 import { type TextRun, wordRuns } from "#app/editions/comparePage.ts";
+import { noteOf } from "#app/sources/citation.ts";
 import { type Digits, subtract } from "#app/thermo/digits.ts";
 import { showDigits } from "#app/thermo/notation.ts";
 import { type Property, PROPERTIES, propertyInfo } from "#app/thermo/property.ts";
@@ -815,6 +816,7 @@ export function textChanges(
         ["DOI", content.doi],
         ["kind", SOURCE_KINDS[content.sourceKind]],
         ["notice", content.notice],
+        ["remark", noteOf(content.citation)],
       ];
     }
     return [];

@@ -34,6 +34,7 @@ const samples: Record<keyof typeof paths, string> = {
   sheetFindings: paths.sheetFindings(21),
   revisions: paths.revisions(),
   revision: paths.revision(14),
+  takeOver: paths.takeOver(14, 12),
   revisionLine: paths.revisionLine(14, "417"),
   propose: paths.propose({ species: "Na+(aq)", what: "names" }),
   publish: paths.publish(),
