@@ -22,6 +22,7 @@ import {
 } from "./review.queries.server.ts";
 import { findWritable } from "./revise.server.ts";
 import { findVersionContents } from "./revisionPage.queries.server.ts";
+import { placeOf } from "./takeOver.ts";
 
 /** A line written by hand. What it is written against is found when it is written, never handed in. */
 export type ProposedLine = Pick<NewLine, "kind" | "speciesId" | "property" | "sourceId" | "content" | "reason"> & {
@@ -127,9 +128,6 @@ async function demandSubjects(lines: readonly ProposedLine[], trx: ActScope["trx
   const sources = await findKnownSourceIds([...sourceIds], trx);
   if ([...sourceIds].some((id) => !sources.has(id))) throw new NotFound("There is no such source.");
 }
-
-const placeOf = (line: Pick<ProposedLine, "speciesId" | "property" | "sourceId">): string =>
-  line.sourceId ?? `${line.speciesId ?? ""}|${line.property ?? ""}`;
 
 /** One revision says a thing once. */
 async function refuseDoubledPlaces({ revisionId, lines }: Proposal, trx: ActScope["trx"]): Promise<void> {

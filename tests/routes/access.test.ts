@@ -29,6 +29,7 @@ const fields: Readonly<Record<string, Record<string, string>>> = {
   "set-aside": { finding: "1", reason: "Known." },
   return: { remark: "Mend it." },
   comment: { body: "Why?" },
+  answer: { comment: "1", body: "So." },
   rewrite: {
     line: "1",
     version: "1",
