@@ -59,7 +59,7 @@ test("a messy sheet is mended in place and becomes a revision", { timeout: 90_00
   expect(await page.getByLabel("Temperature of the values").inputValue()).toBe("298.15");
   expect(await page.getByLabel("Standard pressure").inputValue()).toBe("100000");
   await page.getByLabel("Kind of the uncertainties").selectOption("expanded");
-  await page.getByRole("combobox", { name: "Source" }).selectOption("new");
+  await page.getByRole("combobox", { name: "Source", exact: true }).selectOption("new");
   await page.getByLabel("Title").fill("Solution calorimetry (invented)");
   await page.getByLabel("How the values came about").selectOption("measurement");
   await page.getByRole("button", { name: "Read the rows" }).click();
@@ -104,7 +104,7 @@ test("an encoding that was guessed is shown by its signs, and another can be tri
   await page.getByLabel("Encoding").selectOption("UTF-8");
   await page.getByRole("button", { name: "Read the bytes again" }).click();
   await page.getByRole("alert").getByText("Row 1 is not valid UTF-8").waitFor();
-  expect(await page.getByLabel("Encoding").inputValue()).toBe("Windows-1252");
+  expect(await page.getByText("Read as Windows-1252").count()).toBe(1);
 });
 
 test("each key of a column gets its source, and its rows say so", { timeout: 60_000 }, async () => {
@@ -124,8 +124,9 @@ test("each key of a column gets its source, and its rows say so", { timeout: 60_
   // What is missing of the new source is told at its own fields.
   await page.getByRole("alert").getByText("2 things to put right").waitFor();
   await expectAccessible(page);
-  await page.getByLabel("Title", { exact: true }).fill("Notebook 14");
-  await page.getByLabel("How the values came about").selectOption("measurement");
+  const described = page.getByRole("group", { name: "notebook 14 as a new source" });
+  await described.getByLabel("Title", { exact: true }).fill("Notebook 14");
+  await described.getByLabel("How the values came about").selectOption("measurement");
   await page.getByRole("button", { name: "Read the rows" }).click();
   await page.getByText("7 rows = 5 read + 2 refused + 0 skipped").waitFor();
   await page.getByText("No source was chosen for the key “notebook 3”.").waitFor();

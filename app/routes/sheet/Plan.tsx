@@ -368,7 +368,7 @@ function KeyAnswer({
       {(chosen === NEW_SOURCE || chosen === "") && (
         <details className="disclosure" open={chosen === NEW_SOURCE || wrong}>
           <summary>describe {name} as a new source</summary>
-          <div className="mt-3">
+          <div className="mt-3" role="group" aria-label={`${name} as a new source`}>
             <SourceFields fields={described} />
           </div>
         </details>
