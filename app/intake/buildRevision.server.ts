@@ -193,7 +193,7 @@ async function sourcesOf(choice: SourceChoice | null, edition: number, trx: ActS
     const same = content.doi?.toLowerCase() ?? JSON.stringify(content);
     const source = described.get(same) ?? {
       key,
-      id: `src_${randomUUID().replaceAll("-", "")}`,
+      id: newSourceId(),
       exists: false,
       isNew: content,
     };

@@ -17,7 +17,7 @@ import { meaningWords } from "#app/intake/meaning.ts";
 import { propertyInfo } from "#app/thermo/property.ts";
 import { Button, usePending } from "#app/ui/Button.tsx";
 import { DecisionBar } from "#app/ui/DecisionBar.tsx";
-import { Field, InlineSelect, Select, TextArea } from "#app/ui/Field.tsx";
+import { Field, InlineSelect, Select } from "#app/ui/Field.tsx";
 import { type FieldState, plainField } from "#app/ui/fieldState.ts";
 import { FormErrors } from "#app/ui/FormErrors.tsx";
 import { MarginHead, MarginMark } from "#app/ui/MarginMark.tsx";
