@@ -42,6 +42,7 @@ describe("spellings with one reading", () => {
       "markup behind brackets",
     ],
     // Hydrates
+    ["C59H118O", "C59H118O", 0, "C59H118O", "a long chain, and no mass number"],
     ["CuSO4·5H2O", "CuSO4·5H2O", 0, "CuH10O9S", "the hydrate's dot"],
     ["CuSO4.5H2O", "CuSO4·5H2O", 0, "CuH10O9S", "a full stop for the dot"],
     ["CuSO4*5H2O", "CuSO4·5H2O", 0, "CuH10O9S", "an asterisk for the dot"],

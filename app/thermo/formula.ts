@@ -179,7 +179,8 @@ function notAFormula(marked: string, text: string): string | undefined {
       "write D or T, for the table keeps no isotope but D and T apart."
     );
   }
-  if (/[A-Z][a-z]?\d{1,2}(?:1[78]O|13C|15N)(?![a-z])/.test(marked)) {
+  // Only where it begins: C59H118O is a long alcohol, and H218O has no carbon for so much hydrogen.
+  if (/^[A-Z][a-z]?\d{1,2}(?:1[78]O|13C|15N)(?![a-z])/.test(marked)) {
     return `${quote(text)} seems to hold a mass number (18O, 13C, 15N). The table keeps no isotope but D and T apart.`;
   }
   if (/-\d*\.?\d*H2O$/.test(marked)) {
