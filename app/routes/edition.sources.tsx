@@ -140,7 +140,7 @@ function Filters({ page: { frame, query, count: found, all } }: { page: SourcesP
     >
       <Sentence>
         Showing sources that say{" "}
-        <InlineField label="Author, title, year or DOI" name="q" placeholder="anything" defaultValue={q} size={16} />,{" "}
+        <InlineField label="Author, title, year or DOI" name="q" placeholder="anything" defaultValue={q} size={16} />{" "}
         <InlineSelect
           label="Kind"
           name="kind"

@@ -264,7 +264,8 @@ function Describe({ page: { revision } }: { page: Page }) {
       <p className={`mb-4 text-fine ${revision.summary ? "-mt-4" : ""}`}>
         <OpenLink form="describe" anchor="text">
           Change title and summary
-        </OpenLink>
+        </OpenLink>{" "}
+        · <Link to={paths.propose({ revision: revision.id })}>Propose a new species in it</Link>
       </p>
     );
   }

@@ -175,7 +175,7 @@ function Filters({ page }: { page: TablePage }) {
             />
           </span>
         ))}
-        , with{" "}
+        with{" "}
         {[...typed.property, ""].map((condition, index) => (
           <span key={condition}>
             {index > 0 && " and "}
@@ -187,9 +187,8 @@ function Filters({ page }: { page: TablePage }) {
             />
           </span>
         ))}
-        , from{" "}
-        <InlineField label="Source" name="source" placeholder="any source" defaultValue={typed.source} size={10} />, by{" "}
-        <InlineSelect label="Order" name="sort" defaultValue={sort} options={ORDERS} />{" "}
+        from <InlineField label="Source" name="source" placeholder="any source" defaultValue={typed.source} size={10} />{" "}
+        by <InlineSelect label="Order" name="sort" defaultValue={sort} options={ORDERS} />{" "}
         <Button kind="text">Show</Button> ·{" "}
         <span role="status">
           {count(found)} of {count(frame.speciesCount)}
