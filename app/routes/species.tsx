@@ -133,7 +133,7 @@ function Also({ page: { also, frame } }: { page: SpeciesPage }) {
   if (others.length === 0) return null;
   return (
     <Fine>
-      Of the same formula, but not the same substance by name or CAS number:{" "}
+      Of the same formula, under another name or CAS number:{" "}
       {others.map((other, index) => (
         <span key={other.key}>
           {index > 0 && ", "}
