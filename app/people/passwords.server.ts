@@ -16,7 +16,7 @@ import { hashSecret } from "./secrets.server.ts";
 import { updateEnded } from "./sessions.queries.server.ts";
 
 /** Every answer to "I forgot my password" takes at least this long, so that its time does not tell whether there is an account. */
-const RESET_ANSWER_MILLISECONDS = 250;
+export const RESET_ANSWER_MILLISECONDS = 250;
 
 const GONE: Readonly<Record<LinkTable, string>> = {
   invitation: "This invitation was used, has run out or was never made. Ask an administrator for a new one.",

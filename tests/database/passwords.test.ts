@@ -2,7 +2,12 @@ import { describe, expect, test } from "vitest";
 import { Invalid, Refused, TooMany } from "#app/http/errors.ts";
 import { limits } from "#app/people/limits.ts";
 import { findUsableLink } from "#app/people/links.server.ts";
-import { askForReset, changePassword, setPasswordByLink } from "#app/people/passwords.server.ts";
+import {
+  askForReset,
+  changePassword,
+  RESET_ANSWER_MILLISECONDS,
+  setPasswordByLink,
+} from "#app/people/passwords.server.ts";
 import { invitePerson } from "#app/people/invitations.server.ts";
 import { switchOff } from "#app/people/people.server.ts";
 import { findHolder, beginSession } from "#app/people/sessions.server.ts";
@@ -171,7 +176,8 @@ describe("a reset letter", () => {
     await runJobs(database);
     const reset = outbox.sent.filter(({ subject }) => subject === "Choose a new password");
     expect(reset.map(({ envelope }) => envelope?.to)).toEqual([[known.person.email]]);
-    expect(Math.max(...times) / Math.min(...times)).toBeLessThan(1.2);
+    // Nobody is answered before the set time, in which the work of all three is done. A timer may be a millisecond early.
+    expect(Math.min(...times)).toBeGreaterThanOrEqual(RESET_ANSWER_MILLISECONDS - 2);
   });
 
   test("is written three times an hour to one address, however often and from wherever it is asked for", async () => {
