@@ -86,11 +86,11 @@ describe("in every window", () => {
 describe("the find box", () => {
   test.each([true, false])("leads to the species that was named, scripts: %s", async (javaScriptEnabled) => {
     const page = await windowOf("analyst", { javaScriptEnabled });
-    const box = page.getByRole("searchbox", { name: "Find a species, source or revision" });
+    const box = page.getByRole("combobox", { name: "Find a species, source or revision" });
     await box.fill("SO4 2-(aq)");
     await box.press("Enter");
     await expect.poll(() => page.locator("h1").innerText()).toContain("Find “SO4 2-(aq)”");
-    await page.getByLabel("A species, source, revision or edition").fill("Na+ (aq)");
+    await page.getByLabel("A species, source, revision, edition or sheet").fill("Na+ (aq)");
     await page.locator("main").getByRole("button", { name: "Find" }).click();
     await page.waitForURL("/editions/3/species/Na%2B(aq)");
     await page.context().close();

@@ -33,15 +33,16 @@ async function windowLike(options: BrowserContextOptions): Promise<Page> {
 }
 
 describe("in every window", () => {
+  // The pages of conventions are made of the same pieces and are looked at light and wide in everyPage.test.ts.
   it.each([
-    ["light", 1440],
-    ["light", 320],
-    ["dark", 1440],
+    ["light", 1440, ["/ui?errors", "/no/such/page"]],
+    ["light", 320, ["/ui?errors", ...CONVENTIONS]],
+    ["dark", 1440, ["/ui?errors"]],
   ] as const)(
     "%s, %d px wide: axe finds nothing, and only tables scroll sideways",
-    async (colorScheme, width) => {
+    async (colorScheme, width, addresses) => {
       const page = await windowLike({ colorScheme, viewport: { width, height: 900 } });
-      for (const address of ["/ui?errors", ...CONVENTIONS, "/no/such/page"]) {
+      for (const address of addresses) {
         await page.goto(address);
         await expectAccessible(page);
         const wide = await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth);
