@@ -188,7 +188,9 @@ describe("the find box", () => {
   });
 
   test("says what to try when nothing fits, and what comes near", async () => {
-    expect(await read(find("H2O(cr)"), "analyst")).toMatch(/Nothing in edition 3.*other states.*H2O\(g\).*H2O\(l\)/);
+    expect(await read(find("H2O(cr)"), "analyst")).toMatch(
+      /Nothing in edition 3.*What comes near.*H2O\(g\).*the same atoms.*H2O\(l\)/,
+    );
     expect(await read(find("7732-18-4"), "analyst")).toContain("A digit was mistyped.");
     expect(await read(find("unobtainium"), "analyst")).toContain(
       "Nothing in edition 3, and no revision, fits “unobtainium”.",
