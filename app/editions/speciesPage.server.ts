@@ -59,6 +59,8 @@ export async function findSpeciesPage(acting: Acting, edition: Edition, detail: 
       cas: detail.cas,
       synonyms: detail.synonyms,
       phase: detail.phase,
+      /** The edition in which it came in; a species stays once it is there, whatever becomes of its values. */
+      since: Math.min(detail.since, ...details.map((one) => one.since)),
       molarMass: mass === null ? null : showNumber(mass, 3),
     },
     values: PROPERTIES.flatMap((property) => {

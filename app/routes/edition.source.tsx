@@ -56,7 +56,7 @@ export async function clientLoader({ request, serverLoader }: Route.ClientLoader
 export default function SourceRoute({ loaderData: { page, writes } }: Route.ComponentProps) {
   const { frame, source, counts } = page;
   const { citation, doi } = source;
-  const { bookmark, ribbon } = useEditionFrame(frame);
+  const { bookmark, ribbon } = useEditionFrame(frame, { from: source.since });
   const note = noteOf(citation);
   const all = counts.reduce((sum, one) => sum + one.values, 0);
   return (

@@ -48,7 +48,7 @@ export async function clientLoader({ request, serverLoader }: Route.ClientLoader
 
 export default function SpeciesRoute({ loaderData: page }: Route.ComponentProps) {
   const { frame, species, also, plots, history } = page;
-  const { bookmark, ribbon } = useEditionFrame(frame);
+  const { bookmark, ribbon } = useEditionFrame(frame, { from: species.since });
   return (
     <Leaf
       heading={<SpeciesName speciesKey={species.key} printed={species.printed} />}

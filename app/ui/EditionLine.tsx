@@ -18,6 +18,8 @@ interface EditionLineProps {
   newest: number;
   /** All editions, newest first, to change over to; the page stays at the same species or filter. */
   editions?: readonly number[] | undefined;
+  /** The first edition that holds what the page is about; earlier ones are named and lead nowhere. */
+  from?: number | undefined;
   /** More at the left: counts, conditions. */
   children?: React.ReactNode;
   /** More at the right: cite, download. */
@@ -25,7 +27,7 @@ interface EditionLineProps {
 }
 
 /** Which edition you read, when it was published, whether a newer one stands, and the way to another. */
-export function EditionLine({ edition, newest, editions, children, end }: EditionLineProps) {
+export function EditionLine({ edition, newest, editions, from = 1, children, end }: EditionLineProps) {
   const { pathname, search } = useLocation();
   const here = pathname + search;
   return (
@@ -40,7 +42,7 @@ export function EditionLine({ edition, newest, editions, children, end }: Editio
             </span>
           )}
           {editions && editions.length > 1 && (
-            <EditionChooser here={here} number={edition.number} editions={editions} />
+            <EditionChooser here={here} number={edition.number} editions={editions} from={from} />
           )}
           {end}
         </>
@@ -55,20 +57,36 @@ export function EditionLine({ edition, newest, editions, children, end }: Editio
   );
 }
 
-function EditionChooser({ here, number, editions }: { here: string; number: number; editions: readonly number[] }) {
+function EditionChooser({
+  here,
+  number,
+  editions,
+  from,
+}: {
+  here: string;
+  number: number;
+  editions: readonly number[];
+  from: number;
+}) {
   return (
     <details className="disclosure relative" id="other-editions">
       <summary>other editions</summary>
       <ul className="menu right-0">
         {editions.map((other) => (
           <li key={other}>
-            <Link
-              to={inEdition(here, other) ?? paths.edition(other)}
-              aria-current={other === number ? "page" : undefined}
-            >
-              <span>Edition {other}</span>
-              {other === number && <span className="text-soft">this one</span>}
-            </Link>
+            {other < from ? (
+              <span className="text-soft">
+                <span>Edition {other}</span> <span>not in it yet</span>
+              </span>
+            ) : (
+              <Link
+                to={inEdition(here, other) ?? paths.edition(other)}
+                aria-current={other === number ? "page" : undefined}
+              >
+                <span>Edition {other}</span>
+                {other === number && <span className="text-soft">this one</span>}
+              </Link>
+            )}
           </li>
         ))}
       </ul>

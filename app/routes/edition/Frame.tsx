@@ -12,8 +12,11 @@ export function useNewest(frame: EditionFrame): number {
   return Math.max(frame.newest, useRootData().currentEdition ?? 0);
 }
 
-/** Bookmark and ribbon of a page pinned to an edition, as `Leaf` takes them. */
-export function useEditionFrame(frame: EditionFrame, { counts = false } = {}) {
+/**
+ * Bookmark and ribbon of a page pinned to an edition, as `Leaf` takes them. `from` is the first edition that holds what the
+ * page is about.
+ */
+export function useEditionFrame(frame: EditionFrame, { counts = false, from = 1 } = {}) {
   const newest = useNewest(frame);
   const editions = frame.editions.includes(newest) ? frame.editions : [newest, ...frame.editions];
   return {
@@ -27,6 +30,7 @@ export function useEditionFrame(frame: EditionFrame, { counts = false } = {}) {
         }}
         newest={newest}
         editions={editions}
+        from={from}
         end={
           <>
             <Link to={`${paths.edition(frame.number)}#cite`}>cite</Link>
