@@ -1,4 +1,14 @@
 import { defineConfig } from "vitest/config";
+import { BaseSequencer, type TestSpecification } from "vitest/node";
+
+/** Browser tests first: they take longest, and one that began last would leave the other workers idle. */
+class LongestFirst extends BaseSequencer {
+  override async sort(files: TestSpecification[]): Promise<TestSpecification[]> {
+    const rank = ({ moduleId }: TestSpecification): number =>
+      moduleId.includes("everyPage") ? 0 : moduleId.includes("/tests/browser/") ? 1 : 2;
+    return (await super.sort(files)).sort((a, b) => rank(a) - rank(b));
+  }
+}
 
 const common = {
   environment: "node" as const,
@@ -15,8 +25,9 @@ const common = {
 export default defineConfig({
   test: {
     reporters: ["default"],
-    // A browser or server test mostly waits for another process, so two files at once keep two cores busy.
-    maxWorkers: 2,
+    // A browser or server test mostly waits for another process, so three files at once keep two cores busy.
+    maxWorkers: 3,
+    sequence: { sequencer: LongestFirst },
     projects: [
       {
         test: {
@@ -37,7 +48,7 @@ export default defineConfig({
           name: "served",
           include: ["tests/{database,routes,api,browser}/**/*.test.ts"],
           globalSetup: ["tests/support/globalSetup.ts"],
-          hookTimeout: 60_000,
+          hookTimeout: 120_000,
         },
       },
     ],
