@@ -25,8 +25,8 @@ const common = {
 export default defineConfig({
   test: {
     reporters: ["default"],
-    // A browser or server test mostly waits for another process, so three files at once keep two cores busy.
-    maxWorkers: 3,
+    // A browser or server test waits for other processes half of the time, so two files at once keep two cores busy.
+    maxWorkers: 2,
     sequence: { sequencer: LongestFirst },
     projects: [
       {
@@ -49,6 +49,7 @@ export default defineConfig({
           include: ["tests/{database,routes,api,browser}/**/*.test.ts"],
           globalSetup: ["tests/support/globalSetup.ts"],
           hookTimeout: 120_000,
+          expect: { poll: { timeout: 15_000 } },
         },
       },
     ],
