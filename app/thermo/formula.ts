@@ -65,13 +65,16 @@ export function readFormula(text: string): Reading<Formula> {
       formulas.push(buildFormula(parsed, charge));
     }
   }
-  const [only, ...others] = formulas;
+  // Of two readings, one that no atoms could carry is none: H23+ is not H2 with a charge of three.
+  const carried = formulas.filter((one) => one.charge <= electronsIn(one));
+  const possible = carried.length > 0 ? carried : formulas;
+  const [only, ...others] = possible;
   if (only === undefined) return refused(`${quote(text.trim())} cannot be read as a formula: ${sentence}`);
   if (others.length === 0) {
     const wrong = split.readings.length === 1 ? noIon(only) : undefined;
     return wrong === undefined ? read(only, [...notes, ...split.notes]) : refused(`${quote(text.trim())} ${wrong}`);
   }
-  return ambiguous(formulas, twoReadings(text.trim(), formulas));
+  return ambiguous(possible, twoReadings(text.trim(), possible));
 }
 
 /** Brings further habits of writing to the plain one: a comma for a decimal point, a cross or colon for a hydrate's dot. */
@@ -100,17 +103,21 @@ function spelledPlainly(marked: string, notes: string[]): string {
 /** Why a stated charge is no ion's: `Li-7` and `He-3` are isotopes, `H+2` has lost more electrons than it had. */
 function noIon(formula: Formula): string | undefined {
   const { composition, charge } = formula;
-  const electrons = Object.entries(composition).reduce(
-    (sum, [symbol, count]) => sum + count * (elementOf(symbol)?.atomicNumber ?? 0),
-    0,
-  );
-  if (charge > electrons) return "has lost more electrons than its atoms hold. Write the charge as in Fe+3.";
+  if (charge > electronsIn(formula)) return "has lost more electrons than its atoms hold. Write the charge as in Fe+3.";
   const element = soleElement(formula);
   if (charge > -2 || element === undefined || composition[element] !== 1) return undefined;
   if (charge >= -4 && !isMassNumber(-charge, element)) return undefined;
   return (
     `would be ${element} with charge −${-charge}, which is no ion. ` +
     `If ${-charge} is a mass number: the table keeps no isotope but D and T apart.`
+  );
+}
+
+/** Electrons of the uncharged atoms. */
+function electronsIn({ composition }: Formula): number {
+  return Object.entries(composition).reduce(
+    (sum, [symbol, count]) => sum + count * (elementOf(symbol)?.atomicNumber ?? 0),
+    0,
   );
 }
 

@@ -29,7 +29,7 @@ const browser = useBrowser();
 beforeAll(() => makeApplicationUse(server.database.app));
 
 /** Addresses of one pattern that are tried: the first in the window, the others by their text alone. */
-const TRIED = 4;
+const TRIED = 3;
 
 /** Reached otherwise than by a link on a page: by a letter, by a button, or not meant for people. */
 const NOT_BY_LINKS: Readonly<Record<string, string>> = {
