@@ -1,11 +1,10 @@
 import type { Page } from "playwright-core";
 import { beforeAll, describe, expect, test } from "vitest";
 import { useDatabase as makeApplicationUse } from "#app/db/database.server.ts";
-import { paths } from "#app/paths.ts";
 import type { Acting } from "#app/people/person.ts";
-import { expectAccessible, useBrowser } from "#tests/support/browser.ts";
+import { enterAs, expectAccessible, useBrowser } from "#tests/support/browser.ts";
 import { publishThreeEditions } from "#tests/support/editions.ts";
-import { makePerson, PASSWORD } from "#tests/support/people.ts";
+import { makePerson } from "#tests/support/people.ts";
 import { useServer } from "#tests/support/server.ts";
 
 /*
@@ -29,11 +28,8 @@ beforeAll(() => makeApplicationUse(server.database.app));
 async function openAs(path: string, width: number): Promise<Page> {
   const page = await browser.newWindow(server.url);
   await page.setViewportSize({ width, height: 900 });
-  await page.goto(paths.signIn(path));
-  await page.getByLabel("E-mail address").fill(reviewer.person.email);
-  await page.getByLabel("Password", { exact: true }).fill(PASSWORD);
-  await page.getByRole("button", { name: "Sign in" }).click();
-  await page.waitForURL((url) => url.pathname + url.search === path);
+  await enterAs(page, server.url, reviewer);
+  await page.goto(path);
   await page.waitForLoadState("networkidle");
   return page;
 }

@@ -4,9 +4,9 @@ import { useDatabase as makeApplicationUse } from "#app/db/database.server.ts";
 import type { Acting, Role } from "#app/people/person.ts";
 import { returnRevision } from "#app/review/decide.server.ts";
 import { sendToReview } from "#app/review/revise.server.ts";
-import { expectAccessible, useBrowser } from "#tests/support/browser.ts";
+import { enterAs, expectAccessible, useBrowser } from "#tests/support/browser.ts";
 import { publishThreeEditions } from "#tests/support/editions.ts";
-import { makePerson, PASSWORD } from "#tests/support/people.ts";
+import { makePerson } from "#tests/support/people.ts";
 import { acceptAll, propose } from "#tests/support/revisions.ts";
 import { useServer } from "#tests/support/server.ts";
 
@@ -46,11 +46,8 @@ async function windowOf(who: Role | null, options: BrowserContextOptions = {}): 
     .newContext({ baseURL: server.url, ...options });
   const page = await context.newPage();
   if (who) {
-    await page.goto("/sign-in");
-    await page.getByLabel("E-mail address").fill(people.get(who)!.person.email);
-    await page.getByLabel("Password", { exact: true }).fill(PASSWORD);
-    await page.locator("main").getByRole("button", { name: "Sign in" }).click();
-    await page.waitForURL("/");
+    await enterAs(page, server.url, people.get(who)!);
+    await page.goto("/");
   }
   return page;
 }

@@ -3,9 +3,9 @@ import { beforeAll, expect, test } from "vitest";
 import { useDatabase as makeApplicationUse } from "#app/db/database.server.ts";
 import { paths } from "#app/paths.ts";
 import type { Acting } from "#app/people/person.ts";
-import { expectAccessible, useBrowser } from "#tests/support/browser.ts";
+import { enterAs, expectAccessible, useBrowser } from "#tests/support/browser.ts";
 import { ANY_SOURCE, expanded, type ValueRow } from "#tests/support/editions.ts";
-import { makePerson, PASSWORD } from "#tests/support/people.ts";
+import { makePerson } from "#tests/support/people.ts";
 import { acceptAll, propose, publishWaiting } from "#tests/support/revisions.ts";
 import { useServer } from "#tests/support/server.ts";
 
@@ -49,11 +49,7 @@ beforeAll(() => makeApplicationUse(server.database.app));
 
 async function signIn(person: Acting): Promise<Page> {
   const page = await browser.newWindow(server.url);
-  await page.goto(paths.signIn());
-  await page.getByLabel("E-mail address").fill(person.person.email);
-  await page.getByLabel("Password").fill(PASSWORD);
-  await page.getByRole("main").getByRole("button", { name: "Sign in" }).click();
-  await page.waitForURL((url) => url.pathname !== paths.signIn());
+  await enterAs(page, server.url, person);
   return page;
 }
 

@@ -1,12 +1,11 @@
 import type { Page } from "playwright-core";
 import { beforeAll, describe, expect, test } from "vitest";
 import { useDatabase as makeApplicationUse } from "#app/db/database.server.ts";
-import { paths } from "#app/paths.ts";
 import type { Acting } from "#app/people/person.ts";
 import { sendToReview } from "#app/review/revise.server.ts";
-import { expectAccessible, useBrowser } from "#tests/support/browser.ts";
+import { enterAs, expectAccessible, useBrowser } from "#tests/support/browser.ts";
 import { ANY_SOURCE, expanded, type ValueRow } from "#tests/support/editions.ts";
-import { makePerson, PASSWORD } from "#tests/support/people.ts";
+import { makePerson } from "#tests/support/people.ts";
 import { acceptAll, propose, publishWaiting } from "#tests/support/revisions.ts";
 import { useServer } from "#tests/support/server.ts";
 
@@ -67,11 +66,7 @@ let window: Page | undefined;
 async function open(path: string): Promise<Page> {
   if (!window) {
     window = await browser.newWindow(server.url);
-    await window.goto(paths.signIn());
-    await window.getByLabel("E-mail address").fill(reviewer.person.email);
-    await window.getByLabel("Password").fill(PASSWORD);
-    await window.getByRole("main").getByRole("button", { name: "Sign in" }).click();
-    await window.waitForURL((url) => url.pathname !== paths.signIn());
+    await enterAs(window, server.url, reviewer);
   }
   await window.goto(path);
   await window.waitForLoadState("networkidle");

@@ -7,9 +7,9 @@ import { commentOn } from "#app/review/comments.server.ts";
 import { returnRevision } from "#app/review/decide.server.ts";
 import { sendToReview, takeLineOut } from "#app/review/revise.server.ts";
 import { findLines } from "#app/review/review.queries.server.ts";
-import { expectAccessible, useBrowser } from "#tests/support/browser.ts";
+import { enterAs, expectAccessible, useBrowser } from "#tests/support/browser.ts";
 import { ANY_SOURCE, expanded, type ValueRow } from "#tests/support/editions.ts";
-import { makePerson, PASSWORD } from "#tests/support/people.ts";
+import { makePerson } from "#tests/support/people.ts";
 import { acceptAll, propose, publishWaiting } from "#tests/support/revisions.ts";
 import { useServer } from "#tests/support/server.ts";
 
@@ -83,11 +83,7 @@ beforeAll(() => makeApplicationUse(server.database.app));
 
 async function windowOf(acting: Acting): Promise<Page> {
   const page = await browser.newWindow(server.url);
-  await page.goto(paths.signIn());
-  await page.getByLabel("E-mail address").fill(acting.person.email);
-  await page.getByLabel("Password").fill(PASSWORD);
-  await page.getByRole("main").getByRole("button", { name: "Sign in" }).click();
-  await page.waitForURL((url) => url.pathname !== paths.signIn());
+  await enterAs(page, server.url, acting);
   return page;
 }
 

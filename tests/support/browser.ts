@@ -3,6 +3,8 @@ import path from "node:path";
 import { AxeBuilder } from "@axe-core/playwright";
 import { type Browser, type BrowserContext, chromium, type Page } from "playwright-core";
 import { afterAll, afterEach, beforeAll, expect } from "vitest";
+import type { Acting } from "#app/people/person.ts";
+import { signedIn } from "./people.ts";
 
 const FLAGS = [
   "--headless",
@@ -99,6 +101,21 @@ function listen(page: Page, complaints: string[]): void {
     complaints.push(`${message.text()} (${message.location().url})`);
   });
   page.on("pageerror", (error) => complaints.push(`page error: ${error.message}`));
+}
+
+/**
+ * Signs somebody in in this window without the page for it, which tests of that page go through: a session begins, and its
+ * cookie is put where the page would have put it. The application must use the server's database.
+ */
+export async function enterAs(page: Page, baseUrl: string, acting: Acting): Promise<void> {
+  const cookie = await signedIn(acting);
+  const at = cookie.indexOf("=");
+  const { hostname: domain } = new URL(baseUrl);
+  await page
+    .context()
+    .addCookies([
+      { name: cookie.slice(0, at), value: cookie.slice(at + 1), domain, path: "/", secure: true, httpOnly: true },
+    ]);
 }
 
 /** Fails when axe finds anything against WCAG 2.2 AA on the page as it stands. */
